@@ -1,0 +1,169 @@
+import type { CoreChoice, Measured, Outline, PhysicsSettings, RegionKind } from './domain.ts'
+
+/** A mass change series in canonical units: gigatonnes relative to an arbitrary zero, epochs in MJD (UTC). */
+export interface MassSeries {
+  mjd: number[]
+  massGt: number[]
+  /** One-sigma per epoch, independent between epochs. Null: none was given. */
+  sigmaGt: number[] | null
+  /** Systematic errors of the trend, Gt per year one-sigma; the same source in two series is fully correlated. */
+  sharedRates: { source: string, sigmaGtPerYear: number }[]
+}
+
+/** Everything a run depends on, frozen. No ids, no clock times: the same input gives the same SHA-256. */
+export interface RunInput {
+  schemaVersion: 1
+  settings: PhysicsSettings & {
+    /** Span in MJD; null takes the common span of the series. */
+    fromMjd: number | null
+    toMjd: number | null
+    /** Longest distance between epochs that monthly values are interpolated across, days. */
+    maxGapDays: number
+  }
+  regions: RunRegionInput[]
+  background: BackgroundRow[]
+  /** What the account does not hold, entered by the lead; null leaves the row empty. */
+  restOfWorld: BackgroundRow | null
+}
+
+export interface RunRegionInput {
+  /** Stable short key inside the run: r1, r2, … */
+  key: string
+  name: string
+  kind: RegionKind
+  agency: string
+  geometry: Outline
+  outlineSha256: string
+  seriesVersion: number
+  seriesSha256: string
+  source: string
+  series: MassSeries
+  /** Factor on the mass; 0 switches the region off and keeps its row. */
+  scale: number
+}
+
+/** A rate that is not from a region: tidal braking, isostatic adjustment, … */
+export interface BackgroundRow {
+  key: string
+  name: string
+  source: string
+  /** The core convention that the rate assumes; null where it says nothing about the day. */
+  core: CoreChoice | null
+  lodMsPerCentury: { value: number, sigma: number } | null
+  chi1MasPerYear: { value: number, sigma: number } | null
+  chi2MasPerYear: { value: number, sigma: number } | null
+}
+
+/** One row of the budget table. Rates per Julian year; the pole's drift as a vector and as length and direction. */
+export interface BudgetRow {
+  key: string
+  name: string
+  massGtPerYear: Measured | null
+  lodMicrosecondsPerYear: Measured | null
+  lodMsPerCentury: Measured | null
+  chi1MasPerYear: Measured | null
+  chi2MasPerYear: Measured | null
+  /** Variances and covariance of the drift vector, mas²/yr², under the quoted noise model. */
+  driftCovariance: { c11: number, c12: number, c22: number } | null
+  driftMasPerYear: Measured | null
+  driftCmPerYear: Measured | null
+  /** East longitude that the pole drifts towards, (−180, 180]; null for no drift. sigma in degrees, null where it has none. */
+  directionDegEast: { value: number, sigma: number | null } | null
+  barystaticMmPerYear: Measured | null
+  deltaJ2PerYear: Measured | null
+  /** Part of the regions' total, 1 = all of it. LOD: ratio; pole: projection on the total's direction. Null for non-region rows. */
+  shareOfModelLod: number | null
+  shareOfModelPole: number | null
+}
+
+export interface RunRegionResult extends BudgetRow {
+  kind: RegionKind
+  agency: string
+  areaKm2: number
+  centroid: [number, number]
+  scale: number
+  /** Effect of one gigatonne gained. */
+  perGt: { chi1Mas: number, chi2Mas: number, chi3: number, lodMicroseconds: number, barystaticMm: number, deltaJ2: number }
+  /** On the run's monthly epochs, relative to the mean over the span; null in a gap. */
+  massGt: (number | null)[]
+  sigmaMassGt: (number | null)[]
+  epochsUsed: number
+  coverage: number
+  trendNoise: { r1: number, seasonal: boolean }
+}
+
+export interface RunTotalSeries {
+  massGt: (number | null)[]
+  lodMicroseconds: (number | null)[]
+  chi1Mas: (number | null)[]
+  chi2Mas: (number | null)[]
+  sigmaLodMicroseconds: (number | null)[]
+  sigmaChi1Mas: (number | null)[]
+  sigmaChi2Mas: (number | null)[]
+}
+
+export interface RunWarning { code: string, message: string, regions: string[] }
+
+/** Two regions of a run whose outlines cover common ground. */
+export interface RegionOverlap { a: string, b: string, areaKm2: number, shareOfA: number, shareOfB: number }
+
+export interface RunResult {
+  schemaVersion: 1
+  engineVersion: string
+  earthModelChecksum: string
+  settings: RunInput['settings'] & { oceanAreaM2: number }
+  span: { fromMjd: number, toMjd: number }
+  /** Middles of the calendar months inside the span, MJD. */
+  epochsMjd: number[]
+  regions: RunRegionResult[]
+  /** Sum over regions, background left out. */
+  total: BudgetRow & { series: RunTotalSeries }
+  background: BudgetRow[]
+  restOfWorld: BudgetRow
+  overlaps: RegionOverlap[]
+  warnings: RunWarning[]
+}
+
+/** Observed rotation in canonical units, daily or coarser. NaN where a quantity is missing. */
+export interface ObservedSeries {
+  format: 'eop14c04' | 'eop20c04' | 'finals2000a' | 'csv'
+  mjd: Float64Array
+  /** Reported pole, mas; x towards Greenwich, y towards 90° W. */
+  xMas: Float64Array
+  yMas: Float64Array
+  sigmaXMas: Float64Array
+  sigmaYMas: Float64Array
+  /** Excess length of day, ms. */
+  lodMs: Float64Array
+  sigmaLodMs: Float64Array
+  /** 1 where the row is a prediction, not an observation; left out of every comparison. */
+  predicted: Uint8Array
+  /** Rows that hold a date and nothing else. */
+  emptyRows: number
+  rowsRead: number
+}
+
+export interface ComparisonQuantity {
+  unit: 'ms' | 'mas'
+  /** On the comparison's epochs; anomalies from their mean over the common span. */
+  observed: (number | null)[]
+  model: (number | null)[]
+  residual: (number | null)[]
+  trends: { observed: Measured, model: Measured, residual: Measured }
+  r1: { observed: number, model: number, residual: number }
+  rmsObserved: number
+  rmsResidual: number
+}
+
+/** A run beside an observed series: monthly means over the common span. Null quantity: the series does not hold it. */
+export interface Comparison {
+  span: { fromMjd: number, toMjd: number }
+  epochsMjd: number[]
+  lod: ComparisonQuantity | null
+  chi1: ComparisonQuantity | null
+  chi2: ComparisonQuantity | null
+  noise: 'ar1'
+  /** What is still in the observed series. */
+  notRemoved: string[]
+  warnings: RunWarning[]
+}
