@@ -1,0 +1,58 @@
+// Makes the ocean function of the Earth model from Natural Earth, reproducibly:
+//   node scripts/run-ts.mjs scripts/make-earth-model.ts
+import { createHash } from 'node:crypto'
+import { writeFileSync } from 'node:fs'
+import { cellCoverage } from '../shared/earth/cellCoverage.ts'
+import { EARTH_RADIUS_M } from '../shared/earth/constants.ts'
+import { encodeOceanCells, geocentricRowEdgesDeg, OCEAN_CELL_COLUMNS, OCEAN_CELL_ROWS } from '../shared/earth/oceanCells.ts'
+import { ringIntegrals } from '../shared/earth/ringIntegrals.ts'
+import { readLand } from './earth/land.ts'
+
+const land = readLand()
+
+// Exact integrals over land by contours; the sea is the rest of the sphere, over which every harmonic vanishes.
+let landSr = 0
+let xz = 0
+let yz = 0
+let p2 = 0
+for (const ring of land.rings) {
+  const integrals = ringIntegrals(ring)
+  landSr += (ring.pole ? 2 * Math.PI : 0) + ring.side * integrals.areaSr
+  xz -= ring.side * integrals.xz
+  yz -= ring.side * integrals.yz
+  p2 -= ring.side * integrals.p2
+}
+const oceanSr = 4 * Math.PI - landSr
+
+const coverage = cellCoverage(land.rings, { latEdgesDeg: geocentricRowEdgesDeg(OCEAN_CELL_ROWS), columns: OCEAN_CELL_COLUMNS })
+const cells = encodeOceanCells(coverage.map(value => 1 - value))
+const sourceSha256 = createHash('sha256').update(land.bytes).digest('hex')
+const sha256 = createHash('sha256').update(cells).digest('hex')
+
+const head = `// Made by scripts/make-earth-model.ts from Natural Earth 1:50m land (npm world-atlas ${land.version}, land-50m.json); do not edit.\n`
+writeFileSync('shared/earth/data/oceanMeans.ts', `${head}
+/** Ocean function: Caspian and lakes land, ice shelves sea, coastlines mapped to geocentric latitude. Exact contour integrals. */
+export const oceanMeans = {
+  /** Part of the sphere that is sea. */
+  fraction: ${oceanSr / (4 * Math.PI)},
+  /** Area of the sea on the sphere, m². */
+  areaM2: ${oceanSr * EARTH_RADIUS_M ** 2},
+  /** Means over the sea of sin ψ cos ψ cos λ, sin ψ cos ψ sin λ and cos² ψ. */
+  means: { xz: ${xz / oceanSr}, yz: ${yz / oceanSr}, cos2: ${2 / 3 - (2 / 3) * p2 / oceanSr} },
+  sourceSha256: '${sourceSha256}',
+  /** SHA-256 of the encoded cells. */
+  sha256: '${sha256}'
+} as const
+`)
+writeFileSync('shared/earth/data/oceanCells.ts', `${head}
+/** Sea as part of each cell, ${OCEAN_CELL_ROWS} × ${OCEAN_CELL_COLUMNS} cells of ${180 / OCEAN_CELL_ROWS}° in geocentric latitude and longitude; see ../oceanCells.ts for the code. */
+export const oceanCellsBase64 = '${cells}'
+`)
+let cellSum = 0
+let weight = 0
+for (let row = 0; row < OCEAN_CELL_ROWS; row++) {
+  const w = Math.cos((row + 0.5 - OCEAN_CELL_ROWS / 2) * Math.PI / OCEAN_CELL_ROWS)
+  for (let column = 0; column < OCEAN_CELL_COLUMNS; column++) cellSum += w * (1 - coverage[row * OCEAN_CELL_COLUMNS + column]!)
+  weight += w * OCEAN_CELL_COLUMNS
+}
+console.log(`sea ${oceanSr / (4 * Math.PI)} of the sphere (cells: ${cellSum / weight}); encoded cells ${cells.length} characters`)
