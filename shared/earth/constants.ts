@@ -11,8 +11,6 @@ export const EARTH_MASS_KG = 5.9737e24
 export const ROTATION_RATE = 7.292115e-5
 /** Mean length of day, s: the factor between χ₃ and ΔLOD. */
 export const DAY_SECONDS = 86_400
-/** Days of a Julian year: the year in every rate. */
-export const JULIAN_YEAR_DAYS = 365.25
 
 /** Greatest principal moment of inertia of the whole Earth, kg m². Gross (2007). */
 export const POLAR_MOMENT = 8.0365e37

@@ -1,0 +1,42 @@
+import type { OceanMode } from '../types/domain.ts'
+import { oceanMeans } from './data/oceanMeans.ts'
+import { ENGINE_VERSION } from './engineVersion.ts'
+import type { GridStack } from './gridStack.ts'
+import type { OceanFunction } from './oceanFunction.ts'
+
+/** The Earth that a response is computed on: immutable, handed to every function that needs it. */
+export interface EarthModel {
+  engineVersion: string
+  /** Names the ocean function and the sensitivity fields by their SHA-256; part of every run's hash. */
+  checksum: string
+  ocean: OceanFunction
+  /** Sea (1) and land (0) as a field; null until attached, and then no warning about sea inside an outline is given. */
+  oceanField: GridStack | null
+}
+
+/** A mode was asked for whose sensitivity fields the model does not hold; an API answers it with 501. */
+export class ModeNotAvailableError extends Error {
+  readonly mode: OceanMode
+
+  constructor(mode: OceanMode) {
+    super(`The ocean mode "${mode}" needs the sensitivity fields, which this Earth model does not hold.`)
+    this.name = 'ModeNotAvailableError'
+    this.mode = mode
+  }
+}
+
+/** The constant model: enough for the modes `none` and `uniform`, and light enough for a browser. */
+export function loadEarthModel(): EarthModel {
+  const { fraction, areaM2, means, sha256 } = oceanMeans
+  return Object.freeze({
+    engineVersion: ENGINE_VERSION,
+    checksum: `ocean ${sha256.slice(0, 16)}`,
+    ocean: { fraction, areaM2, means, sha256 },
+    oceanField: null
+  })
+}
+
+/** The same model with the field that tells sea from land inside an outline. */
+export function withOceanField(model: EarthModel, oceanField: GridStack): EarthModel {
+  return Object.freeze({ ...model, oceanField })
+}
