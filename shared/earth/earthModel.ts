@@ -12,6 +12,8 @@ export interface EarthModel {
   ocean: OceanFunction
   /** Sea (1) and land (0) as a field; null until attached, and then no warning about sea inside an outline is given. */
   oceanField: GridStack | null
+  /** The mode that is taken when none is asked for. */
+  defaultOcean: OceanMode
 }
 
 /** A mode was asked for whose sensitivity fields the model does not hold; an API answers it with 501. */
@@ -32,7 +34,8 @@ export function loadEarthModel(): EarthModel {
     engineVersion: ENGINE_VERSION,
     checksum: `ocean ${sha256.slice(0, 16)}`,
     ocean: { fraction, areaM2, means, sha256 },
-    oceanField: null
+    oceanField: null,
+    defaultOcean: 'uniform'
   })
 }
 
