@@ -1,11 +1,11 @@
-import { addShared, loadingOf, sigmaOf, type Loading, type QuantitySigma } from './errorLoadings.ts'
+import { addShared, loadingOf, sigmaOf, type Loading } from './errorLoadings.ts'
 import { checkRequest } from './evaluateInput.ts'
 import { fitRegion, regionTrend, totalTrend, type RegionWithResponse } from './evaluateTrend.ts'
 import type { EvaluateAnswer, EvaluateQuantities, EvaluateRequest, EvaluateSigma } from './evaluateTypes.ts'
 import { warningsOf } from './evaluateWarnings.ts'
 import { poleDirectionDegEast, poleShiftMm } from './excitation.ts'
 import type { EarthModel } from './earthModel.ts'
-import { responseOf } from './response.ts'
+import { responseOf, type ResponsePerGt } from './response.ts'
 
 /**
  * What masses in regions do to the day and the pole: the stateless question of the API.
@@ -37,66 +37,52 @@ export function evaluate(request: EvaluateRequest, model: EarthModel): EvaluateA
   return answer
 }
 
-interface Row {
-  massGt: number
-  chi1Mas: number
-  chi2Mas: number
-  chi3: number
-  lodMicroseconds: number
-  poleShiftMm: number
-  poleDirectionDegEast: number | null
-  barystaticMm: number
-  deltaJ2: number
-  sigma: QuantitySigma
-}
-
-/** Sums over the regions: one row for single masses, else one for each epoch. */
+/** Sums over the regions for each epoch; with single masses there is one, and its figures stand alone. */
 function quantitiesOf(regions: readonly RegionWithResponse[], single: boolean): EvaluateQuantities {
-  const rows = Array.from({ length: regions[0]!.massGt.length }, (_, t) => rowOf(regions, t, single))
-  const pick = <K extends keyof Row>(key: K): Row[K] | Row[K][] => single ? rows[0]![key] : rows.map(row => row[key])
-  const pickSigma = (key: keyof EvaluateSigma): number | number[] => single ? rows[0]!.sigma[key] : rows.map(row => row.sigma[key])
-  return {
-    massGt: pick('massGt'),
-    chi1Mas: pick('chi1Mas'),
-    chi2Mas: pick('chi2Mas'),
-    chi3: pick('chi3'),
-    lodMicroseconds: pick('lodMicroseconds'),
-    poleShiftMm: pick('poleShiftMm'),
-    poleDirectionDegEast: pick('poleDirectionDegEast'),
-    barystaticMm: pick('barystaticMm'),
-    deltaJ2: pick('deltaJ2'),
-    sigma: {
-      massGt: pickSigma('massGt'),
-      chi1Mas: pickSigma('chi1Mas'),
-      chi2Mas: pickSigma('chi2Mas'),
-      lodMicroseconds: pickSigma('lodMicroseconds'),
-      poleShiftMm: pickSigma('poleShiftMm'),
-      barystaticMm: pickSigma('barystaticMm')
+  const n = regions[0]!.massGt.length
+  const summed = (factor: (response: ResponsePerGt) => number): Float64Array => {
+    const out = new Float64Array(n)
+    for (const { massGt, response } of regions) {
+      const f = factor(response)
+      for (let t = 0; t < n; t++) out[t] = out[t]! + f * massGt[t]!
     }
+    return out
+  }
+  const figure = <T>(column: ArrayLike<T>): T | T[] => single ? column[0]! : Array.from(column)
+  const chi1 = summed(r => r.chi1Mas)
+  const chi2 = summed(r => r.chi2Mas)
+  return {
+    massGt: figure(summed(() => 1)),
+    chi1Mas: figure(chi1),
+    chi2Mas: figure(chi2),
+    chi3: figure(summed(r => r.chi3)),
+    lodMicroseconds: figure(summed(r => r.lodMicroseconds)),
+    poleShiftMm: figure(chi1.map((c, t) => poleShiftMm(c, chi2[t]!))),
+    poleDirectionDegEast: figure(Array.from(chi1, (c, t) => poleDirectionDegEast(c, chi2[t]!))),
+    barystaticMm: figure(summed(r => r.barystaticMm)),
+    deltaJ2: figure(summed(r => r.deltaJ2)),
+    sigma: sigmasOf(regions, chi1, chi2, single)
   }
 }
 
-function rowOf(regions: readonly RegionWithResponse[], t: number, single: boolean): Row {
-  const row = { massGt: 0, chi1Mas: 0, chi2Mas: 0, chi3: 0, lodMicroseconds: 0, barystaticMm: 0, deltaJ2: 0 }
-  const loadings: Loading[] = []
-  const bySource = new Map<string, Loading>()
-  for (const { massGt, sigmaGt, shared, response } of regions) {
-    const mass = massGt[t]!
-    row.massGt += mass
-    row.chi1Mas += response.chi1Mas * mass
-    row.chi2Mas += response.chi2Mas * mass
-    row.chi3 += response.chi3 * mass
-    row.lodMicroseconds += response.lodMicroseconds * mass
-    row.barystaticMm += response.barystaticMm * mass
-    row.deltaJ2 += response.deltaJ2 * mass
-    if (sigmaGt) loadings.push(loadingOf(response, sigmaGt[t]!))
-    // With a series, shared errors are rates: they belong to the trend alone.
-    if (single) for (const { source, sigmaGt: s } of shared) addShared(bySource, source, loadingOf(response, s))
-  }
+function sigmasOf(regions: readonly RegionWithResponse[], chi1: Float64Array, chi2: Float64Array, single: boolean): EvaluateSigma {
+  const rows = Array.from(chi1, (_, t) => {
+    const loadings: Loading[] = []
+    const bySource = new Map<string, Loading>()
+    for (const { sigmaGt, shared, response } of regions) {
+      if (sigmaGt) loadings.push(loadingOf(response, sigmaGt[t]!))
+      // With a series, shared errors are rates: they belong to the trend alone.
+      if (single) for (const { source, sigmaGt: s } of shared) addShared(bySource, source, loadingOf(response, s))
+    }
+    return sigmaOf([...loadings, ...bySource.values()], chi1[t]!, chi2[t]!)
+  })
+  const figure = (key: keyof EvaluateSigma): number | number[] => single ? rows[0]![key] : rows.map(row => row[key])
   return {
-    ...row,
-    poleShiftMm: poleShiftMm(row.chi1Mas, row.chi2Mas),
-    poleDirectionDegEast: poleDirectionDegEast(row.chi1Mas, row.chi2Mas),
-    sigma: sigmaOf([...loadings, ...bySource.values()], row.chi1Mas, row.chi2Mas)
+    massGt: figure('massGt'),
+    chi1Mas: figure('chi1Mas'),
+    chi2Mas: figure('chi2Mas'),
+    lodMicroseconds: figure('lodMicroseconds'),
+    poleShiftMm: figure('poleShiftMm'),
+    barystaticMm: figure('barystaticMm')
   }
 }

@@ -3,6 +3,8 @@ import { InputError, type Issue } from '../types/issue.ts'
 import { contourOf, type Contour } from './contour.ts'
 import type { EarthModel } from './earthModel.ts'
 import type { EvaluateRegion, EvaluateRequest, SharedError } from './evaluateTypes.ts'
+import { countPositions } from '../geo/checkShape.ts'
+import { limits, requireOutline } from '../geo/outline.ts'
 import { mjdFromDecimalYear, mjdFromIsoDate } from './time/epochs.ts'
 
 /** A region of a request, checked: one mass, or one mass per epoch. */
@@ -50,6 +52,7 @@ export function checkRequest(request: EvaluateRequest, model: EarthModel): Check
   const issues: Issue[] = []
   const settings = settingsOf(request, model, issues)
   const list = Array.isArray(request.regions) ? request.regions : []
+  requireSize(list)
   if (list.length === 0) issues.push({ path: 'regions', code: 'no-regions', message: 'At least one region is needed.' })
   const withSeries = list.length > 0 && list[0]!.series != null
   const mjd = withSeries ? epochsOf(list[0]!, issues) : null
@@ -69,14 +72,33 @@ export function checkRequest(request: EvaluateRequest, model: EarthModel): Check
 }
 
 function measured(region: EvaluateRegion, path: string, issues: Issue[]): Contour | null {
+  const place = `${path}/geometry`
+  let outline
   try {
-    return contourOf(region.geometry)
+    outline = requireOutline(region.geometry, place)
   }
   catch (error) {
     if (!(error instanceof InputError)) throw error
-    for (const issue of error.issues) issues.push({ ...issue, path: `${path}/geometry/${issue.path ?? ''}` })
+    issues.push(...error.issues)
     return null
   }
+  try {
+    return contourOf(outline)
+  }
+  catch (error) {
+    if (!(error instanceof InputError)) throw error
+    for (const issue of error.issues) issues.push({ ...issue, path: `${place}/${issue.path ?? ''}` })
+    return null
+  }
+}
+
+/** One request may not hold the server for seconds: the vertices of all its outlines together are limited. */
+function requireSize(regions: readonly EvaluateRegion[]): void {
+  let vertices = 0
+  for (const region of regions) vertices += countPositions((region.geometry as { coordinates?: unknown } | null)?.coordinates, limits.vertices)
+  if (vertices <= limits.vertices) return
+  const message = `The outlines have more than ${limits.vertices} vertices together. Simplify them or send fewer at once.`
+  throw new InputError(message, [{ path: 'regions', code: 'too-many-vertices', message }], 413)
 }
 
 function epochsOf(region: EvaluateRegion, issues: Issue[]): Float64Array {

@@ -1,5 +1,6 @@
 import type { EvaluateRequest, EvaluateWarning } from './evaluateTypes.ts'
 import type { PhysicsSettings } from '../types/domain.ts'
+import { formatArea } from '../format/quantities.ts'
 import { overlapsOf } from '../geo/overlap.ts'
 import type { EarthModel } from './earthModel.ts'
 import type { FittedRegion, RegionWithResponse } from './evaluateTrend.ts'
@@ -21,7 +22,7 @@ export function warningsOf(request: EvaluateRequest, settings: PhysicsSettings, 
   for (const { a, b, areaKm2 } of overlapsOf(request.regions)) {
     warnings.push({
       code: 'overlap',
-      message: `The outlines of ${a} and ${b} share ${areaKm2.toPrecision(3)} km²: mass there may be counted twice in the total.`,
+      message: `The outlines of ${a} and ${b} share ${formatArea(areaKm2)}: mass there may be counted twice in the total.`,
       regions: [a, b]
     })
   }
