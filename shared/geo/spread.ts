@@ -1,6 +1,5 @@
+import { contourOf } from '../earth/contour.ts'
 import type { Outline } from '../types/domain.ts'
-import { areaUnderEdgeM2 } from './authalic.ts'
-import { polygonsOf, unwrapRing, type UnwrappedRing } from './ring.ts'
 
 const binWidthDeg = 5
 const binCount = 360 / binWidthDeg
@@ -19,46 +18,13 @@ export interface Spread {
   areaM2: number
 }
 
-/** Latitude of the pole that a winding ring encloses: that of its smaller side. */
-export function enclosedPole(ring: UnwrappedRing): 90 | -90 {
-  return areaUnderRingM2(ring) * Math.sign(ring.turns) >= 0 ? 90 : -90
-}
-
-/** Area inside one ring on the WGS 84 ellipsoid, m². */
-export function ringAreaM2(ring: UnwrappedRing): number {
-  const under = areaUnderRingM2(ring)
-  if (ring.turns === 0) return Math.abs(under)
-  return Math.abs(areaUnderEdgeM2(0, 90, 360 * ring.turns, 90)) - Math.abs(under)
-}
-
-function areaUnderRingM2({ lon, lat }: UnwrappedRing): number {
-  let sum = 0
-  let lost = 0
-  for (let k = 1; k < lon.length; k++) {
-    const term = areaUnderEdgeM2(lon[k - 1]!, lat[k - 1]!, lon[k]!, lat[k]!) - lost
-    const next = sum + term
-    lost = (next - sum) - term
-    sum = next
-  }
-  return sum
-}
-
 /** Lays an outline out flat. The outline must have passed `checkOutline`. */
 export function spreadOf(outline: Outline): Spread {
+  const { rings, areaM2 } = contourOf(outline)
   const edges: number[] = []
-  let areaM2 = 0
-  for (const polygon of polygonsOf(outline)) {
-    polygon.forEach((positions, index) => {
-      const ring = unwrapRing(positions)
-      areaM2 += (index === 0 ? 1 : -1) * ringAreaM2(ring)
-      for (let k = 1; k < ring.lon.length; k++) {
-        cutAtAntimeridian(ring.lon[k - 1]!, ring.lat[k - 1]!, ring.lon[k]!, ring.lat[k]!, edges)
-      }
-      if (ring.turns !== 0) {
-        const pole = enclosedPole(ring)
-        edges.push(-180, pole, 180, pole)
-      }
-    })
+  for (const { lonDeg, latDeg, pole } of rings) {
+    for (let k = 1; k < lonDeg.length; k++) cutAtAntimeridian(lonDeg[k - 1]!, latDeg[k - 1]!, lonDeg[k]!, latDeg[k]!, edges)
+    if (pole) edges.push(-180, pole === 'north' ? 90 : -90, 180, pole === 'north' ? 90 : -90)
   }
   return { edges: Float64Array.from(edges), ...latitudeRanges(edges), areaM2 }
 }
