@@ -95,11 +95,12 @@ export function emptyRow(key: string, name: string): BudgetRow {
 /** Shares of one region in the total: ratio of the rates of the day; projection of the drift on the total's direction. */
 export function sharesOf(row: BudgetRow, total: BudgetRow): Pick<BudgetRow, 'shareOfModelLod' | 'shareOfModelPole'> {
   const lod = total.lodMicrosecondsPerYear!.value
-  const along = row.chi1MasPerYear!.value * total.chi1MasPerYear!.value + row.chi2MasPerYear!.value * total.chi2MasPerYear!.value
-  const length = total.driftMasPerYear!.value
+  const [x, y] = [total.chi1MasPerYear!.value, total.chi2MasPerYear!.value]
+  const along = row.chi1MasPerYear!.value * x + row.chi2MasPerYear!.value * y
+  const square = x * x + y * y
   return {
     shareOfModelLod: lod === 0 ? null : row.lodMicrosecondsPerYear!.value / lod,
-    shareOfModelPole: length === 0 ? null : along / length ** 2
+    shareOfModelPole: square === 0 ? null : along / square
   }
 }
 

@@ -1,0 +1,32 @@
+import { loadEarthModel } from '../../shared/earth/earthModel.ts'
+import { computeRun } from '../../shared/earth/time/run.ts'
+import { fitTrend } from '../../shared/earth/time/trend.ts'
+import type { Polygon } from '../../shared/types/domain.ts'
+import { region, runInput } from '../unit/time/runFixtures.ts'
+import { fastest, type Figure } from './measure.ts'
+
+/** A wavy ring of 200 vertices about a centre. */
+function ring(lon: number, lat: number): Polygon {
+  const coordinates = Array.from({ length: 200 }, (_, i) => {
+    const angle = 2 * Math.PI * i / 200
+    const radius = 2 + 0.5 * Math.cos(7 * angle)
+    return [lon + radius * Math.cos(angle), lat + radius * Math.sin(angle)] as [number, number]
+  })
+  return { type: 'Polygon', coordinates: [[...coordinates, coordinates[0]!]] }
+}
+
+/** Runs and fits. */
+export function run(): Figure[] {
+  const model = loadEarthModel()
+  const mjd = Array.from({ length: 300 }, (_, i) => 50000 + i * 30.4375)
+  const regions = Array.from({ length: 200 }, (_, i) => region(`r${i}`, ring(-170 + 17 * (i % 20), -60 + 12 * Math.floor(i / 20)), 0, {
+    series: { mjd, massGt: mjd.map((t, k) => -t / 100 + Math.sin(k * (i + 1))), sigmaGt: mjd.map(() => 2), sharedRates: [{ source: `gia ${i % 5}`, sigmaGtPerYear: 1 }] }
+  }))
+  const input = runInput(regions)
+  const epochs = Array.from({ length: 600 }, (_, i) => 40000 + i * 30.4375)
+  const values = epochs.map((t, i) => t / 50 + Math.sin(i))
+  return [
+    { name: 'run of 200 regions × 300 months, outlines of 200 vertices', value: fastest(() => computeRun(input, model)), unit: 'ms', note: 'limit 300 ms' },
+    { name: 'trend with seasons of 600 epochs', value: fastest(() => fitTrend({ mjd: epochs, value: values })), unit: 'ms', note: 'limit 5 ms' }
+  ]
+}
