@@ -14,13 +14,18 @@ const snapDeg = 1e-9
 
 /**
  * The same region cut at ±180° and closed along ±90° where a ring winds round a pole, as RFC 7946 §3.1.9 advises: longitudes within
- * ±180°, shells anticlockwise, holes clockwise, rings from their westernmost vertex on. Every reader
- * understands this form. The outline must have passed `checkOutline`.
+ * ±180°, shells anticlockwise, holes clockwise, rings from their westernmost vertex on. Every reader understands this form.
+ * The outline must have passed `checkOutline`.
  */
 export function cutAtAntimeridian(outline: Outline): Outline {
+  return cutRings(contourOf(outline).rings)
+}
+
+/** As `cutAtAntimeridian`, for rings of which an odd number goes round every place inside. */
+export function cutRings(rings: readonly BoundedRing[]): Outline {
   const chains: Chain[] = []
   const poleClosings = new Map<number, boolean>()
-  for (const ring of contourOf(outline).rings) {
+  for (const ring of rings) {
     chains.push(...chainsOf(ring))
     if (!ring.pole) continue
     const latitude = ring.pole === 'north' ? 90 : -90
