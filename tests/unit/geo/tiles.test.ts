@@ -68,7 +68,7 @@ describe('the tiles that ship', () => {
     const { land } = world.layers
     const rings = Array.from({ length: land!.length }, (_, k) => land!.feature(k).loadGeometry().length)
     expect(Math.max(...rings)).toBeGreaterThan(300)
-    const pacific = new VectorTile(new PbfReader(read('5/2/16.pbf')))
+    const pacific = new VectorTile(new PbfReader(read('5/4/20.pbf')))
     expect(pacific.layers.land?.length ?? 0).toBe(0)
   })
 })
