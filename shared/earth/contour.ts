@@ -123,9 +123,11 @@ function capArea(integrals: RingIntegrals, side: 1 | -1) {
 }
 
 function centroidOf(sum: { areaSr: number, x: number, y: number, z: number }): Position {
-  const horizontal = Math.hypot(sum.x, sum.y)
-  if (Math.hypot(horizontal, sum.z) < TIE * sum.areaSr) return [0, 0]
-  const lon = horizontal < TIE * sum.areaSr ? 0 : Math.atan2(sum.y, sum.x) / DEGREE
+  const least = TIE * sum.areaSr
+  const length = Math.hypot(sum.x, sum.y)
+  const horizontal = length < least ? 0 : length
+  if (Math.hypot(horizontal, sum.z) < least) return [0, 0]
+  const lon = horizontal === 0 ? 0 : Math.atan2(sum.y, sum.x) / DEGREE
   return [lon === -180 ? 180 : lon, geodeticFromGeocentricDeg(Math.atan2(sum.z, horizontal) / DEGREE)]
 }
 

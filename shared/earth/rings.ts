@@ -21,7 +21,7 @@ const CLOSE = 1e-9
  * Path of one ring of a GeoJSON outline.
  *
  * Every edge is straight in longitude and geodetic latitude. One of 180° < |Δλ| < 360° is taken the short way, one of
- * exactly 360° is a full turn. Repeated vertices are dropped and an open ring is closed. Where a ring runs along ±90°, that
+ * exactly 360° is a full turn, unless the ring would cross itself there. Repeated vertices are dropped and an open ring is closed. Where a ring runs along ±90°, that
  * edge has no length on the sphere, so its turn is chosen such that the ring encloses what it was drawn round.
  * Throws InputError for coordinates that are no numbers or no latitudes, for fewer than three vertices and for a ring that
  * winds round the pole more than once.
@@ -60,6 +60,7 @@ export function ringPath(ring: readonly (readonly number[])[], options: RingOpti
     previousLon = lon
   }
   if (count < 4) throw new InputError('A ring needs three different vertices.', [{ path, code: 'ring-too-short', message: `A ring needs at least three different vertices; this one has ${Math.max(0, count - 1)}.` }])
+  if (fullTurns && turnCrossesRing(lonDeg, latDeg, count)) return ringPath(ring, { fullTurns: false }, path)
   const lons = lonDeg.subarray(0, count)
   let winding = Math.round((lons[count - 1]! - lons[0]!) / 360)
   if (winding !== 0 && poleEdge > 0) {
@@ -69,6 +70,25 @@ export function ringPath(ring: readonly (readonly number[])[], options: RingOpti
   if (Math.abs(winding) > 1) throw new InputError('A ring winds round the pole more than once.', [{ path, code: 'ring-winds-twice', message: `The ring goes round the pole ${Math.abs(winding)} times; once is the most that encloses an area.` }])
   lons[count - 1] = lons[0]! + 360 * winding
   return { lonDeg: lons, latDeg: latDeg.subarray(0, count), winding: winding as -1 | 0 | 1 }
+}
+
+/**
+ * A full turn at one latitude covers every longitude, so a ring that has others of its vertices on both sides of it would cross
+ * itself: there the step of 360° only leads back to where a ring round the pole began.
+ */
+function turnCrossesRing(lonDeg: Float64Array, latDeg: Float64Array, count: number): boolean {
+  let turn = -1
+  for (let i = 1; i < count; i++) {
+    if (latDeg[i] === latDeg[i - 1] && Math.abs(Math.abs(lonDeg[i]! - lonDeg[i - 1]!) - 360) < CLOSE) turn = turn < 0 ? i : count
+  }
+  if (turn < 0 || turn === count) return false
+  let above = false
+  let below = false
+  for (let i = 0; i < count; i++) {
+    above ||= latDeg[i]! > latDeg[turn]!
+    below ||= latDeg[i]! < latDeg[turn]!
+  }
+  return above && below
 }
 
 function edgeStep(difference: number, fullTurns: boolean): number {
