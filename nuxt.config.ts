@@ -1,0 +1,65 @@
+import { addTemplate } from 'nuxt/kit'
+import { bundleRuntime } from './scripts/bundle-runtime'
+import { cssVariables } from './shared/design/tokens'
+
+/** The one token file as a style sheet. */
+function designTokens() {
+  addTemplate({ filename: 'tokens.css', getContents: cssVariables, write: true })
+}
+
+export default defineNuxtConfig({
+  modules: ['@nuxtjs/tailwindcss', '@pinia/nuxt', 'nuxt-auth-utils', '@nuxt/eslint', designTokens],
+  devtools: { enabled: false },
+  telemetry: false,
+  compatibilityDate: '2026-06-01',
+  css: [
+    '@fontsource/noto-sans/400.css',
+    '@fontsource/noto-sans/600.css',
+    '@fontsource/noto-sans-math/400.css',
+    '#build/tokens.css',
+    '~/assets/css/main.css',
+  ],
+  // Sessions live in the database; the sealed cookie only names one (server/services/sessions.ts).
+  auth: { loadStrategy: 'none' },
+  runtimeConfig: {
+    session: { name: 'counterpoise-session', maxAge: 14 * 24 * 3600 },
+    dataDir: '.data',
+    // 'auto': the demo is seeded into an empty database on a loopback host; 'off' never.
+    demo: 'auto',
+    maxUploadBytes: 32 * 1024 * 1024,
+  },
+  app: {
+    head: {
+      htmlAttrs: { lang: 'en' },
+      titleTemplate: '%s · Counterpoise',
+      link: [{ rel: 'icon', type: 'image/svg+xml', href: '/icon.svg' }],
+      meta: [{ name: 'viewport', content: 'width=device-width, initial-scale=1' }],
+    },
+  },
+  features: { inlineStyles: false },
+  experimental: { appManifest: false },
+  tailwindcss: { cssPath: false, viewer: false, exposeConfig: false },
+  typescript: {
+    strict: true,
+    tsConfig: { include: ['../tests/**/*', '../scripts/**/*.ts'], compilerOptions: { allowImportingTsExtensions: true } },
+    sharedTsConfig: { compilerOptions: { allowImportingTsExtensions: true } },
+    nodeTsConfig: { compilerOptions: { allowImportingTsExtensions: true } },
+  },
+  nitro: {
+    typescript: { tsConfig: { compilerOptions: { allowImportingTsExtensions: true } } },
+    preset: 'node-server',
+    compressPublicAssets: { gzip: true, brotli: false },
+    routeRules: {
+      '/tiles/**': { headers: { 'cache-control': 'public, max-age=86400' } },
+    },
+    externals: { external: ['better-sqlite3', 'pdfmake', 'piscina'] },
+  },
+  vite: { build: { chunkSizeWarningLimit: 1500 } },
+  hooks: {
+    'nitro:init'(nitro) {
+      // Migrations, workers, fonts: what the server reads from disk, laid beside it.
+      nitro.hooks.hook(nitro.options.dev ? 'dev:reload' : 'compiled', () => bundleRuntime(nitro))
+      if (nitro.options.dev) nitro.hooks.hook('compiled', () => bundleRuntime(nitro))
+    },
+  },
+})

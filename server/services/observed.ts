@@ -1,0 +1,115 @@
+import { and, desc, eq, isNull, lt } from 'drizzle-orm'
+import type { contracts } from '#shared/api/contracts'
+import type { BodyOf } from '#shared/api/contract'
+import { parseObserved } from '#shared/observed/parse'
+import { can, type Principal } from '#shared/permissions'
+import { InputError, type Issue } from '#shared/types/issue'
+import type { ObservedSeries } from '#shared/types/run'
+import { schema } from '../database/client'
+import type { Upload } from '../utils/body'
+import { Problem } from '../utils/problem'
+import { authorise, change, newId } from './change'
+import type { Context } from './context'
+import { canonicalJson, sha256Hex } from './hash'
+import { keepOriginal, rememberOriginal, uploadText } from './originals'
+import { pageOf } from './paging'
+import { floats, fromFloats, versionsOf, versionView } from './seriesStore'
+
+interface ObservedRecipe { format: ObservedSeries['format'], predictedRows: number, emptyRows: number, rowsRead: number, pole: boolean, lod: boolean, understood: string[], leftOut: Issue[], leftOutCount: number, csv?: unknown }
+const columns = ['xMas', 'yMas', 'lodMs', 'sigmaXMas', 'sigmaYMas', 'sigmaLodMs'] as const
+
+export async function createObserved(context: Context, principal: Principal | null, workspaceId: string, upload: Upload, body: BodyOf<typeof contracts.observedCreate>) {
+  const actor = authorise(principal, 'observed.write', { workspaceId })
+  const parsed = parseObserved(await uploadText(upload), body.csv ? { csv: body.csv } : {})
+  if (parsed.issues.length && !body.leaveOutBadRows) {
+    throw new InputError(`${parsed.issues.length} of ${parsed.rowsRead} rows cannot be used. Nothing was stored.`, parsed.issues)
+  }
+  const id = newId()
+  const versionId = newId()
+  const value = floats(Float64Array.from(columns.flatMap(name => [...parsed[name]])))
+  const recipe: ObservedRecipe = {
+    format: parsed.format, predictedRows: parsed.predicted.reduce((sum, flag) => sum + flag, 0), emptyRows: parsed.emptyRows, rowsRead: parsed.rowsRead,
+    pole: parsed.xMas.some(Number.isFinite) && parsed.yMas.some(Number.isFinite), lod: parsed.lodMs.some(Number.isFinite),
+    understood: parsed.understood, leftOut: parsed.issues.slice(0, 1000), leftOutCount: parsed.issues.length, ...(body.csv ? { csv: body.csv } : {}),
+  }
+  await keepOriginal(context, upload)
+  change(context, principal, { action: 'observed.write', verb: 'observed series stored', entity: 'observed series', id, workspaceId }, (tx) => {
+    rememberOriginal(context, tx, upload)
+    tx.insert(schema.series).values({ id, workspaceId, regionId: null, quantity: 'earth-orientation', name: body.name, createdAt: context.now(), createdBy: actor.userId }).run()
+    tx.insert(schema.seriesVersion).values({
+      id: versionId, seriesId: id, n: 1, originalSha256: upload.sha256, originalName: upload.name, dataSha256: sha256Hex(value), recipe: canonicalJson(recipe),
+      reason: body.reason, source: body.source, licence: body.licence, independence: body.independence,
+      firstMjd: parsed.mjd[0]!, lastMjd: parsed.mjd.at(-1)!, count: parsed.mjd.length, createdAt: context.now(), createdBy: actor.userId,
+    }).run()
+    tx.insert(schema.seriesData).values({ versionId, mjd: floats(parsed.mjd), value, sigma: null, flags: Buffer.from(parsed.predicted) }).run()
+    return { result: undefined, after: { name: body.name, format: parsed.format, days: parsed.mjd.length, originalSha256: upload.sha256 } }
+  })
+  return observedSummary(context, principal, observedRow(context, id))
+}
+
+export function observedRow(context: Context, id: string) {
+  const row = context.db.select().from(schema.series).where(and(eq(schema.series.id, id), eq(schema.series.quantity, 'earth-orientation'), isNull(schema.series.deletedAt))).get()
+  if (!row) throw new Problem(404, 'not-found', 'There is no such observed series.')
+  return row
+}
+
+export function observedSummary(context: Context, principal: Principal | null, row: ReturnType<typeof observedRow>) {
+  const version = versionsOf(context, row.id)[0]!
+  const recipe = JSON.parse(version.recipe) as ObservedRecipe
+  return {
+    id: row.id, revision: row.revision, name: row.name, latest: versionView(context, version), format: recipe.format,
+    has: { pole: recipe.pole, lod: recipe.lod }, predictedRows: recipe.predictedRows, emptyRows: recipe.emptyRows,
+    canWrite: can(principal, 'observed.write', { workspaceId: row.workspaceId }),
+  }
+}
+
+/** The stored series as the engine takes it. */
+export function loadObserved(context: Context, id: string): ObservedSeries {
+  const version = versionsOf(context, id)[0]!
+  const data = context.db.select().from(schema.seriesData).where(eq(schema.seriesData.versionId, version.id)).get()!
+  const recipe = JSON.parse(version.recipe) as ObservedRecipe
+  const mjd = fromFloats(data.mjd)
+  const all = fromFloats(data.value)
+  const [xMas, yMas, lodMs, sigmaXMas, sigmaYMas, sigmaLodMs] = columns.map((_, i) => all.subarray(i * mjd.length, (i + 1) * mjd.length)) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array, Float64Array]
+  return {
+    format: recipe.format, mjd, xMas, yMas, lodMs, sigmaXMas, sigmaYMas, sigmaLodMs,
+    predicted: new Uint8Array(data.flags ?? new Uint8Array(mjd.length)), emptyRows: recipe.emptyRows, rowsRead: recipe.rowsRead,
+  }
+}
+
+export function listObserved(context: Context, principal: Principal | null, workspaceId: string, { limit, cursor }: { limit: number, cursor?: string }) {
+  const rows = context.db.select().from(schema.series)
+    .where(and(eq(schema.series.workspaceId, workspaceId), eq(schema.series.quantity, 'earth-orientation'), isNull(schema.series.deletedAt), cursor ? lt(schema.series.id, cursor) : undefined))
+    .orderBy(desc(schema.series.id)).limit(limit + 1).all()
+  return pageOf(rows, limit, row => observedSummary(context, principal, row))
+}
+
+const nullable = (values: Float64Array) => Array.from(values, v => Number.isFinite(v) ? v : null)
+
+export function readObserved(context: Context, principal: Principal | null, id: string) {
+  const row = observedRow(context, id)
+  authorise(principal, 'observed.read', { workspaceId: row.workspaceId })
+  const data = loadObserved(context, id)
+  return {
+    ...observedSummary(context, principal, row), mjd: [...data.mjd],
+    xMas: nullable(data.xMas), yMas: nullable(data.yMas), lodMs: nullable(data.lodMs),
+    sigmaXMas: nullable(data.sigmaXMas), sigmaYMas: nullable(data.sigmaYMas), sigmaLodMs: nullable(data.sigmaLodMs),
+    predicted: [...data.predicted],
+  }
+}
+
+export function binObserved(context: Context, principal: Principal | null, id: string, revision: number) {
+  const row = observedRow(context, id)
+  const next = row.revision + 1
+  return change(context, principal, { action: 'observed.write', verb: 'put in the bin', entity: 'observed series', id, workspaceId: row.workspaceId, row, revision }, (tx) => {
+    tx.update(schema.series).set({ deletedAt: context.now(), revision: next }).where(eq(schema.series.id, id)).run()
+    return { result: { revision: next }, before: { name: row.name } }
+  })
+}
+
+/** How an edition and a report name the series that they were compared with. */
+export function observedLabelOf(context: Context, id: string) {
+  const row = observedRow(context, id)
+  const version = versionsOf(context, row.id)[0]!
+  return { name: row.name, source: version.source, originalSha256: version.originalSha256 }
+}

@@ -1,0 +1,44 @@
+import { existsSync } from 'node:fs'
+import { copyFile, mkdir, readFile, rename, rm } from 'node:fs/promises'
+import { dirname, join } from 'node:path'
+import { schema, type Reader } from '../database/client'
+import type { Upload } from '../utils/body'
+import type { Context } from './context'
+
+/** Where an original lies: beside the database, under its checksum. */
+export function originalPath(dataDir: string, sha256: string) {
+  return join(dataDir, 'originals', sha256.slice(0, 2), sha256)
+}
+
+/**
+ * Moves an upload to its place; the same bytes are kept once. The row that names it is written by `rememberOriginal`
+ * inside the change that refers to it, so a file without a row is only ever a left-over.
+ */
+export async function keepOriginal(context: Context, upload: Upload) {
+  const target = originalPath(context.dataDir, upload.sha256)
+  if (existsSync(target)) return
+  await mkdir(dirname(target), { recursive: true, mode: 0o700 })
+  try {
+    await rename(upload.path, target)
+  }
+  catch {
+    await copyFile(upload.path, `${target}.part`)
+    await rename(`${target}.part`, target)
+    await rm(upload.path, { force: true })
+  }
+}
+
+export function rememberOriginal(context: Context, tx: Reader, upload: Upload) {
+  tx.insert(schema.original).values({ sha256: upload.sha256, bytes: upload.bytes, type: upload.type, createdAt: context.now() }).onConflictDoNothing().run()
+}
+
+export async function readOriginal(context: Context, sha256: string): Promise<Buffer> {
+  return readFile(originalPath(context.dataDir, sha256))
+}
+
+/** Text of an uploaded file: UTF-8, or UTF-16 where a byte-order mark says so. */
+export async function uploadText(upload: Upload): Promise<string> {
+  const bytes = await readFile(upload.path)
+  const encoding = bytes[0] === 0xff && bytes[1] === 0xfe ? 'utf-16le' : bytes[0] === 0xfe && bytes[1] === 0xff ? 'utf-16be' : 'utf-8'
+  return new TextDecoder(encoding).decode(bytes)
+}

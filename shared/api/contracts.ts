@@ -1,0 +1,223 @@
+import { z } from 'zod'
+import { oceanModes } from '../types/domain.ts'
+import { contract, type Contract } from './contract.ts'
+import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
+import { comparison, editionView, runView } from './runSchemas.ts'
+import {
+  agency, edition, geometry, jobView, limits, listOf, massColumns, me, name, observedData, observedSummary, overlap, page, perGt, prose,
+  region, regionKind, revision, role, runSummary, scenario, scenarioDraft, sha256, trendSummary, ulid, versionSummary,
+} from './schemas.ts'
+
+const inWorkspace = z.object({ workspace: ulid })
+const byId = z.object({ id: ulid })
+const changed = z.object({ revision })
+const nothing = z.void()
+const editionPath = z.object({ slug: z.string().max(80), n: z.coerce.number().int().min(1) })
+const bytes = z.unknown()
+
+const password = z.string().min(10, 'must have at least 10 characters').max(200)
+const versionFacts = z.object({
+  name, reason: prose.default(''), source: prose, licence: prose.default(''), independence: prose.default(''),
+})
+const invited = z.object({ link: z.string(), expiresAt: z.string() })
+const columnIndex = z.int().min(0)
+const observedOptions = versionFacts.extend({
+  /** For a table (CSV): which column is what. Left out, columns are recognised by name. */
+  csv: z.object({
+    epochColumn: columnIndex.optional(), epochFormat: z.enum(['iso-date', 'year-month', 'decimal-year', 'mjd']).optional(),
+    columns: z.object({
+      xMas: columnIndex, yMas: columnIndex, lodMs: columnIndex, sigmaXMas: columnIndex, sigmaYMas: columnIndex, sigmaLodMs: columnIndex,
+    }).partial().optional(),
+    poleUnit: z.enum(['mas', 'arcsec']).optional(), lodUnit: z.enum(['ms', 's', 'us']).optional(),
+  }).optional(),
+  leaveOutBadRows: z.boolean().default(false),
+})
+
+/** Every route of the product, in one list. */
+export const contracts = {
+  // Sessions and people
+  sessionRead: contract({ id: 'sessionRead', method: 'GET', path: '/api/v1/session', action: 'public.read', summary: 'Who is signed in', answer: me }),
+  sessionCreate: contract({
+    id: 'sessionCreate', method: 'POST', path: '/api/v1/session', action: 'public.read', summary: 'Sign in',
+    body: z.object({ email: z.string().min(1).max(254), password: z.string().min(1).max(200) }), answer: me,
+  }),
+  sessionDelete: contract({ id: 'sessionDelete', method: 'DELETE', path: '/api/v1/session', action: 'public.read', summary: 'Sign out', answer: nothing, status: 204 }),
+  invitationRead: contract({
+    id: 'invitationRead', method: 'GET', path: '/api/v1/invitations/{token}', action: 'public.read', summary: 'What a one-time link is for',
+    params: z.object({ token: z.string().max(100) }),
+    answer: z.object({ kind: z.enum(['operator', 'member']), email: z.string().nullable(), workspaceName: z.string().nullable(), role: role.nullable(), knownAccount: z.boolean() }),
+  }),
+  invitationAccept: contract({
+    id: 'invitationAccept', method: 'POST', path: '/api/v1/invitations/{token}', action: 'public.read', summary: 'Use a one-time link',
+    params: z.object({ token: z.string().max(100) }),
+    body: z.object({ email: z.email().max(254).optional(), name: name.optional(), password: password.optional(), workspaceName: name.optional(), agencyName: name.optional() }),
+    answer: me,
+  }),
+  memberList: contract({
+    id: 'memberList', method: 'GET', path: '/api/v1/workspaces/{workspace}/members', action: 'member.manage', summary: 'People of a workspace', params: inWorkspace,
+    answer: listOf(z.object({ id: ulid, revision, userId: ulid, name: z.string(), email: z.string(), role, agencyId: ulid.nullable(), agencyName: z.string().nullable() })),
+  }),
+  memberInvite: contract({
+    id: 'memberInvite', method: 'POST', path: '/api/v1/workspaces/{workspace}/members', action: 'member.manage', summary: 'Ask somebody in by a one-time link', params: inWorkspace,
+    body: z.object({ email: z.email().max(254), role, agencyId: ulid.nullable() }), answer: invited, status: 201,
+  }),
+  memberChange: contract({
+    id: 'memberChange', method: 'PATCH', path: '/api/v1/members/{id}', action: 'member.manage', summary: 'Change a role', params: byId,
+    body: z.object({ revision, role, agencyId: ulid.nullable() }), answer: changed,
+  }),
+  memberRemove: contract({
+    id: 'memberRemove', method: 'DELETE', path: '/api/v1/members/{id}', action: 'member.manage', summary: 'Remove somebody from a workspace', params: byId,
+    query: z.object({ revision: z.coerce.number().int() }), answer: nothing, status: 204,
+  }),
+  agencyList: contract({
+    id: 'agencyList', method: 'GET', path: '/api/v1/workspaces/{workspace}/agencies', action: 'workspace.read', summary: 'Agencies of a workspace', params: inWorkspace, answer: listOf(agency),
+  }),
+  agencyCreate: contract({
+    id: 'agencyCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/agencies', action: 'member.manage', summary: 'Add an agency', params: inWorkspace,
+    body: z.object({ name }), answer: agency, status: 201,
+  }),
+  logList: contract({
+    id: 'logList', method: 'GET', path: '/api/v1/workspaces/{workspace}/log', action: 'log.read', summary: 'Change log, newest first, with its hash chain', params: inWorkspace, query: page,
+    answer: listOf(z.object({
+      seq: z.int(), at: z.string(), actor: z.string(), action: z.string(), entity: z.string(), entityId: z.string(),
+      before: z.unknown(), after: z.unknown(), hash: sha256,
+    })).extend({ chainIntact: z.boolean() }),
+  }),
+
+  // The engine, stateless
+  evaluate: contract({
+    id: 'evaluate', method: 'POST', path: '/api/v1/evaluate', action: 'evaluate', summary: 'Effect of mass changes on the day and the pole; stores nothing',
+    body: evaluateRequest, answer: evaluateAnswer, maxBytes: limits.evaluateBytes,
+  }),
+
+  // Regions
+  regionList: contract({ id: 'regionList', method: 'GET', path: '/api/v1/workspaces/{workspace}/regions', action: 'region.read', summary: 'Regions', params: inWorkspace, query: page, answer: listOf(region) }),
+  regionCreate: contract({
+    id: 'regionCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions', action: 'region.write', summary: 'Add a region', params: inWorkspace,
+    body: z.object({ name, kind: regionKind, agencyId: ulid, note: prose.default(''), geometry }), answer: region, status: 201, maxBytes: limits.evaluateBytes,
+  }),
+  regionRead: contract({
+    id: 'regionRead', method: 'GET', path: '/api/v1/regions/{id}', action: 'region.read', summary: 'A region', params: byId,
+    answer: region.extend({
+      perGt, outlines: z.array(z.object({ n: z.int(), areaKm2: z.number(), sha256, createdAt: z.string(), createdBy: z.string().nullable() })),
+      versions: z.array(versionSummary), overlaps: z.array(z.object({ id: ulid, name: z.string(), areaKm2: z.number() })), settings: z.looseObject({}),
+    }),
+  }),
+  regionChange: contract({
+    id: 'regionChange', method: 'PATCH', path: '/api/v1/regions/{id}', action: 'region.write', summary: 'Change a region; a new geometry becomes a new outline version', params: byId,
+    body: z.object({ revision, name: name.optional(), kind: regionKind.optional(), agencyId: ulid.optional(), note: prose.optional(), geometry: geometry.optional() }),
+    answer: region, maxBytes: limits.evaluateBytes,
+  }),
+  regionRemove: contract({
+    id: 'regionRemove', method: 'DELETE', path: '/api/v1/regions/{id}', action: 'region.write', summary: 'Put a region in the bin', params: byId,
+    query: z.object({ revision: z.coerce.number().int() }), answer: changed,
+  }),
+  regionRestore: contract({
+    id: 'regionRestore', method: 'POST', path: '/api/v1/regions/{id}/restore', action: 'region.write', summary: 'Take a region out of the bin', params: byId,
+    body: z.object({ revision }), answer: changed,
+  }),
+  regionPrediction: contract({
+    id: 'regionPrediction', method: 'GET', path: '/api/v1/regions/{id}/prediction', action: 'region.read', summary: 'Predicted ΔLOD and pole of one region from a series version', params: byId,
+    query: z.object({ version: ulid.optional(), ocean: z.enum(oceanModes).optional() }),
+    answer: z.object({
+      version: versionSummary, settings: z.looseObject({}), perGt, mjd: z.array(z.number()), massGt: z.array(z.number()), sigmaMassGt: z.array(z.number().nullable()),
+      lodMicroseconds: z.array(z.number()), chi1Mas: z.array(z.number()), chi2Mas: z.array(z.number()), trend: trendSummary.nullable(), warnings: z.array(z.string()),
+    }),
+  }),
+
+  // Mass series
+  seriesCreate: contract({
+    id: 'seriesCreate', method: 'POST', path: '/api/v1/regions/{id}/series', action: 'region.write', summary: 'Store a new version of a region’s mass series', params: byId, bodyType: 'multipart',
+    body: versionFacts.extend({
+      columns: massColumns, leaveOutBadRows: z.boolean().default(false),
+      sharedRates: z.array(z.object({ source: name, sigmaGtPerYear: z.number().min(0) })).max(20).default([]),
+    }),
+    answer: versionSummary, status: 201, maxBytes: limits.originalBytes,
+  }),
+  seriesVersionRead: contract({
+    id: 'seriesVersionRead', method: 'GET', path: '/api/v1/series-versions/{id}', action: 'region.read', summary: 'Values of a series version', params: byId,
+    answer: versionSummary.extend({
+      regionId: ulid, mjd: z.array(z.number()), massGt: z.array(z.number()), sigmaGt: z.array(z.number()).nullable(),
+      sharedRates: z.array(z.object({ source: z.string(), sigmaGtPerYear: z.number() })), recipe: z.looseObject({}),
+    }),
+  }),
+  originalRead: contract({
+    id: 'originalRead', method: 'GET', path: '/api/v1/series-versions/{id}/original', action: 'region.read', summary: 'The original file as it was sent', params: byId, answer: bytes, answerType: 'application/octet-stream',
+  }),
+
+  // Observed Earth orientation
+  observedList: contract({ id: 'observedList', method: 'GET', path: '/api/v1/workspaces/{workspace}/observed', action: 'observed.read', summary: 'Observed series', params: inWorkspace, query: page, answer: listOf(observedSummary) }),
+  observedCreate: contract({
+    id: 'observedCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/observed', action: 'observed.write', summary: 'Store an observed Earth-orientation series', params: inWorkspace, bodyType: 'multipart',
+    body: observedOptions, answer: observedSummary, status: 201, maxBytes: limits.originalBytes,
+  }),
+  observedRead: contract({ id: 'observedRead', method: 'GET', path: '/api/v1/observed/{id}', action: 'observed.read', summary: 'An observed series with its values', params: byId, answer: observedData }),
+  observedRemove: contract({
+    id: 'observedRemove', method: 'DELETE', path: '/api/v1/observed/{id}', action: 'observed.write', summary: 'Put an observed series in the bin', params: byId,
+    query: z.object({ revision: z.coerce.number().int() }), answer: changed,
+  }),
+
+  // Scenarios, runs, jobs
+  scenarioList: contract({ id: 'scenarioList', method: 'GET', path: '/api/v1/workspaces/{workspace}/scenarios', action: 'scenario.read', summary: 'Scenarios', params: inWorkspace, query: page, answer: listOf(scenario) }),
+  scenarioCreate: contract({
+    id: 'scenarioCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/scenarios', action: 'scenario.write', summary: 'Add a scenario', params: inWorkspace,
+    body: z.object({ name, draft: scenarioDraft }), answer: scenario, status: 201,
+  }),
+  scenarioRead: contract({
+    id: 'scenarioRead', method: 'GET', path: '/api/v1/scenarios/{id}', action: 'scenario.read', summary: 'A scenario, its runs and the overlaps among its regions', params: byId,
+    answer: scenario.extend({ runs: z.array(runSummary), overlaps: z.array(overlap.extend({ aName: z.string(), bName: z.string() })) }),
+  }),
+  scenarioChange: contract({
+    id: 'scenarioChange', method: 'PATCH', path: '/api/v1/scenarios/{id}', action: 'scenario.write', summary: 'Change a scenario’s draft', params: byId,
+    body: z.object({ revision, name: name.optional(), draft: scenarioDraft.optional() }), answer: scenario,
+  }),
+  scenarioRemove: contract({
+    id: 'scenarioRemove', method: 'DELETE', path: '/api/v1/scenarios/{id}', action: 'scenario.write', summary: 'Put a scenario in the bin', params: byId,
+    query: z.object({ revision: z.coerce.number().int() }), answer: changed,
+  }),
+  runCreate: contract({
+    id: 'runCreate', method: 'POST', path: '/api/v1/scenarios/{id}/runs', action: 'run.create', summary: 'Run a scenario as it stands; answers with a job', params: byId,
+    body: z.object({ revision }), answer: jobView, status: 202,
+  }),
+  jobRead: contract({ id: 'jobRead', method: 'GET', path: '/api/v1/jobs/{id}', action: 'run.read', summary: 'State of a job', params: byId, answer: jobView }),
+  jobEvents: contract({ id: 'jobEvents', method: 'GET', path: '/api/v1/jobs/{id}/events', action: 'run.read', summary: 'State of a job as server-sent events', params: byId, answer: bytes, answerType: 'text/event-stream' }),
+  jobCancel: contract({ id: 'jobCancel', method: 'DELETE', path: '/api/v1/jobs/{id}', action: 'run.create', summary: 'Cancel a job', params: byId, answer: jobView }),
+  runRead: contract({ id: 'runRead', method: 'GET', path: '/api/v1/runs/{id}', action: 'run.read', summary: 'A run and its result', params: byId, answer: runView }),
+  runComparison: contract({
+    id: 'runComparison', method: 'GET', path: '/api/v1/runs/{id}/comparison', action: 'run.read', summary: 'A run beside an observed series', params: byId,
+    query: z.object({ observed: ulid }), answer: comparison,
+  }),
+  runFile: contract({
+    id: 'runFile', method: 'GET', path: '/api/v1/runs/{id}/files/{file}', action: 'report.export', summary: 'Report and data of a run: report.pdf, budget.csv, series.csv, regions.geojson, run.json',
+    params: z.object({ id: ulid, file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'run.json']) }),
+    query: z.object({ observed: ulid.optional() }), answer: bytes, answerType: 'application/octet-stream',
+  }),
+
+  // Publication
+  editionList: contract({ id: 'editionList', method: 'GET', path: '/api/v1/workspaces/{workspace}/editions', action: 'edition.list', summary: 'Published editions of a workspace', params: inWorkspace, query: page, answer: listOf(edition) }),
+  editionCreate: contract({
+    id: 'editionCreate', method: 'POST', path: '/api/v1/runs/{id}/editions', action: 'edition.publish', summary: 'Publish a run under a readable link; the same link again makes the next edition', params: byId,
+    body: z.object({ slug: z.string().regex(/^[a-z0-9]+(-[a-z0-9]+)*$/, 'must be lower-case letters, digits and single hyphens').min(3).max(80), title: name, licence: prose, observedId: ulid.nullable() }),
+    answer: edition, status: 201,
+  }),
+  editionWithdraw: contract({
+    id: 'editionWithdraw', method: 'POST', path: '/api/v1/editions/{slug}/{n}/withdrawal', action: 'edition.publish', summary: 'Withdraw an edition; its page stays and says why', params: editionPath,
+    body: z.object({ reason: prose.min(3) }), answer: edition,
+  }),
+  editionIndex: contract({ id: 'editionIndex', method: 'GET', path: '/api/v1/editions', action: 'public.read', summary: 'Newest editions that are published on this instance', answer: listOf(edition.extend({ sentence: z.string() })) }),
+  editionRead: contract({
+    id: 'editionRead', method: 'GET', path: '/api/v1/editions/{slug}', action: 'public.read', summary: 'A published edition; the newest unless n is given',
+    params: z.object({ slug: z.string().max(80) }), query: z.object({ n: z.coerce.number().int().min(1).optional() }), answer: editionView,
+  }),
+  editionFile: contract({
+    id: 'editionFile', method: 'GET', path: '/api/v1/editions/{slug}/{n}/{file}', action: 'public.read', summary: 'Downloads of an edition',
+    params: editionPath.extend({ file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'run.json']) }),
+    answer: bytes, answerType: 'application/octet-stream',
+  }),
+
+  // The instance
+  openapi: contract({ id: 'openapi', method: 'GET', path: '/api/v1/openapi.json', action: 'public.read', summary: 'This interface as OpenAPI 3.1', answer: z.looseObject({}) }),
+  health: contract({ id: 'health', method: 'GET', path: '/api/v1/health', action: 'public.read', summary: 'Whether the server is ready', answer: z.object({ status: z.literal('ok'), version: z.string() }) }),
+}
+export type ContractId = keyof typeof contracts
+export const contractList: Contract[] = Object.values(contracts) as unknown as Contract[]

@@ -1,0 +1,145 @@
+import { z } from 'zod'
+import { coefficientSetIds, coreChoices, oceanModes, regionKinds, roles } from '../types/domain.ts'
+
+/** Limits guard the server against bodies that cannot be meant; each says what it guards. */
+export const limits = {
+  /** A name has to fit a table row and a PDF line. */
+  nameLength: 120,
+  /** Notes and reasons are prose, not files. */
+  textLength: 4000,
+  /** Regions in one calculation or scenario. */
+  regions: 1000,
+  /** Epochs in one JSON series. */
+  epochs: 20000,
+  /** Body of `evaluate`: 8 MiB, as architecture.md fixes. */
+  evaluateBytes: 8 * 1024 * 1024,
+  /** An original file: sixty years of daily Earth orientation are 3.5 MB. */
+  originalBytes: 32 * 1024 * 1024,
+} as const
+
+export const ulid = z.string().regex(/^[0-9A-HJKMNP-TV-Z]{26}$/, 'is not an identifier')
+export const sha256 = z.string().regex(/^[0-9a-f]{64}$/)
+export const name = z.string().trim().min(1, 'is empty').max(limits.nameLength)
+export const prose = z.string().trim().max(limits.textLength)
+export const revision = z.int().min(1)
+const finite = z.number()
+
+// Coordinates are counted and checked by the geometry reader, far quicker than a schema could.
+export const geometry = z.object({ type: z.enum(['Polygon', 'MultiPolygon']), coordinates: z.array(z.unknown()) })
+  .meta({ description: 'GeoJSON Polygon or MultiPolygon (RFC 7946), WGS 84' })
+
+export const physicsSettings = z.object({
+  ocean: z.enum(oceanModes),
+  coefficients: z.enum(coefficientSetIds),
+  core: z.enum(coreChoices),
+})
+
+export const measured = z.object({ value: finite, sigmaWhite: finite, sigma: finite })
+export const warning = z.object({ code: z.string(), message: z.string(), regions: z.array(z.string()) })
+export const issue = z.object({
+  path: z.string().optional(), row: z.number().optional(), column: z.string().optional(), value: z.string().optional(),
+  code: z.string(), message: z.string(),
+})
+export const problem = z.object({
+  type: z.string(), title: z.string(), status: z.int(), detail: z.string().optional(), code: z.string(),
+  issues: z.array(issue).optional(),
+}).meta({ id: 'Problem', description: 'RFC 9457 problem details' })
+
+export const page = z.object({
+  limit: z.coerce.number().int().min(1).max(500).default(200),
+  cursor: z.string().max(64).optional(),
+})
+export const listOf = <T extends z.ZodType>(item: T) => z.object({ items: z.array(item), nextCursor: z.string().nullable() })
+
+export const role = z.enum(roles)
+export const agency = z.object({ id: ulid, name: z.string() })
+export const membershipView = z.object({
+  workspaceId: ulid, workspaceName: z.string(), invented: z.boolean(),
+  agencyId: ulid.nullable(), agencyName: z.string().nullable(), role,
+})
+export const me = z.object({
+  user: z.object({ id: ulid, name: z.string(), email: z.string(), operator: z.boolean() }).nullable(),
+  memberships: z.array(membershipView),
+  /** True on a demo instance: its accounts are shown on the sign-in page. */
+  demo: z.boolean(),
+})
+
+export const regionKind = z.enum(regionKinds)
+export const trendSummary = z.object({
+  massGtPerYear: measured, lodMicrosecondsPerYear: measured, driftCmPerYear: measured,
+  directionDegEast: z.number().nullable(), fromMjd: finite, toMjd: finite,
+})
+export const versionSummary = z.object({
+  id: ulid, n: z.int(), reason: z.string(), source: z.string(), licence: z.string(), independence: z.string(),
+  originalName: z.string(), originalSha256: sha256, dataSha256: sha256,
+  firstMjd: finite, lastMjd: finite, count: z.int(), createdAt: z.string(), createdBy: z.string().nullable(),
+})
+export const region = z.object({
+  id: ulid, revision, name: z.string(), kind: regionKind, note: z.string(), agency,
+  outline: z.object({ n: z.int(), sha256, areaKm2: finite, centroid: z.tuple([finite, finite]) }),
+  geometry,
+  series: z.object({ seriesId: ulid, latest: versionSummary }).nullable(),
+  trend: trendSummary.nullable(),
+  createdAt: z.string(), createdBy: z.string().nullable(),
+  canWrite: z.boolean(),
+})
+export const perGt = z.object({
+  chi1Mas: finite, chi2Mas: finite, chi3: finite, lodMicroseconds: finite, barystaticMm: finite, deltaJ2: finite,
+})
+
+export const massColumns = z.object({
+  epochColumn: z.int().min(0).optional(), valueColumn: z.int().min(0).optional(), sigmaColumn: z.int().min(0).nullable().optional(),
+  epochFormat: z.enum(['iso-date', 'year-month', 'decimal-year', 'mjd']).optional(),
+  unit: z.enum(['Gt', 'mm-we', 'cm-we']).optional(),
+  withdrawalPositive: z.boolean().optional(), delimiter: z.string().max(1).optional(), decimalComma: z.boolean().optional(),
+  header: z.boolean().optional(),
+})
+
+export const measuredPlain = z.object({ value: finite, sigma: finite.min(0) })
+export const backgroundRow = z.object({
+  key: z.string().min(1).max(40), name, source: prose, core: z.enum(coreChoices).nullable(),
+  lodMsPerCentury: measuredPlain.nullable(), chi1MasPerYear: measuredPlain.nullable(), chi2MasPerYear: measuredPlain.nullable(),
+})
+export const scenarioDraft = z.object({
+  schemaVersion: z.literal(1),
+  settings: physicsSettings.extend({
+    fromMjd: finite.nullable(), toMjd: finite.nullable(), maxGapDays: finite.min(1).max(2000),
+  }),
+  regions: z.array(z.object({ regionId: ulid, versionId: ulid, scale: finite.min(-1000).max(1000) })).max(limits.regions),
+  background: z.array(backgroundRow).max(50),
+  restOfWorld: backgroundRow.nullable(),
+  /** Observed series that the result page opens with; not part of the run. */
+  observedId: ulid.nullable(),
+})
+export type ScenarioDraft = z.output<typeof scenarioDraft>
+
+export const overlap = z.object({ a: z.string(), b: z.string(), areaKm2: finite, shareOfA: finite, shareOfB: finite })
+export const runSummary = z.object({
+  id: ulid, scenarioId: ulid, n: z.int(), name: z.string(), inputSha256: sha256, resultSha256: sha256, engine: z.string(),
+  createdAt: z.string(), createdBy: z.string().nullable(),
+})
+export const scenario = z.object({
+  id: ulid, revision, name: z.string(), draft: scenarioDraft, createdAt: z.string(), createdBy: z.string().nullable(),
+  canWrite: z.boolean(), latestRun: runSummary.nullable(),
+})
+export const jobView = z.object({
+  id: ulid, kind: z.string(), state: z.enum(['waiting', 'running', 'done', 'failed', 'cancelled']), progress: finite,
+  answer: z.object({ runId: ulid }).nullable(), problem: problem.nullable(), createdAt: z.string(),
+})
+
+export const observedSummary = z.object({
+  id: ulid, revision, name: z.string(), latest: versionSummary, format: z.string(),
+  has: z.object({ pole: z.boolean(), lod: z.boolean() }), predictedRows: z.int(), emptyRows: z.int(), canWrite: z.boolean(),
+})
+const column = z.array(z.number().nullable())
+export const observedData = observedSummary.extend({
+  mjd: z.array(finite), xMas: column, yMas: column, lodMs: column, sigmaXMas: column, sigmaYMas: column, sigmaLodMs: column,
+  predicted: z.array(z.int()),
+})
+
+export const edition = z.object({
+  id: ulid, slug: z.string(), n: z.int(), title: z.string(), licence: z.string(), workspaceName: z.string(), invented: z.boolean(),
+  runId: ulid, createdAt: z.string(), publishedBy: z.string().nullable(),
+  withdrawn: z.object({ reason: z.string(), at: z.string() }).nullable(),
+  latest: z.boolean(),
+})
