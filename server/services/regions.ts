@@ -3,7 +3,7 @@ import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import { contourOf } from '#shared/earth/contour'
 import { overlapsOf } from '#shared/geo/overlap'
-import { readOutline } from '#shared/geo/outline'
+import { requireOutline } from '#shared/geo/outline'
 import { can, type Principal } from '#shared/permissions'
 import type { OceanMode, Outline } from '#shared/types/domain'
 import { schema, type Reader } from '../database/client'
@@ -98,7 +98,7 @@ function storeOutline(context: Context, tx: Reader, regionId: string, n: number,
 export function createRegion(context: Context, principal: Principal | null, workspaceId: string, body: BodyOf<typeof contracts.regionCreate>) {
   const actor = authorise(principal, 'region.write', { workspaceId, kind: body.kind })
   requireAgency(context, workspaceId, body.agencyId)
-  const geometry = readOutline(body.geometry)
+  const geometry = requireOutline(body.geometry, 'geometry')
   const id = newId()
   const row = change(context, principal, { action: 'region.write', verb: 'region added', entity: 'region', id, workspaceId, resource: { kind: body.kind } }, (tx) => {
     const values = { id, workspaceId, agencyId: body.agencyId, kind: body.kind, name: body.name, note: body.note, createdAt: context.now(), createdBy: actor.userId }
@@ -135,7 +135,7 @@ export function changeRegion(context: Context, principal: Principal | null, id: 
   const actor = authorise(principal, 'region.write', { workspaceId: row.workspaceId, kind: row.kind })
   if (body.kind) authorise(principal, 'region.write', { workspaceId: row.workspaceId, kind: body.kind })
   if (body.agencyId) requireAgency(context, row.workspaceId, body.agencyId)
-  const geometry = body.geometry ? readOutline(body.geometry) : null
+  const geometry = body.geometry ? requireOutline(body.geometry, 'geometry') : null
   const target = { action: 'region.write' as const, verb: geometry ? 'outline changed' : 'region changed', entity: 'region', id, workspaceId: row.workspaceId, resource: { kind: row.kind }, row, revision: body.revision }
   change(context, principal, target, (tx) => {
     const before = { name: row.name, kind: row.kind, agencyId: row.agencyId, note: row.note, outline: latestOutline(context, id).sha256 }

@@ -1,3 +1,4 @@
+import { ModeNotAvailableError } from '#shared/earth/earthModel'
 import { InputError, type Issue } from '#shared/types/issue'
 
 const titles: Record<number, string> = {
@@ -29,8 +30,8 @@ export function problemBody(error: unknown): ProblemBody {
     ? error
     : error instanceof InputError
       ? new Problem(error.status, error.status === 413 ? 'too-large' : 'invalid', error.message, error.issues)
-      : isUnavailable(error)
-        ? new Problem(501, 'not-available', (error as Error).message)
+      : error instanceof ModeNotAvailableError
+        ? new Problem(501, 'not-available', error.message)
         : new Problem(500, 'internal', 'Something failed on the server. What you entered was not stored.')
   return {
     type: `urn:counterpoise:problem:${known.code}`,
@@ -40,8 +41,4 @@ export function problemBody(error: unknown): ProblemBody {
     detail: known.message,
     ...(known.issues.length ? { issues: known.issues.slice(0, 200) } : {}),
   }
-}
-
-function isUnavailable(error: unknown) {
-  return error instanceof Error && error.name === 'NotAvailableError'
 }

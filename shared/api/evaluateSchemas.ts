@@ -18,7 +18,8 @@ export const evaluateRequest = z.object({
       sigmaGt: z.array(sigmaGt).max(limits.epochs).nullable().optional(),
     }).optional(),
   })).min(1).max(limits.regions),
-  settings: z.object({
+  // Strict: a setting that is not known is a fault, never ignored.
+  settings: z.strictObject({
     ocean: z.enum(oceanModes).optional(),
     coefficients: z.enum(coefficientSetIds).optional(),
     core: z.enum(coreChoices).optional(),
