@@ -1,6 +1,6 @@
 import { noFigure } from './digits.ts'
 
-const monthNames = [
+export const monthNames = [
   'January', 'February', 'March', 'April', 'May', 'June',
   'July', 'August', 'September', 'October', 'November', 'December',
 ] as const

@@ -1,7 +1,9 @@
 /** U+2212, as wide as a plus sign. */
 export const minus = '\u2212'
-/** Narrow space between groups of three digits and before a unit; never broken across lines. */
+/** Narrow space between groups of three digits; never broken across lines. */
 export const thinSpace = '\u202f'
+/** Before a unit; never broken across lines. */
+export const hardSpace = '\u00a0'
 /** Stands where there is no figure. */
 export const noFigure = '\u2013'
 
@@ -77,12 +79,12 @@ export function formatScientific(value: number | null | undefined, digits = 1): 
 /** A ratio in per cent, signed: +53 %. */
 export function formatShare(ratio: number | null | undefined, digits = 0): string {
   const text = formatSigned(ratio === null || ratio === undefined ? null : ratio * 100, digits)
-  return text === noFigure ? text : `${text}${thinSpace}%`
+  return text === noFigure ? text : `${text}${hardSpace}%`
 }
 
 /** A size in bytes for people: 12 kB, 3.4 MB (powers of ten). */
 export function formatBytes(bytes: number): string {
-  if (bytes < 1000) return `${bytes}${thinSpace}B`
+  if (bytes < 1000) return `${bytes}${hardSpace}B`
   const step = bytes < 999_500 ? { size: 1e3, unit: 'kB' } : { size: 1e6, unit: 'MB' }
-  return `${formatNumber(bytes / step.size, bytes / step.size < 10 ? 1 : 0)}${thinSpace}${step.unit}`
+  return `${formatNumber(bytes / step.size, bytes / step.size < 10 ? 1 : 0)}${hardSpace}${step.unit}`
 }

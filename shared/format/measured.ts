@@ -1,4 +1,4 @@
-import { decimalsFor, formatNumber, formatSigned, noFigure, thinSpace } from './digits.ts'
+import { decimalsFor, formatNumber, formatSigned, hardSpace, noFigure, thinSpace } from './digits.ts'
 
 export interface MeasuredText {
   /** `+5.15` */
@@ -42,12 +42,12 @@ export function formatMeasured(
   const digits = measuredDecimals(value, sigma, options.significant)
   const shown = options.signed === false ? formatNumber(value, digits) : formatSigned(value, digits)
   const shownSigma = sigmaText(sigma, digits)
-  const unit = options.unit ? `${thinSpace}${options.unit}` : ''
+  const unit = options.unit ? `${hardSpace}${options.unit}` : ''
   return { value: shown, sigma: shownSigma, text: `${shown}${shownSigma ? ` ${shownSigma}` : ''}${unit}` }
 }
 
 function sigmaText(sigma: number | null | undefined, digits: number): string {
   if (sigma === null || sigma === undefined || !Number.isFinite(sigma) || sigma <= 0) return ''
   const text = formatNumber(sigma, digits)
-  return /[1-9]/.test(text) ? `±\u00a0${text}` : `±\u00a0<${thinSpace}${formatNumber(10 ** -digits, digits)}`
+  return /[1-9]/.test(text) ? `±${hardSpace}${text}` : `±${hardSpace}<${thinSpace}${formatNumber(10 ** -digits, digits)}`
 }
