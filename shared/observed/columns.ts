@@ -7,9 +7,6 @@ export interface ParsedObserved extends ObservedSeries {
   issues: Issue[]
   /** How the file was understood, in sentences. */
   understood: string[]
-  /** Geodetic or other excitation that the file holds already, mas; absent where it holds the pole. */
-  chi1Mas?: Float64Array
-  chi2Mas?: Float64Array
 }
 
 export const observedQuantities = ['xMas', 'yMas', 'sigmaXMas', 'sigmaYMas', 'lodMs', 'sigmaLodMs', 'chi1Mas', 'chi2Mas'] as const

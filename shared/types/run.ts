@@ -141,6 +141,9 @@ export interface ObservedSeries {
   /** Rows that hold a date and nothing else. */
   emptyRows: number
   rowsRead: number
+  /** Excitation that the file holds itself, mas, in place of the pole; absent otherwise. */
+  chi1Mas?: Float64Array
+  chi2Mas?: Float64Array
 }
 
 export interface ComparisonQuantity {
