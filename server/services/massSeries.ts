@@ -70,6 +70,12 @@ function errorSourceId(context: Context, tx: Reader, workspaceId: string, name: 
   return id
 }
 
+export function listErrorSources(context: Context, workspaceId: string) {
+  const items = context.db.select({ id: schema.errorSource.id, name: schema.errorSource.name }).from(schema.errorSource)
+    .where(eq(schema.errorSource.workspaceId, workspaceId)).orderBy(schema.errorSource.name).all()
+  return { items, nextCursor: null }
+}
+
 function versionInWorkspace(context: Context, principal: Principal | null, id: string) {
   const version = versionRow(context, id)
   const series = context.db.select().from(schema.series).where(eq(schema.series.id, version.seriesId)).get()!

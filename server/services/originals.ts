@@ -1,6 +1,7 @@
 import { existsSync } from 'node:fs'
 import { copyFile, mkdir, readFile, rename, rm } from 'node:fs/promises'
 import { dirname, join } from 'node:path'
+import { decodeText } from '#shared/series/decodeText'
 import { schema, type Reader } from '../database/client'
 import type { Upload } from '../utils/body'
 import type { Context } from './context'
@@ -36,9 +37,7 @@ export async function readOriginal(context: Context, sha256: string): Promise<Bu
   return readFile(originalPath(context.dataDir, sha256))
 }
 
-/** Text of an uploaded file: UTF-8, or UTF-16 where a byte-order mark says so. */
+/** Text of an uploaded file. */
 export async function uploadText(upload: Upload): Promise<string> {
-  const bytes = await readFile(upload.path)
-  const encoding = bytes[0] === 0xff && bytes[1] === 0xfe ? 'utf-16le' : bytes[0] === 0xfe && bytes[1] === 0xff ? 'utf-16be' : 'utf-8'
-  return new TextDecoder(encoding).decode(bytes)
+  return decodeText(await readFile(upload.path))
 }

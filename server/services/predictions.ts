@@ -42,5 +42,14 @@ export function trendOf(series: MassSeries, perGt: PerGt) {
     directionDegEast: direction,
     fromMjd: series.mjd[0]!, toMjd: series.mjd.at(-1)!,
     warnings: fit.warnings,
+    /** The parts of the mass trend's error: of this series alone, and shared with others by name. */
+    ownSigma: fit.sigma, sharedRates: series.sharedRates,
   }
+}
+
+/** The trend as the API gives it. */
+export function trendView(trend: ReturnType<typeof trendOf>) {
+  if (!trend) return null
+  const { massGtPerYear, lodMicrosecondsPerYear, driftCmPerYear, directionDegEast, fromMjd, toMjd } = trend
+  return { massGtPerYear, lodMicrosecondsPerYear, driftCmPerYear, directionDegEast, fromMjd, toMjd }
 }

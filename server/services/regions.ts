@@ -1,4 +1,4 @@
-import { and, desc, eq, inArray, isNull, lt } from 'drizzle-orm'
+import { and, desc, eq, inArray, isNotNull, isNull, lt } from 'drizzle-orm'
 import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import { contourOf } from '#shared/earth/contour'
@@ -13,7 +13,7 @@ import type { Context } from './context'
 import { canonicalJson, sha256Hex } from './hash'
 import { pageOf } from './paging'
 import { requireAgency } from './people'
-import { defaultSettings, perGigatonne, trendOf, type PerGt } from './predictions'
+import { defaultSettings, perGigatonne, trendOf, trendView, type PerGt } from './predictions'
 import { massSeries, versionRow, versionsOf, versionView } from './seriesStore'
 
 export type RegionRow = typeof schema.region.$inferSelect
@@ -44,7 +44,7 @@ interface Derived { perGt: PerGt, centroid: [number, number], trend: ReturnType<
 const derivedCache = new WeakMap<Context, Map<string, Derived>>()
 
 /** What follows from outline, series version and Earth model alone: kept, since a list asks for it again and again. */
-function derived(context: Context, outline: OutlineRow & { geometry: Outline }, versionId: string | null): Derived {
+export function derivedOfRegion(context: Context, outline: OutlineRow & { geometry: Outline }, versionId: string | null): Derived {
   const cache = derivedCache.get(context) ?? new Map<string, Derived>()
   derivedCache.set(context, cache)
   const key = `${outline.sha256} ${versionId}`
@@ -64,25 +64,22 @@ export function regionView(context: Context, principal: Principal | null, row: R
   const agency = context.db.select().from(schema.agency).where(eq(schema.agency.id, row.agencyId)).get()!
   const series = seriesOfRegion(context, row.id)
   const latest = series ? versionsOf(context, series.id)[0] ?? null : null
-  const { centroid, trend } = derived(context, outline, latest?.id ?? null)
+  const { centroid, trend } = derivedOfRegion(context, outline, latest?.id ?? null)
   return {
     id: row.id, revision: row.revision, name: row.name, kind: row.kind, note: row.note,
     agency: { id: agency.id, name: agency.name },
     outline: { n: outline.n, sha256: outline.sha256, areaKm2: outline.areaM2 / 1e6, centroid },
     geometry: outline.geometry as { type: 'Polygon' | 'MultiPolygon', coordinates: unknown[] },
     series: series && latest ? { seriesId: series.id, latest: versionView(context, latest) } : null,
-    trend: trend && {
-      massGtPerYear: trend.massGtPerYear, lodMicrosecondsPerYear: trend.lodMicrosecondsPerYear, driftCmPerYear: trend.driftCmPerYear,
-      directionDegEast: trend.directionDegEast, fromMjd: trend.fromMjd, toMjd: trend.toMjd,
-    },
+    trend: trendView(trend),
     createdAt: row.createdAt, createdBy: nameOfUser(context, row.createdBy),
     canWrite: can(principal, 'region.write', { workspaceId: row.workspaceId, kind: row.kind }),
   }
 }
 
-export function listRegions(context: Context, principal: Principal | null, workspaceId: string, { limit, cursor }: { limit: number, cursor?: string }) {
+export function listRegions(context: Context, principal: Principal | null, workspaceId: string, { limit, cursor, bin }: { limit: number, cursor?: string, bin?: 'only' }) {
   const rows = context.db.select().from(schema.region)
-    .where(and(eq(schema.region.workspaceId, workspaceId), isNull(schema.region.deletedAt), cursor ? lt(schema.region.id, cursor) : undefined))
+    .where(and(eq(schema.region.workspaceId, workspaceId), bin ? isNotNull(schema.region.deletedAt) : isNull(schema.region.deletedAt), cursor ? lt(schema.region.id, cursor) : undefined))
     .orderBy(desc(schema.region.id)).limit(limit + 1).all()
   return pageOf(rows, limit, row => regionView(context, principal, row))
 }
@@ -122,7 +119,7 @@ export function readRegion(context: Context, principal: Principal | null, id: st
   const series = seriesOfRegion(context, id)
   return {
     ...view,
-    perGt: derived(context, outline, view.series?.latest.id ?? null).perGt,
+    perGt: derivedOfRegion(context, outline, view.series?.latest.id ?? null).perGt,
     settings: { ...defaultSettings(context) },
     outlines: outlinesOf(context, id).map(o => ({ n: o.n, areaKm2: o.areaM2 / 1e6, sha256: o.sha256, createdAt: o.createdAt, createdBy: nameOfUser(context, o.createdBy) })),
     versions: series ? versionsOf(context, series.id).map(v => versionView(context, v)) : [],
@@ -179,6 +176,6 @@ export function predictRegion(context: Context, principal: Principal | null, id:
     mjd: mass.mjd, massGt: mass.massGt, sigmaMassGt: mass.sigmaGt ?? mass.mjd.map(() => null),
     lodMicroseconds: relative.map(m => m * perGt.lodMicroseconds),
     chi1Mas: relative.map(m => m * perGt.chi1Mas), chi2Mas: relative.map(m => m * perGt.chi2Mas),
-    trend, warnings: trend ? trend.warnings.map(w => w.message) : ['Fewer than three epochs: no trend.'],
+    trend: trendView(trend), warnings: trend ? trend.warnings.map(w => w.message) : ['Fewer than three epochs: no trend.'],
   }
 }

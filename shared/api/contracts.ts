@@ -5,7 +5,7 @@ import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
   agency, edition, geometry, jobView, limits, listOf, massColumns, me, name, observedData, observedSummary, overlap, page, perGt, prose,
-  region, regionKind, revision, role, runSummary, scenario, scenarioDraft, sha256, trendSummary, ulid, versionSummary,
+  region, regionKind, regionTotal, revision, role, runSummary, scenario, scenarioDraft, sha256, trendSummary, ulid, versionSummary,
 } from './schemas.ts'
 
 const inWorkspace = z.object({ workspace: ulid })
@@ -91,7 +91,15 @@ export const contracts = {
   }),
 
   // Regions
-  regionList: contract({ id: 'regionList', method: 'GET', path: '/api/v1/workspaces/{workspace}/regions', action: 'region.read', summary: 'Regions', params: inWorkspace, query: page, answer: listOf(region) }),
+  regionList: contract({ id: 'regionList', method: 'GET', path: '/api/v1/workspaces/{workspace}/regions', action: 'region.read', summary: 'Regions', params: inWorkspace, query: page.extend({ bin: z.enum(['only']).optional() }), answer: listOf(region) }),
+  regionTotal: contract({
+    id: 'regionTotal', method: 'GET', path: '/api/v1/workspaces/{workspace}/regions/total', action: 'region.read',
+    summary: 'What the latest trends of all regions add up to, shared errors once, with the overlaps to be known before any sum', params: inWorkspace, answer: regionTotal,
+  }),
+  errorSourceList: contract({
+    id: 'errorSourceList', method: 'GET', path: '/api/v1/workspaces/{workspace}/error-sources', action: 'region.read',
+    summary: 'Named sources of systematic error; the same name in two series is the same error', params: inWorkspace, answer: listOf(z.object({ id: ulid, name: z.string() })),
+  }),
   regionCreate: contract({
     id: 'regionCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions', action: 'region.write', summary: 'Add a region', params: inWorkspace,
     body: z.object({ name, kind: regionKind, agencyId: ulid, note: prose.default(''), geometry }), answer: region, status: 201, maxBytes: limits.evaluateBytes,
@@ -141,6 +149,10 @@ export const contracts = {
       sharedRates: z.array(z.object({ source: z.string(), sigmaGtPerYear: z.number() })), recipe: z.looseObject({}),
     }),
   }),
+  seriesVersionList: contract({
+    id: 'seriesVersionList', method: 'GET', path: '/api/v1/workspaces/{workspace}/series-versions', action: 'region.read',
+    summary: 'Every stored version of every mass series, newest first, to choose from', params: inWorkspace, answer: listOf(versionSummary.extend({ regionId: ulid })),
+  }),
   originalRead: contract({
     id: 'originalRead', method: 'GET', path: '/api/v1/series-versions/{id}/original', action: 'region.read', summary: 'The original file as it was sent', params: byId, answer: bytes, answerType: 'application/octet-stream',
   }),
@@ -155,6 +167,10 @@ export const contracts = {
   observedRemove: contract({
     id: 'observedRemove', method: 'DELETE', path: '/api/v1/observed/{id}', action: 'observed.write', summary: 'Put an observed series in the bin', params: byId,
     query: z.object({ revision: z.coerce.number().int() }), answer: changed,
+  }),
+  observedRestore: contract({
+    id: 'observedRestore', method: 'POST', path: '/api/v1/observed/{id}/restore', action: 'observed.write', summary: 'Take an observed series out of the bin', params: byId,
+    body: z.object({ revision }), answer: changed,
   }),
 
   // Scenarios, runs, jobs
@@ -174,6 +190,10 @@ export const contracts = {
   scenarioRemove: contract({
     id: 'scenarioRemove', method: 'DELETE', path: '/api/v1/scenarios/{id}', action: 'scenario.write', summary: 'Put a scenario in the bin', params: byId,
     query: z.object({ revision: z.coerce.number().int() }), answer: changed,
+  }),
+  scenarioRestore: contract({
+    id: 'scenarioRestore', method: 'POST', path: '/api/v1/scenarios/{id}/restore', action: 'scenario.write', summary: 'Take a scenario out of the bin', params: byId,
+    body: z.object({ revision }), answer: changed,
   }),
   runCreate: contract({
     id: 'runCreate', method: 'POST', path: '/api/v1/scenarios/{id}/runs', action: 'run.create', summary: 'Run a scenario as it stands; answers with a job', params: byId,

@@ -93,6 +93,8 @@ export const massColumns = z.object({
   unit: z.enum(['Gt', 'mm-we', 'cm-we']).optional(),
   withdrawalPositive: z.boolean().optional(), delimiter: z.string().max(1).optional(), decimalComma: z.boolean().optional(),
   header: z.boolean().optional(),
+  /** Marks of a missing value besides the usual ones; a mark is a cell, not a text. */
+  missingValues: z.array(z.string().trim().min(1).max(20)).max(10).optional(),
 })
 
 export const measuredPlain = z.object({ value: finite, sigma: finite.min(0) })
@@ -114,6 +116,13 @@ export const scenarioDraft = z.object({
 export type ScenarioDraft = z.output<typeof scenarioDraft>
 
 export const overlap = z.object({ a: z.string(), b: z.string(), areaKm2: finite, shareOfA: finite, shareOfB: finite })
+/** Latest trends of all regions, summed; each trend is over its own span. */
+export const regionTotal = z.object({
+  regions: z.int(), withTrend: z.int(), withoutSeries: z.int(),
+  massGtPerYear: measured.nullable(), lodMicrosecondsPerYear: measured.nullable(),
+  fromMjd: finite.nullable(), toMjd: finite.nullable(), oneSpan: z.boolean(),
+  overlaps: z.array(overlap.extend({ aName: z.string(), bName: z.string() })),
+})
 export const runSummary = z.object({
   id: ulid, scenarioId: ulid, n: z.int(), name: z.string(), inputSha256: sha256, resultSha256: sha256, engine: z.string(),
   createdAt: z.string(), createdBy: z.string().nullable(),
