@@ -2,6 +2,7 @@ import { z } from 'zod'
 import { oceanModes } from '../types/domain.ts'
 import { contract, type Contract } from './contract.ts'
 import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
+import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
   agency, edition, geometry, jobView, limits, listOf, massColumns, me, name, observedData, observedSummary, overlap, page, perGt, prose,
@@ -88,6 +89,11 @@ export const contracts = {
   evaluate: contract({
     id: 'evaluate', method: 'POST', path: '/api/v1/evaluate', action: 'evaluate', summary: 'Effect of mass changes on the day and the pole; stores nothing',
     body: evaluateRequest, answer: evaluateAnswer, maxBytes: limits.evaluateBytes,
+  }),
+
+  observedReduce: contract({
+    id: 'observedReduce', method: 'POST', path: '/api/v1/observed/reduce', action: 'evaluate', summary: 'Take the known parts out of an observed series; stores nothing', bodyType: 'multipart',
+    body: reduceOptions, answer: reducedSeries, maxBytes: limits.originalBytes,
   }),
 
   // Regions
