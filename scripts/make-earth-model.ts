@@ -1,11 +1,15 @@
-// Makes the ocean function of the Earth model from Natural Earth, reproducibly:
+// Makes the Earth model, reproducibly: the ocean function from Natural Earth (shared/earth/data) and the sensitivity fields
+// (public/earth/fields.bin), at degree 256 some 20 s:
 //   node scripts/run-ts.mjs scripts/make-earth-model.ts
 import { createHash } from 'node:crypto'
-import { writeFileSync } from 'node:fs'
+import { mkdirSync, writeFileSync } from 'node:fs'
+import { gzipSync } from 'node:zlib'
 import { cellCoverage } from '../shared/earth/cellCoverage.ts'
 import { EARTH_RADIUS_M } from '../shared/earth/constants.ts'
-import { encodeOceanCells, geocentricRowEdgesDeg, OCEAN_CELL_COLUMNS, OCEAN_CELL_ROWS } from '../shared/earth/oceanCells.ts'
+import { makeFields } from '../shared/earth/makeFields.ts'
+import { decodeOceanCells, encodeOceanCells, geocentricRowEdgesDeg, OCEAN_CELL_COLUMNS, OCEAN_CELL_ROWS } from '../shared/earth/oceanCells.ts'
 import { ringIntegrals } from '../shared/earth/ringIntegrals.ts'
+import { fieldFile } from '../shared/earth/sensitivityField.ts'
 import { readLand } from './earth/land.ts'
 
 const land = readLand()
@@ -56,3 +60,9 @@ for (let row = 0; row < OCEAN_CELL_ROWS; row++) {
   weight += w * OCEAN_CELL_COLUMNS
 }
 console.log(`sea ${oceanSr / (4 * Math.PI)} of the sphere (cells: ${cellSum / weight}); encoded cells ${cells.length} characters`)
+
+const { header, payload } = makeFields(decodeOceanCells(cells), { degree: 256, stepDeg: 0.5, oceanSha256: sha256 })
+const file = fieldFile(header, gzipSync(payload, { level: 9 }))
+mkdirSync('public/earth', { recursive: true })
+writeFileSync('public/earth/fields.bin', file)
+console.log(`sensitivity fields ${header.payloadSha256}: ${file.length} bytes`)

@@ -14,6 +14,8 @@ export interface LeastSquaresFit {
   /** s² = Σ standardised² / (n − p). NaN without degrees of freedom. */
   variance: number
   degreesOfFreedom: number
+  /** ln det AᵀWA, as restricted likelihoods need it. */
+  logDeterminant: number
 }
 
 /** Thrown when the columns do not determine the coefficients. */
@@ -61,7 +63,11 @@ export function weightedLeastSquares(columns: ArrayLike<number>[], y: ArrayLike<
     }
     return row
   })
-  for (let j = 0; j < p; j++) coefficients[j] = coefficients[j]! / norms[j]!
+  let logDeterminant = 0
+  for (let j = 0; j < p; j++) {
+    coefficients[j] = coefficients[j]! / norms[j]!
+    logDeterminant += 2 * Math.log(Math.abs(r[j]![j]!) * norms[j]!)
+  }
 
   const model = new Float64Array(n)
   const residuals = new Float64Array(n)
@@ -79,7 +85,7 @@ export function weightedLeastSquares(columns: ArrayLike<number>[], y: ArrayLike<
   const variance = degreesOfFreedom > 0 ? chi2 / degreesOfFreedom : Number.NaN
   const sigmas = new Float64Array(p)
   for (let j = 0; j < p; j++) sigmas[j] = Math.sqrt(variance * cofactor[j]![j]!)
-  return { coefficients, cofactor, sigma: sigmas, model, residuals, standardised, variance, degreesOfFreedom }
+  return { coefficients, cofactor, sigma: sigmas, model, residuals, standardised, variance, degreesOfFreedom, logDeterminant }
 }
 
 function checkSizes(columns: ArrayLike<number>[], n: number, sigma?: ArrayLike<number> | null): void {
