@@ -65,8 +65,9 @@ export function fitUnder(model: NoiseModelName, parameter: number, { columns, y 
 }
 
 export interface AveragedFit {
-  /** Coefficients of the design and their one-sigmas, averaged over the parameter with its likelihood as weight. */
+  /** Coefficients of the design, averaged over the parameter with its likelihood as weight. */
   coefficients: Float64Array
+  /** Half widths of the intervals about them that hold 68.3 % of the mixture. */
   sigma: Float64Array
   /** Mean of the parameter under its likelihood. */
   parameter: number
@@ -75,10 +76,10 @@ export interface AveragedFit {
 }
 
 /** Parameters tried over a range, and the fraction of the highest likelihood that still counts. */
-const POINTS = 16
+const POINTS = 12
 const COUNTS = 0.02
 /** Points that the likelihood must spread over, or the range is narrowed around it. */
-const RESOLVED = 6
+const RESOLVED = 5
 
 /**
  * Fit under a noise model whose parameter is not known: restricted likelihood (Patterson & Thompson 1971, Biometrika 58, 545), which
@@ -109,6 +110,31 @@ function average(fits: NoiseFit[], weight: number[], p: number): AveragedFit {
   const total = weight.reduce((a, b) => a + b)
   const mean = (pick: (fit: NoiseFit) => number): number => fits.reduce((sum, fit, i) => sum + weight[i]! * pick(fit), 0) / total
   const coefficients = Float64Array.from({ length: p }, (_, j) => mean(({ fit }) => fit.coefficients[j]!))
-  const sigma = coefficients.map((c, j) => Math.sqrt(mean(({ fit }) => fit.sigma[j]! ** 2 + (fit.coefficients[j]! - c) ** 2)))
+  const sigma = coefficients.map((c, j) => halfWidth(c, fits.map(({ fit }, i) => ({ weight: weight[i]! / total, mean: fit.coefficients[j]!, sigma: fit.sigma[j]! }))))
   return { coefficients, sigma, parameter: mean(fit => fit.parameter), deviance: Math.min(...fits.map(fit => fit.deviance)) }
+}
+
+/** Part of a normal distribution within one sigma. */
+const WITHIN_ONE_SIGMA = 0.6826894921370859
+
+/** Half width s for which centre ± s holds as much of a mixture of normal distributions as ± one sigma of one of them. */
+function halfWidth(centre: number, parts: { weight: number, mean: number, sigma: number }[]): number {
+  let low = 0
+  let high = Math.max(...parts.map(part => part.sigma + Math.abs(part.mean - centre)))
+  const inside = (s: number): number => parts.reduce((sum, { weight, mean, sigma }) =>
+    sum + (sigma > 0 ? weight * (normal((centre + s - mean) / sigma) - normal((centre - s - mean) / sigma)) : Math.abs(mean - centre) <= s ? weight : 0), 0)
+  for (let round = 0; round < 50 && high - low > 1e-9 * high; round++) {
+    const middle = (low + high) / 2
+    if (inside(middle) < WITHIN_ONE_SIGMA) low = middle
+    else high = middle
+  }
+  return high
+}
+
+/** Normal distribution function to 7.5e-8 (Abramowitz & Stegun 1964, 26.2.17). */
+function normal(x: number): number {
+  const t = 1 / (1 + 0.2316419 * Math.abs(x))
+  const tail = Math.exp(-x * x / 2) / Math.sqrt(2 * Math.PI)
+    * t * (0.319381530 + t * (-0.356563782 + t * (1.781477937 + t * (-1.821255978 + t * 1.330274429))))
+  return x >= 0 ? 1 - tail : tail
 }
