@@ -47,9 +47,9 @@ export async function createObserved(context: Context, principal: Principal | nu
   return observedSummary(context, principal, observedRow(context, id))
 }
 
-export function observedRow(context: Context, id: string) {
-  const row = context.db.select().from(schema.series).where(and(eq(schema.series.id, id), eq(schema.series.quantity, 'earth-orientation'), isNull(schema.series.deletedAt))).get()
-  if (!row) throw new Problem(404, 'not-found', 'There is no such observed series.')
+export function observedRow(context: Context, id: string, { inBin = false } = {}) {
+  const row = context.db.select().from(schema.series).where(and(eq(schema.series.id, id), eq(schema.series.quantity, 'earth-orientation'))).get()
+  if (!row || (row.deletedAt && !inBin)) throw new Problem(404, 'not-found', 'There is no such observed series.')
   return row
 }
 
@@ -98,12 +98,12 @@ export function readObserved(context: Context, principal: Principal | null, id: 
   }
 }
 
-export function binObserved(context: Context, principal: Principal | null, id: string, revision: number) {
-  const row = observedRow(context, id)
+export function binObserved(context: Context, principal: Principal | null, id: string, revision: number, restore = false) {
+  const row = observedRow(context, id, { inBin: restore })
   const next = row.revision + 1
-  return change(context, principal, { action: 'observed.write', verb: 'put in the bin', entity: 'observed series', id, workspaceId: row.workspaceId, row, revision }, (tx) => {
-    tx.update(schema.series).set({ deletedAt: context.now(), revision: next }).where(eq(schema.series.id, id)).run()
-    return { result: { revision: next }, before: { name: row.name } }
+  return change(context, principal, { action: 'observed.write', verb: restore ? 'taken out of the bin' : 'put in the bin', entity: 'observed series', id, workspaceId: row.workspaceId, row, revision }, (tx) => {
+    tx.update(schema.series).set({ deletedAt: restore ? null : context.now(), revision: next }).where(eq(schema.series.id, id)).run()
+    return { result: { revision: next }, before: { name: row.name }, after: { inBin: !restore } }
   })
 }
 

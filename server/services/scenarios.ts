@@ -17,9 +17,9 @@ import { massSeries } from './seriesStore'
 
 export type ScenarioRow = typeof schema.scenario.$inferSelect
 
-export function scenarioRow(context: Context, id: string): ScenarioRow {
-  const row = context.db.select().from(schema.scenario).where(and(eq(schema.scenario.id, id), isNull(schema.scenario.deletedAt))).get()
-  if (!row) throw new Problem(404, 'not-found', 'There is no such scenario.')
+export function scenarioRow(context: Context, id: string, { inBin = false } = {}): ScenarioRow {
+  const row = context.db.select().from(schema.scenario).where(eq(schema.scenario.id, id)).get()
+  if (!row || (row.deletedAt && !inBin)) throw new Problem(404, 'not-found', 'There is no such scenario.')
   return row
 }
 
@@ -119,12 +119,12 @@ export function changeScenario(context: Context, principal: Principal | null, id
   return scenarioView(context, principal, scenarioRow(context, id))
 }
 
-export function binScenario(context: Context, principal: Principal | null, id: string, revision: number) {
-  const row = scenarioRow(context, id)
+export function binScenario(context: Context, principal: Principal | null, id: string, revision: number, restore = false) {
+  const row = scenarioRow(context, id, { inBin: restore })
   const next = row.revision + 1
-  return change(context, principal, { action: 'scenario.write', verb: 'put in the bin', entity: 'scenario', id, workspaceId: row.workspaceId, resource: { ownerId: row.createdBy }, row, revision }, (tx) => {
-    tx.update(schema.scenario).set({ deletedAt: context.now(), revision: next }).where(eq(schema.scenario.id, id)).run()
-    return { result: { revision: next }, before: { name: row.name } }
+  return change(context, principal, { action: 'scenario.write', verb: restore ? 'taken out of the bin' : 'put in the bin', entity: 'scenario', id, workspaceId: row.workspaceId, resource: { ownerId: row.createdBy }, row, revision }, (tx) => {
+    tx.update(schema.scenario).set({ deletedAt: restore ? null : context.now(), revision: next }).where(eq(schema.scenario.id, id)).run()
+    return { result: { revision: next }, before: { name: row.name }, after: { inBin: !restore } }
   })
 }
 

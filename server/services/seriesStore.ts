@@ -1,4 +1,4 @@
-import { desc, eq } from 'drizzle-orm'
+import { and, desc, eq, isNull } from 'drizzle-orm'
 import type { MassSeries } from '#shared/types/run'
 import { schema, type Reader } from '../database/client'
 import { Problem } from '../utils/problem'
@@ -34,6 +34,16 @@ export function versionView(context: Context, row: VersionRow) {
     originalName: row.originalName, originalSha256: row.originalSha256, dataSha256: row.dataSha256,
     firstMjd: row.firstMjd, lastMjd: row.lastMjd, count: row.count, createdAt: row.createdAt, createdBy: nameOfUser(context, row.createdBy),
   }
+}
+
+/** Versions of every mass series of a workspace, for regions and series that are not in the bin; newest first. */
+export function listVersions(context: Context, workspaceId: string) {
+  const rows = context.db.select({ version: schema.seriesVersion, regionId: schema.region.id }).from(schema.seriesVersion)
+    .innerJoin(schema.series, eq(schema.series.id, schema.seriesVersion.seriesId))
+    .innerJoin(schema.region, eq(schema.region.id, schema.series.regionId))
+    .where(and(eq(schema.region.workspaceId, workspaceId), isNull(schema.series.deletedAt), isNull(schema.region.deletedAt)))
+    .orderBy(desc(schema.seriesVersion.id)).all()
+  return { items: rows.map(({ version, regionId }) => ({ ...versionView(context, version), regionId })), nextCursor: null }
 }
 
 export function sharedRatesOf(context: Context, versionId: string) {
