@@ -14,6 +14,8 @@ export interface MeasuredOptions {
   signed?: boolean
   /** Most significant digits of the value, whatever the uncertainty: the model is no better than a few in a thousand. */
   significant?: number
+  /** Most decimals, whatever the uncertainty: a column reads better when its small rows do not run on. */
+  decimals?: number
   /** Unit behind both, in `text` only. */
   unit?: string
 }
@@ -39,7 +41,7 @@ export function formatMeasured(
   options: MeasuredOptions = {},
 ): MeasuredText {
   if (value === null || value === undefined || !Number.isFinite(value)) return { value: noFigure, sigma: '', text: noFigure }
-  const digits = measuredDecimals(value, sigma, options.significant)
+  const digits = Math.min(measuredDecimals(value, sigma, options.significant), options.decimals ?? mostDecimals)
   const shown = options.signed === false ? formatNumber(value, digits) : formatSigned(value, digits)
   const shownSigma = sigmaText(sigma, digits)
   const unit = options.unit ? `${hardSpace}${options.unit}` : ''
