@@ -7,6 +7,7 @@ import { can, type Principal } from '#shared/permissions'
 import { InputError, type Issue } from '#shared/types/issue'
 import { schema } from '../database/client'
 import { sha256Hex } from '../services/hash'
+import { workspaceOfRoute } from '../services/rowWorkspace'
 import { principalOfSession } from '../services/sessions'
 import { readJson, readMultipart, type Upload } from './body'
 import { useContext } from './context'
@@ -40,8 +41,8 @@ export function route<C extends Contract>(contract: C, handle: (call: RouteCall<
       if (!principal && contract.action !== 'public.read') throw new Problem(401, 'sign-in', 'This needs an account: sign in first.')
 
       const params = parse(contract.params, getRouterParams(event, { decode: true }), 404)
-      const workspaceId = (params as { workspace?: string } | undefined)?.workspace
-      if (workspaceId && principal && !principal.memberships.some(m => m.workspaceId === workspaceId)) throw new Problem(404, 'not-found', 'There is no such workspace here.')
+      const workspaceId = workspaceOfRoute(context, contract, params as Record<string, string> | undefined)
+      if (workspaceId && !principal?.memberships.some(m => m.workspaceId === workspaceId)) throw new Problem(404, 'not-found', 'There is no such thing here.')
       if (!can(principal, contract.action, { workspaceId })) throw new Problem(403, 'role', 'Your role in this workspace does not allow this.')
 
       const query = parse(contract.query, getQuery(event), 422)
