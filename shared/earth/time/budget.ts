@@ -1,6 +1,7 @@
 import type { Measured } from '../../types/domain.ts'
 import type { BackgroundRow, BudgetRow } from '../../types/run.ts'
 import { DEGREE, POLE_MM_PER_MAS } from '../constants.ts'
+import { poleDirectionDegEast } from '../excitation.ts'
 import type { ResponsePerGt } from '../response.ts'
 import { covarianceOfFunctionals, varianceOfFunctional } from './covariance.ts'
 import type { Covariance } from './covariance.ts'
@@ -119,21 +120,14 @@ export function driftOf(chi1: number, chi2: number, quoted: DriftCovariance, whi
   const drift: Measured = length > 0
     ? { value: length, sigmaWhite: along(white), sigma: along(quoted) }
     : { value: 0, sigmaWhite: Math.sqrt(largestEigenvalue(white)), sigma: longest }
+  const direction = poleDirectionDegEast(chi1, chi2)
   const across = Math.sqrt(Math.max(0, quadratic(quoted, [-u[1], u[0]])))
   return {
     driftCovariance: quoted,
     driftMasPerYear: drift,
     driftCmPerYear: scaled(drift, POLE_MM_PER_MAS / 10),
-    directionDegEast: length > 0
-      ? { value: directionDegEast(chi1, chi2), sigma: length >= 2 * longest ? across / length / DEGREE : null }
-      : null
+    directionDegEast: direction === null ? null : { value: direction, sigma: length >= 2 * longest ? across / length / DEGREE : null }
   }
-}
-
-/** East longitude of a drift vector, (−180, 180]. */
-export function directionDegEast(chi1: number, chi2: number): number {
-  const degrees = Math.atan2(chi2, chi1) / DEGREE
-  return degrees <= -180 ? degrees + 360 : degrees
 }
 
 function quadratic({ c11, c12, c22 }: DriftCovariance, [x, y]: readonly [number, number]): number {

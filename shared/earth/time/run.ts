@@ -1,6 +1,6 @@
 import { overlapsOf } from '../../geo/overlap.ts'
 import { InputError } from '../../types/issue.ts'
-import type { RunInput, RunRegionInput, RunRegionResult, RunResult, RunTotalSeries } from '../../types/run.ts'
+import type { BudgetRow, RunInput, RunRegionInput, RunRegionResult, RunResult, RunTotalSeries } from '../../types/run.ts'
 import { contourOf } from '../contour.ts'
 import type { Contour } from '../contour.ts'
 import type { EarthModel } from '../earthModel.ts'
@@ -47,7 +47,10 @@ export function computeRun(input: RunInput, model: EarthModel): RunResult {
 
   const fitted = input.regions.map(region => fitRegion(region, input.settings, model, span, months))
   const total = budgetRow('total', 'Sum of the regions', ratesOf(fitted), fitted.map(f => f.response))
-  const regions = fitted.map(f => ({ ...regionResult(f, months), ...sharesOf(budgetOf(f), total) }))
+  const regions = fitted.map((f) => {
+    const row = budgetRow(f.region.key, f.region.name, ratesOf([f]), [f.response])
+    return { ...regionResult(f, row, months), ...sharesOf(row, total) }
+  })
   return {
     schemaVersion: 1,
     engineVersion: model.engineVersion,
@@ -60,7 +63,7 @@ export function computeRun(input: RunInput, model: EarthModel): RunResult {
     background: input.background.map(enteredRow),
     restOfWorld: input.restOfWorld ? enteredRow(input.restOfWorld) : emptyRow('rest-of-world', 'Rest of the world, not in this account'),
     overlaps,
-    warnings: runWarnings(input, overlaps, fitted.map(f => ({ region: f.region, fit: f.fit, coverage: f.monthly.coverage })))
+    warnings: runWarnings(input, overlaps, fitted.map(f => ({ region: f.region, contour: f.contour, fit: f.fit, coverage: f.monthly.coverage })), model)
   }
 }
 
@@ -109,14 +112,11 @@ function ratesOf(fitted: readonly FittedRegion[]): MassRates {
   }
 }
 
-function budgetOf(f: FittedRegion): ReturnType<typeof budgetRow> {
-  return budgetRow(f.region.key, f.region.name, ratesOf([f]), [f.response])
-}
-
-function regionResult(f: FittedRegion, months: readonly CalendarMonth[]): RunRegionResult {
+function regionResult(f: FittedRegion, row: BudgetRow, months: readonly CalendarMonth[]): RunRegionResult {
   const { region, contour, monthly } = f
+  const sources = sourcesOf(region)
   return {
-    ...budgetOf(f),
+    ...row,
     kind: region.kind,
     agency: region.agency,
     areaKm2: contour.areaM2 / 1e6,
@@ -127,7 +127,7 @@ function regionResult(f: FittedRegion, months: readonly CalendarMonth[]): RunReg
     sigmaMassGt: monthly.variance.map((variance, j) => {
       if (variance === null) return null
       const years = (months[j]!.middleMjd - monthly.meanMjd) / JULIAN_YEAR_DAYS
-      return Math.abs(region.scale) * Math.sqrt(variance + sourcesOf(region).reduce((sum, s) => sum + (s.rate * years) ** 2, 0))
+      return Math.abs(region.scale) * Math.sqrt(variance + sources.reduce((sum, s) => sum + (s.rate * years) ** 2, 0))
     }),
     epochsUsed: f.epochsUsed,
     coverage: monthly.coverage,

@@ -1,4 +1,8 @@
 import { formatArea, formatShare } from '../../format/numbers.ts'
+import type { Contour } from '../contour.ts'
+import type { EarthModel } from '../earthModel.ts'
+import { SEA_INSIDE_LIMIT } from '../evaluateWarnings.ts'
+import { contourMeans } from '../gridStack.ts'
 import type { RegionOverlap, RunInput, RunRegionInput, RunWarning } from '../../types/run.ts'
 import type { TrendFit } from './trend.ts'
 
@@ -8,14 +12,15 @@ const WELL_COVERED = 0.9
 /** Every warning of a run, overlaps first: they are to be seen before any sum. */
 export function runWarnings(
   input: RunInput, overlaps: readonly RegionOverlap[],
-  fitted: readonly { region: RunRegionInput, fit: TrendFit | null, coverage: number }[]
+  fitted: readonly { region: RunRegionInput, contour: Contour, fit: TrendFit | null, coverage: number }[], model: EarthModel
 ): RunWarning[] {
   const active = fitted.filter(({ region }) => region.scale !== 0)
   return [
     ...overlapWarnings(input, overlaps),
     ...(input.settings.ocean === 'none'
-      ? [{ code: 'ocean-none', message: 'Without an ocean response mass is not conserved. This setting is a diagnostic, not a result.', regions: [] }]
+      ? [{ code: 'mass-not-conserved', message: 'Without an ocean response mass is not conserved. This setting is a diagnostic, not a result.', regions: [] }]
       : []),
+    ...seaWarnings(active, model),
     ...fitWarnings(active),
     ...coverageWarnings(active),
     ...scatterWarning(active),
@@ -30,6 +35,18 @@ function overlapWarnings(input: RunInput, overlaps: readonly RegionOverlap[]): R
     message: `“${nameOf(a)}” and “${nameOf(b)}” share ${formatArea(areaKm2)}, ${formatShare(shareOfA).replace('+', '')} of the first and ${formatShare(shareOfB).replace('+', '')} of the second: mass there may be counted twice.`,
     regions: [a, b]
   }))
+}
+
+function seaWarnings(active: readonly { region: RunRegionInput, contour: Contour }[], { oceanField }: EarthModel): RunWarning[] {
+  if (!oceanField) return []
+  return active
+    .map(({ region, contour }) => ({ region, sea: contourMeans(oceanField, contour)[0]! }))
+    .filter(({ sea }) => sea > SEA_INSIDE_LIMIT)
+    .map(({ region, sea }) => ({
+      code: 'ocean-inside',
+      message: `${formatShare(sea).replace('+', '')} of the outline of “${region.name}” is sea in the ocean function: mass spread there is a load on the sea floor, not on land.`,
+      regions: [region.key]
+    }))
 }
 
 function fitWarnings(active: readonly { region: RunRegionInput, fit: TrendFit | null }[]): RunWarning[] {
