@@ -6,6 +6,7 @@ import { mkdirSync, writeFileSync } from 'node:fs'
 import { gzipSync } from 'node:zlib'
 import { cellCoverage } from '../shared/earth/cellCoverage.ts'
 import { EARTH_RADIUS_M } from '../shared/earth/constants.ts'
+import { geodeticFromGeocentricDeg, squaredRadiusRatio } from '../shared/earth/latitude.ts'
 import { makeFields } from '../shared/earth/makeFields.ts'
 import { decodeOceanCells, encodeOceanCells, geocentricRowEdgesDeg, OCEAN_CELL_COLUMNS, OCEAN_CELL_ROWS } from '../shared/earth/oceanCells.ts'
 import { ringIntegrals } from '../shared/earth/ringIntegrals.ts'
@@ -19,17 +20,24 @@ let landSr = 0
 let xz = 0
 let yz = 0
 let p2 = 0
+let x = 0
+let y = 0
+let z = 0
 for (const ring of land.rings) {
   const integrals = ringIntegrals(ring)
   landSr += (ring.pole ? 2 * Math.PI : 0) + ring.side * integrals.areaSr
   xz -= ring.side * integrals.xz
   yz -= ring.side * integrals.yz
   p2 -= ring.side * integrals.p2
+  x -= ring.side * integrals.x
+  y -= ring.side * integrals.y
+  z -= ring.side * integrals.z
 }
 const oceanSr = 4 * Math.PI - landSr
 
 const coverage = cellCoverage(land.rings, { latEdgesDeg: geocentricRowEdgesDeg(OCEAN_CELL_ROWS), columns: OCEAN_CELL_COLUMNS })
 const cells = encodeOceanCells(coverage.map(value => 1 - value))
+const ellipsoid = ellipsoidMeans(coverage)
 const sourceSha256 = createHash('sha256').update(land.bytes).digest('hex')
 const sha256 = createHash('sha256').update(cells).digest('hex')
 
@@ -43,6 +51,10 @@ export const oceanMeans = {
   areaM2: ${oceanSr * EARTH_RADIUS_M ** 2},
   /** Means over the sea of sin ψ cos ψ cos λ, sin ψ cos ψ sin λ and cos² ψ. */
   means: { xz: ${xz / oceanSr}, yz: ${yz / oceanSr}, cos2: ${2 / 3 - (2 / 3) * p2 / oceanSr} },
+  /** Mean unit vector over the sea. */
+  vector: { x: ${x / oceanSr}, y: ${y / oceanSr}, z: ${z / oceanSr} },
+  /** The three means times r²/R², from the cells. */
+  ellipsoidMeans: { xz: ${ellipsoid.xz}, yz: ${ellipsoid.yz}, cos2: ${ellipsoid.cos2} },
   sourceSha256: '${sourceSha256}',
   /** SHA-256 of the encoded cells. */
   sha256: '${sha256}'
@@ -52,17 +64,28 @@ writeFileSync('shared/earth/data/oceanCells.ts', `${head}
 /** Sea as part of each cell, ${OCEAN_CELL_ROWS} × ${OCEAN_CELL_COLUMNS} cells of ${180 / OCEAN_CELL_ROWS}° in geocentric latitude and longitude; see ../oceanCells.ts for the code. */
 export const oceanCellsBase64 = '${cells}'
 `)
-let cellSum = 0
-let weight = 0
-for (let row = 0; row < OCEAN_CELL_ROWS; row++) {
-  const w = Math.cos((row + 0.5 - OCEAN_CELL_ROWS / 2) * Math.PI / OCEAN_CELL_ROWS)
-  for (let column = 0; column < OCEAN_CELL_COLUMNS; column++) cellSum += w * (1 - coverage[row * OCEAN_CELL_COLUMNS + column]!)
-  weight += w * OCEAN_CELL_COLUMNS
-}
-console.log(`sea ${oceanSr / (4 * Math.PI)} of the sphere (cells: ${cellSum / weight}); encoded cells ${cells.length} characters`)
+console.log(`sea ${oceanSr / (4 * Math.PI)} of the sphere; encoded cells ${cells.length} characters`)
 
 const { header, payload } = makeFields(decodeOceanCells(cells), { degree: 256, stepDeg: 0.5, oceanSha256: sha256 })
 const file = fieldFile(header, gzipSync(payload, { level: 9 }))
 mkdirSync('public/earth', { recursive: true })
 writeFileSync('public/earth/fields.bin', file)
 console.log(`sensitivity fields ${header.payloadSha256}: ${file.length} bytes`)
+
+/** Means over the sea of sin ψ cos ψ cos λ, sin ψ cos ψ sin λ, cos² ψ times r²/R², by the middles of the cells. */
+function ellipsoidMeans(land: Float64Array): { xz: number, yz: number, cos2: number } {
+  const sum = { area: 0, xz: 0, yz: 0, cos2: 0 }
+  for (let row = 0; row < OCEAN_CELL_ROWS; row++) {
+    const psi = (row + 0.5 - OCEAN_CELL_ROWS / 2) * Math.PI / OCEAN_CELL_ROWS
+    const squared = squaredRadiusRatio(geodeticFromGeocentricDeg(psi * 180 / Math.PI))
+    for (let column = 0; column < OCEAN_CELL_COLUMNS; column++) {
+      const lambda = -Math.PI + (column + 0.5) * 2 * Math.PI / OCEAN_CELL_COLUMNS
+      const w = Math.cos(psi) * (1 - land[row * OCEAN_CELL_COLUMNS + column]!)
+      sum.area += w
+      sum.xz += w * squared * Math.sin(psi) * Math.cos(psi) * Math.cos(lambda)
+      sum.yz += w * squared * Math.sin(psi) * Math.cos(psi) * Math.sin(lambda)
+      sum.cos2 += w * squared * Math.cos(psi) ** 2
+    }
+  }
+  return { xz: sum.xz / sum.area, yz: sum.yz / sum.area, cos2: sum.cos2 / sum.area }
+}

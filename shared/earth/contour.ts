@@ -8,6 +8,9 @@ import { ringPath, type RingPath } from './rings.ts'
 /** Means over a region, uniform per unit area of the sphere: sin ψ cos ψ cos λ, sin ψ cos ψ sin λ and cos² ψ. */
 export interface DegreeTwoMeans { xz: number, yz: number, cos2: number }
 
+/** Mean unit vector over a region: towards Greenwich, 90° E and the north pole. */
+export interface MeanVector { x: number, y: number, z: number }
+
 /** One ring of a contour, with the side that it bounds. */
 export interface ContourRing extends RingPath {
   /** +1 for the outer ring of a part, −1 for a hole in it. */
@@ -29,6 +32,7 @@ export interface Contour {
   /** East longitude in (−180, 180] and geodetic latitude of the centre of area on the sphere, degrees; [0, 0] if there is none. */
   centroid: Position
   means: DegreeTwoMeans
+  vector: MeanVector
   rings: readonly ContourRing[]
   vertexCount: number
 }
@@ -75,6 +79,7 @@ export function contourOf(geometry: Outline): Contour {
     areaSr: sum.areaSr,
     centroid: centroidOf(sum),
     means: { xz: sum.xz / sum.areaSr, yz: sum.yz / sum.areaSr, cos2: 2 / 3 - (2 / 3) * sum.p2 / sum.areaSr },
+    vector: { x: sum.x / sum.areaSr, y: sum.y / sum.areaSr, z: sum.z / sum.areaSr },
     rings,
     vertexCount
   }

@@ -32,11 +32,11 @@ export class ModeNotAvailableError extends Error {
 
 /** The constant model: enough for the modes `none` and `uniform`, and light enough for a browser. */
 export function loadEarthModel(): EarthModel {
-  const { fraction, areaM2, means, sha256 } = oceanMeans
+  const { fraction, areaM2, means, vector, ellipsoidMeans, sha256 } = oceanMeans
   return Object.freeze({
     engineVersion: ENGINE_VERSION,
     checksum: `ocean ${sha256.slice(0, 16)}`,
-    ocean: { fraction, areaM2, means, sha256 },
+    ocean: { fraction, areaM2, means, vector, ellipsoidMeans, sha256 },
     oceanField: null,
     fields: null,
     defaultOcean: 'uniform'

@@ -1,4 +1,4 @@
-import { DEGREE, WGS84_A, WGS84_E2 } from './constants.ts'
+import { DEGREE, EARTH_RADIUS_M, WGS84_A, WGS84_E2 } from './constants.ts'
 
 const ONE_MINUS_E2 = 1 - WGS84_E2
 const POLAR_RADIUS_SQUARED = WGS84_A * WGS84_A * ONE_MINUS_E2
@@ -24,6 +24,15 @@ export function zoneAreaM2(sinLatitude: number): number {
   const x = WGS84_E2 * sinLatitude * sinLatitude
   const artanh = 1 + x * (1 / 3 + x * (1 / 5 + x * (1 / 7 + x * (1 / 9 + x * (1 / 11 + x * (1 / 13 + x / 15))))))
   return 0.5 * POLAR_RADIUS_SQUARED * sinLatitude * (1 / (1 - x) + artanh)
+}
+
+/** r²/R²: distance of the ellipsoid's surface from the Earth's centre at a geodetic latitude, over the sphere's radius, squared. */
+export function squaredRadiusRatio(latitudeDeg: number): number {
+  const phi = requireLatitude(latitudeDeg) * DEGREE
+  const s = Math.sin(phi)
+  const c = Math.cos(phi)
+  const normal2 = WGS84_A * WGS84_A / (1 - WGS84_E2 * s * s)
+  return normal2 * (c * c + ONE_MINUS_E2 * ONE_MINUS_E2 * s * s) / (EARTH_RADIUS_M * EARTH_RADIUS_M)
 }
 
 function requireLatitude(latitudeDeg: number): number {

@@ -1,4 +1,4 @@
-import type { DegreeTwoMeans } from './contour.ts'
+import type { DegreeTwoMeans, MeanVector } from './contour.ts'
 import { cellAverages } from './cellAverages.ts'
 import { gridStack, type GridStack } from './gridStack.ts'
 import type { OceanCells } from './oceanCells.ts'
@@ -10,6 +10,9 @@ export interface OceanFunction {
   /** Area of the sea on the sphere, m². */
   areaM2: number
   means: DegreeTwoMeans
+  vector: MeanVector
+  /** Means of the same functions times r²/R², r the distance of the ellipsoid's surface from the centre: what the sphere leaves out. */
+  ellipsoidMeans: DegreeTwoMeans
   /** SHA-256 of the encoded cells. */
   sha256: string
 }

@@ -1,11 +1,11 @@
 import type { PhysicsSettings } from '../types/domain.ts'
-import { coefficientsFor, OCEAN_FREE_RATIO } from './coefficientSets.ts'
+import { coefficientsFor, OCEAN_FREE_RATIO, type CoefficientSet } from './coefficientSets.ts'
 import { EARTH_MASS_KG, ELASTIC_LOAD_FACTOR, KG_PER_GT, WATER_DENSITY } from './constants.ts'
-import type { Contour, DegreeTwoMeans } from './contour.ts'
-import { ModeNotAvailableError, type EarthModel } from './earthModel.ts'
+import type { Contour } from './contour.ts'
+import type { EarthModel } from './earthModel.ts'
 import { excitationOf } from './excitation.ts'
-import { contourMeans } from './gridStack.ts'
 import { inertiaOf } from './inertia.ts'
+import { netMoments, type NetMoments } from './netMoments.ts'
 
 /** Effect of one gigatonne GAINED by a region, the sea's part included as the ocean mode says. */
 export interface ResponsePerGt {
@@ -20,40 +20,26 @@ export interface ResponsePerGt {
 }
 
 /**
- * Response of an outline per gigatonne gained: the region's own means less the sea's, which pays for the mass.
+ * Response of an outline per gigatonne gained: the region's own means and the sea's, which pays for the mass.
  * Throws ModeNotAvailableError for a fingerprint mode whose fields the model does not hold.
  */
 export function responseOf(contour: Contour, model: EarthModel, settings: PhysicsSettings): ResponsePerGt {
-  const net = netMeansOf(contour, model, settings)
-  const set = coefficientsFor(settings.coefficients, settings.core)
-  // The feedback in the sea-level equation is the ocean pole tide that 1.608 holds already: it counts once.
-  if (settings.ocean === 'fingerprint-rotation') set.aXY *= OCEAN_FREE_RATIO
-  const excitation = excitationOf(inertiaOf(KG_PER_GT, net.means), set)
-  // cos² ψ = 2/3 − 2/3 P₂, so ∫P₂ dm = net mass − 3/2 ∫cos² ψ dm, and ΔJ₂ = −(1 + k′₂) ∫P₂ dm / M.
-  const p2 = net.massFraction - 1.5 * net.means.cos2
-  return {
-    ...excitation,
-    barystaticMm: -KG_PER_GT / (WATER_DENSITY * model.ocean.areaM2) * 1000,
-    deltaJ2: -ELASTIC_LOAD_FACTOR * KG_PER_GT * p2 / EARTH_MASS_KG
-  }
+  return responseToMoments(netMoments(contour, model, settings.ocean), model, coefficientsOf(settings))
 }
 
-/** Degree-2 means of region plus sea for one unit of mass, and the mass that is left in total (1 for `none`, else 0). */
-function netMeansOf(contour: Contour, model: EarthModel, settings: PhysicsSettings): { means: DegreeTwoMeans, massFraction: number } {
-  const own = contour.means
-  switch (settings.ocean) {
-    case 'none':
-      return { means: own, massFraction: 1 }
-    case 'uniform': {
-      const sea = model.ocean.means
-      return { means: { xz: own.xz - sea.xz, yz: own.yz - sea.yz, cos2: own.cos2 - sea.cos2 }, massFraction: 0 }
-    }
-    default: {
-      const stack = model.fields?.stacks[settings.ocean]
-      if (!stack) throw new ModeNotAvailableError(settings.ocean)
-      // Region and sea together: the mean of K, exact for g and a contour sum for K − g, in the order of `functionals`.
-      const extra = contourMeans(stack, contour)
-      return { means: { xz: own.xz + extra[0]!, yz: own.yz + extra[1]!, cos2: own.cos2 - 2 / 3 - (2 / 3) * extra[2]! }, massFraction: 0 }
-    }
+/** The coefficient set of the settings; with rotational feedback in the sea-level equation, χ₁ and χ₂ take the ocean-free factor. */
+export function coefficientsOf(settings: PhysicsSettings): CoefficientSet {
+  const set = coefficientsFor(settings.coefficients, settings.core)
+  // The feedback is the ocean pole tide that 1.608 holds already: it counts once.
+  return settings.ocean === 'fingerprint-rotation' ? { ...set, aXY: set.aXY * OCEAN_FREE_RATIO } : set
+}
+
+/** Response per gigatonne to the moments of region and sea together. */
+export function responseToMoments(net: NetMoments, model: EarthModel, set: CoefficientSet): ResponsePerGt {
+  const cos2 = (2 / 3) * (net.mass - net.p2)
+  return {
+    ...excitationOf(inertiaOf(KG_PER_GT, { xz: net.xz, yz: net.yz, cos2 }), set),
+    barystaticMm: -KG_PER_GT / (WATER_DENSITY * model.ocean.areaM2) * 1000,
+    deltaJ2: -ELASTIC_LOAD_FACTOR * KG_PER_GT * net.p2 / EARTH_MASS_KG
   }
 }
