@@ -1,0 +1,10 @@
+import type { AnswerOf } from '#shared/api/contract'
+import type { contracts } from '#shared/api/contracts'
+
+export type RegionItem = AnswerOf<typeof contracts.regionList>['items'][number]
+export type RegionDetail = AnswerOf<typeof contracts.regionRead>
+export type RegionTotal = AnswerOf<typeof contracts.regionTotal>
+export type Prediction = AnswerOf<typeof contracts.regionPrediction>
+export type TrendSummary = NonNullable<RegionItem['trend']>
+export type VersionSummary = RegionDetail['versions'][number]
+export type PerGt = RegionDetail['perGt']
