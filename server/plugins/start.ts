@@ -1,6 +1,6 @@
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs'
 import { join, resolve } from 'node:path'
-import { openStore } from '../database/client'
+import { openStore, type Store } from '../database/client'
 import { seedDemo } from '../services/demo'
 import { earthModelFrom } from '../services/earthModelFile'
 import { Jobs } from '../services/jobs'
@@ -22,31 +22,29 @@ export default defineNitroPlugin((nitroApp) => {
   mkdirSync(dataDir, { recursive: true, mode: 0o700 })
   process.env.NUXT_SESSION_PASSWORD ??= sessionSecret(dataDir)
 
-  const host = process.env.NITRO_HOST || process.env.HOST!
   const store = openStore(dataDir, runtimeFile('migrations'))
-  const fieldsPath = optionalFile('earth', 'fields.bin')
-  const context: Context = {
-    ...store,
-    earth: earthModelFrom(fieldsPath),
-    now: () => new Date().toISOString(),
-    demo: config.demo !== 'off' && loopback(host),
-    jobs: new Jobs(runtimeFile('workers', 'run.mjs'), fieldsPath),
-    throttle: createThrottle(),
-    passwords: { hash: hashPassword, verify: verifyPassword },
-  }
-  context.jobs.resume(context)
+  const jobs = new Jobs(runtimeFile('workers', 'run.mjs'), optionalFile('earth', 'fields.bin'))
   nitroApp.hooks.hook('close', async () => {
     setContext(undefined)
-    await context.jobs.close()
+    await jobs.close()
     store.close()
   })
-
-  // Nitro does not wait for plugins: until the seed is done, routes answer 503 “starting”.
-  void begin(context, host)
+  // Nitro does not wait for plugins: until all is ready, routes answer 503 “starting”.
+  void begin(store, jobs, config.demo !== 'off')
 })
 
-async function begin(context: Context, host: string) {
+async function begin(store: Store, jobs: Jobs, demo: boolean) {
   try {
+    const host = process.env.NITRO_HOST || process.env.HOST!
+    const context: Context = {
+      ...store, jobs,
+      earth: await earthModelFrom(optionalFile('earth', 'fields.bin')),
+      now: () => new Date().toISOString(),
+      demo: demo && loopback(host),
+      throttle: createThrottle(),
+      passwords: { hash: hashPassword, verify: verifyPassword },
+    }
+    jobs.resume(context)
     await seedDemo(context)
     setContext(context)
     const token = firstOperatorToken(context)
