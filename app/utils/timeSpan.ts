@@ -29,3 +29,8 @@ export function spanOfQuery(query: { from?: unknown, to?: unknown }): TimeSpan {
 export function queryOfSpan({ fromMjd, toMjd }: TimeSpan): { from?: string, to?: string } {
   return { from: dateOfMjd(fromMjd) || undefined, to: dateOfMjd(toMjd) || undefined }
 }
+
+/** A span with both ends; null where one is open. */
+export function closedSpan({ fromMjd, toMjd }: TimeSpan): { fromMjd: number, toMjd: number } | null {
+  return fromMjd === null || toMjd === null ? null : { fromMjd, toMjd }
+}

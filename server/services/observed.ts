@@ -15,8 +15,10 @@ import { keepOriginal, rememberOriginal, uploadText } from './originals'
 import { pageOf } from './paging'
 import { floats, fromFloats, versionsOf, versionView } from './seriesStore'
 
-interface ObservedRecipe { format: ObservedSeries['format'], predictedRows: number, emptyRows: number, rowsRead: number, pole: boolean, lod: boolean, understood: string[], leftOut: Issue[], leftOutCount: number, csv?: unknown }
+interface ObservedRecipe { format: ObservedSeries['format'], predictedRows: number, emptyRows: number, rowsRead: number, pole: boolean, lod: boolean, excitation?: boolean, understood: string[], leftOut: Issue[], leftOutCount: number, csv?: unknown }
 const columns = ['xMas', 'yMas', 'lodMs', 'sigmaXMas', 'sigmaYMas', 'sigmaLodMs'] as const
+/** Behind the others, where a file holds excitation in place of the pole. */
+const excitationColumns = ['chi1Mas', 'chi2Mas'] as const
 
 export async function createObserved(context: Context, principal: Principal | null, workspaceId: string, upload: Upload, body: BodyOf<typeof contracts.observedCreate>) {
   const actor = authorise(principal, 'observed.write', { workspaceId })
@@ -26,10 +28,11 @@ export async function createObserved(context: Context, principal: Principal | nu
   }
   const id = newId()
   const versionId = newId()
-  const value = floats(Float64Array.from(columns.flatMap(name => [...parsed[name]])))
+  const excitation = parsed.chi1Mas && parsed.chi2Mas ? [parsed.chi1Mas, parsed.chi2Mas] : []
+  const value = joined([...columns.map(name => parsed[name]), ...excitation])
   const recipe: ObservedRecipe = {
     format: parsed.format, predictedRows: parsed.predicted.reduce((sum, flag) => sum + flag, 0), emptyRows: parsed.emptyRows, rowsRead: parsed.rowsRead,
-    pole: parsed.xMas.some(Number.isFinite) && parsed.yMas.some(Number.isFinite), lod: parsed.lodMs.some(Number.isFinite),
+    pole: parsed.xMas.some(Number.isFinite) && parsed.yMas.some(Number.isFinite), lod: parsed.lodMs.some(Number.isFinite), excitation: excitation.length > 0,
     understood: parsed.understood, leftOut: parsed.issues.slice(0, 1000), leftOutCount: parsed.issues.length, ...(body.csv ? { csv: body.csv } : {}),
   }
   await keepOriginal(context, upload)
@@ -47,6 +50,16 @@ export async function createObserved(context: Context, principal: Principal | nu
   return observedSummary(context, principal, observedRow(context, id))
 }
 
+function joined(parts: readonly Float64Array[]): Buffer {
+  const all = new Float64Array(parts.reduce((sum, part) => sum + part.length, 0))
+  let at = 0
+  for (const part of parts) {
+    all.set(part, at)
+    at += part.length
+  }
+  return floats(all)
+}
+
 export function observedRow(context: Context, id: string, { inBin = false } = {}) {
   const row = context.db.select().from(schema.series).where(and(eq(schema.series.id, id), eq(schema.series.quantity, 'earth-orientation'))).get()
   if (!row || (row.deletedAt && !inBin)) throw new Problem(404, 'not-found', 'There is no such observed series.')
@@ -58,7 +71,7 @@ export function observedSummary(context: Context, principal: Principal | null, r
   const recipe = JSON.parse(version.recipe) as ObservedRecipe
   return {
     id: row.id, revision: row.revision, name: row.name, latest: versionView(context, version), format: recipe.format,
-    has: { pole: recipe.pole, lod: recipe.lod }, predictedRows: recipe.predictedRows, emptyRows: recipe.emptyRows,
+    has: { pole: recipe.pole, lod: recipe.lod, excitation: recipe.excitation ?? false }, predictedRows: recipe.predictedRows, emptyRows: recipe.emptyRows,
     canWrite: can(principal, 'observed.write', { workspaceId: row.workspaceId }),
   }
 }
@@ -70,10 +83,13 @@ export function loadObserved(context: Context, id: string): ObservedSeries {
   const recipe = JSON.parse(version.recipe) as ObservedRecipe
   const mjd = fromFloats(data.mjd)
   const all = fromFloats(data.value)
-  const [xMas, yMas, lodMs, sigmaXMas, sigmaYMas, sigmaLodMs] = columns.map((_, i) => all.subarray(i * mjd.length, (i + 1) * mjd.length)) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array, Float64Array]
+  const column = (i: number) => all.subarray(i * mjd.length, (i + 1) * mjd.length)
+  const [xMas, yMas, lodMs, sigmaXMas, sigmaYMas, sigmaLodMs] = columns.map((_, i) => column(i)) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array, Float64Array]
+  const [chi1Mas, chi2Mas] = recipe.excitation ? excitationColumns.map((_, i) => column(columns.length + i)) : []
   return {
     format: recipe.format, mjd, xMas, yMas, lodMs, sigmaXMas, sigmaYMas, sigmaLodMs,
     predicted: new Uint8Array(data.flags ?? new Uint8Array(mjd.length)), emptyRows: recipe.emptyRows, rowsRead: recipe.rowsRead,
+    ...(chi1Mas && chi2Mas ? { chi1Mas, chi2Mas } : {}),
   }
 }
 
@@ -94,6 +110,7 @@ export function readObserved(context: Context, principal: Principal | null, id: 
     ...observedSummary(context, principal, row), mjd: [...data.mjd],
     xMas: nullable(data.xMas), yMas: nullable(data.yMas), lodMs: nullable(data.lodMs),
     sigmaXMas: nullable(data.sigmaXMas), sigmaYMas: nullable(data.sigmaYMas), sigmaLodMs: nullable(data.sigmaLodMs),
+    chi1Mas: data.chi1Mas ? nullable(data.chi1Mas) : null, chi2Mas: data.chi2Mas ? nullable(data.chi2Mas) : null,
     predicted: [...data.predicted],
   }
 }

@@ -27,7 +27,7 @@ const observedOptions = versionFacts.extend({
   csv: z.object({
     epochColumn: columnIndex.optional(), epochFormat: z.enum(['iso-date', 'year-month', 'decimal-year', 'mjd']).optional(),
     columns: z.object({
-      xMas: columnIndex, yMas: columnIndex, lodMs: columnIndex, sigmaXMas: columnIndex, sigmaYMas: columnIndex, sigmaLodMs: columnIndex,
+      xMas: columnIndex, yMas: columnIndex, lodMs: columnIndex, sigmaXMas: columnIndex, sigmaYMas: columnIndex, sigmaLodMs: columnIndex, chi1Mas: columnIndex, chi2Mas: columnIndex,
     }).partial().optional(),
     poleUnit: z.enum(['mas', 'arcsec']).optional(), lodUnit: z.enum(['ms', 's', 'us']).optional(),
   }).optional(),
@@ -211,19 +211,19 @@ export const contracts = {
   runRead: contract({ id: 'runRead', method: 'GET', path: '/api/v1/runs/{id}', action: 'run.read', summary: 'A run and its result', params: byId, answer: runView }),
   runComparison: contract({
     id: 'runComparison', method: 'GET', path: '/api/v1/runs/{id}/comparison', action: 'run.read', summary: 'A run beside an observed series', params: byId,
-    query: z.object({ observed: ulid }), answer: comparison,
+    query: z.object({ observed: ulid, zonalTides: z.enum(['none', 'all']).default('none') }), answer: comparison,
   }),
   runFile: contract({
     id: 'runFile', method: 'GET', path: '/api/v1/runs/{id}/files/{file}', action: 'report.export', summary: 'Report and data of a run: report.pdf, budget.csv, series.csv, regions.geojson, run.json',
     params: z.object({ id: ulid, file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'run.json']) }),
-    query: z.object({ observed: ulid.optional() }), answer: bytes, answerType: 'application/octet-stream',
+    query: z.object({ observed: ulid.optional(), zonalTides: z.enum(['none', 'all']).default('none') }), answer: bytes, answerType: 'application/octet-stream',
   }),
 
   // Publication
   editionList: contract({ id: 'editionList', method: 'GET', path: '/api/v1/workspaces/{workspace}/editions', action: 'edition.list', summary: 'Published editions of a workspace', params: inWorkspace, query: page, answer: listOf(edition) }),
   editionCreate: contract({
     id: 'editionCreate', method: 'POST', path: '/api/v1/runs/{id}/editions', action: 'edition.publish', summary: 'Publish a run under a readable link; the same link again makes the next edition', params: byId,
-    body: z.object({ slug: z.string().regex(/^[a-z0-9]+(-[a-z0-9]+)*$/, 'must be lower-case letters, digits and single hyphens').min(3).max(80), title: name, licence: prose, observedId: ulid.nullable() }),
+    body: z.object({ slug: z.string().regex(/^[a-z0-9]+(-[a-z0-9]+)*$/, 'must be lower-case letters, digits and single hyphens').min(3).max(80), title: name, licence: prose, observedId: ulid.nullable(), zonalTides: z.enum(['none', 'all']).default('none') }),
     answer: edition, status: 201,
   }),
   editionWithdraw: contract({
@@ -243,7 +243,10 @@ export const contracts = {
 
   // The instance
   openapi: contract({ id: 'openapi', method: 'GET', path: '/api/v1/openapi.json', action: 'public.read', summary: 'This interface as OpenAPI 3.1', answer: z.looseObject({}) }),
-  health: contract({ id: 'health', method: 'GET', path: '/api/v1/health', action: 'public.read', summary: 'Whether the server is ready', answer: z.object({ status: z.literal('ok'), version: z.string() }) }),
+  health: contract({
+    id: 'health', method: 'GET', path: '/api/v1/health', action: 'public.read', summary: 'Whether the server is ready, and which ocean responses it computes',
+    answer: z.object({ status: z.literal('ok'), version: z.string(), oceans: z.array(z.enum(oceanModes)), defaultOcean: z.enum(oceanModes) }),
+  }),
 }
 export type ContractId = keyof typeof contracts
 export const contractList: Contract[] = Object.values(contracts) as unknown as Contract[]

@@ -138,11 +138,12 @@ export const jobView = z.object({
 
 export const observedSummary = z.object({
   id: ulid, revision, name: z.string(), latest: versionSummary, format: z.string(),
-  has: z.object({ pole: z.boolean(), lod: z.boolean() }), predictedRows: z.int(), emptyRows: z.int(), canWrite: z.boolean(),
+  has: z.object({ pole: z.boolean(), lod: z.boolean(), excitation: z.boolean() }), predictedRows: z.int(), emptyRows: z.int(), canWrite: z.boolean(),
 })
 const column = z.array(z.number().nullable())
 export const observedData = observedSummary.extend({
   mjd: z.array(finite), xMas: column, yMas: column, lodMs: column, sigmaXMas: column, sigmaYMas: column, sigmaLodMs: column,
+  chi1Mas: column.nullable(), chi2Mas: column.nullable(),
   predicted: z.array(z.int()),
 })
 

@@ -80,7 +80,8 @@ function epochOf(table: Table, options: ObservedCsvOptions): { column: number, f
   }])
 }
 
-function recogniseColumns(table: Table): Partial<Record<ObservedQuantity, number>> {
+/** Which column holds which quantity, by the names in the header row; empty without one. */
+export function recogniseColumns(table: Table): Partial<Record<ObservedQuantity, number>> {
   const found: Partial<Record<ObservedQuantity, number>> = {}
   table.header?.forEach((cell, index) => {
     const name = cell.trim().toLowerCase().replace(/\s*[([].*$/, '').replace(/[_ ](mas|ms|us|s|arcsec|as)$/, '')
