@@ -62,7 +62,7 @@ export function valuesAt(stack: GridStack, lonDeg: number, latDeg: number, out =
 
 /**
  * Mean of every field over a contour, by ∮ P dS with P = ∫ f dλ and S = sin ψ: the cost grows with the length of the edges
- * in cells, not with the area inside. Exact for the bilinear fields up to the Gauss rule (below 1e-13 of a cell).
+ * in cells, not with the area inside. Exact for the bilinear fields up to the Gauss rule: 1e-9 at nodes of 2°, 1e-11 at 0.5°.
  */
 export function contourMeans(stack: GridStack, contour: Contour, out = new Float64Array(stack.count)): Float64Array {
   out.fill(0)
