@@ -62,7 +62,7 @@ export function publish(context: Context, principal: Principal | null, runId: st
     throw new Problem(422, 'invalid', 'This link is taken.', [{ path: 'slug', code: 'taken', message: 'is used by another publication' }])
   }
   const result = runResultOf(run)
-  const comparison = body.observedId ? compareWith(context, run, body.observedId) : null
+  const comparison = body.observedId ? compareWith(context, run, body.observedId, body.zonalTides) : null
   const content: EditionContent = {
     sentence: findingSentence(result),
     unexplained: comparison ? remainderSentences(comparison).join(' ') || null : null,

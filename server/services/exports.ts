@@ -35,7 +35,7 @@ export async function exportRun(context: Context, file: ExportFile, source: Expo
       const workspace = context.db.select().from(schema.workspace).where(eq(schema.workspace.id, run.workspaceId)).get()!
       return reportPdf({
         result, comparison, scenarioName: run.name, workspaceName: workspace.name, runNumber: run.n, runHash: run.resultSha256, inputSha256: run.inputSha256,
-        preparedBy: nameOfUser(context, run.createdBy) ?? '', preparedAt: run.createdAt, sources: sourcesOf(runInputOf(run)), invented: workspace.invented,
+        preparedBy: nameOfUser(context, run.createdBy) ?? '', preparedAt: run.createdAt, sources: runInputOf(run).regions, invented: workspace.invented,
         observed: source.observed,
       })
     }

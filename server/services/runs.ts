@@ -39,23 +39,23 @@ export function startRun(context: Context, principal: Principal | null, scenario
 const comparisons = new WeakMap<Context, Map<string, Comparison>>()
 
 /** The run beside an observed series of its workspace. Both are immutable, so the answer is kept. */
-export function compareWith(context: Context, row: RunRow, observedId: string): Comparison {
+export function compareWith(context: Context, row: RunRow, observedId: string, zonalTides: 'none' | 'all' = 'none'): Comparison {
   const observed = observedRow(context, observedId)
   if (observed.workspaceId !== row.workspaceId) throw new Problem(404, 'not-found', 'There is no such observed series.')
   const kept = comparisons.get(context) ?? new Map<string, Comparison>()
   comparisons.set(context, kept)
-  const key = `${row.resultSha256} ${versionsOf(context, observedId)[0]!.dataSha256}`
+  const key = `${row.resultSha256} ${versionsOf(context, observedId)[0]!.dataSha256} ${zonalTides}`
   let comparison = kept.get(key)
   if (!comparison) {
-    comparison = compareRun(runResultOf(row), loadObserved(context, observedId))
+    comparison = compareRun(runResultOf(row), loadObserved(context, observedId), { zonalTides })
     if (kept.size > 50) kept.clear()
     kept.set(key, comparison)
   }
   return comparison
 }
 
-export function readComparison(context: Context, principal: Principal | null, id: string, observedId: string) {
+export function readComparison(context: Context, principal: Principal | null, id: string, observedId: string, zonalTides: 'none' | 'all') {
   const row = runRow(context, id)
   authorise(principal, 'run.read', { workspaceId: row.workspaceId })
-  return compareWith(context, row, observedId)
+  return compareWith(context, row, observedId, zonalTides)
 }

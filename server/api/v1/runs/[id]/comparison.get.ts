@@ -2,4 +2,4 @@ import { contracts } from '#shared/api/contracts'
 import { readComparison } from '../../../../services/runs'
 import { route } from '../../../../utils/route'
 
-export default route(contracts.runComparison, ({ context, principal, params, query }) => readComparison(context, principal, params.id, query.observed))
+export default route(contracts.runComparison, ({ context, principal, params, query }) => readComparison(context, principal, params.id, query.observed, query.zonalTides))

@@ -11,7 +11,7 @@ export default route(contracts.runFile, async ({ event, context, principal, para
   authorise(principal, 'report.export', { workspaceId: run.workspaceId })
   const observed = query.observed ?? null
   const data = await exportRun(context, params.file, {
-    run, comparison: observed ? compareWith(context, run, observed) : null, observed: observed ? observedLabelOf(context, observed) : null,
+    run, comparison: observed ? compareWith(context, run, observed, query.zonalTides) : null, observed: observed ? observedLabelOf(context, observed) : null,
   })
   setResponseHeaders(event, { 'content-type': exportTypes[params.file], 'content-disposition': attachment(`counterpoise-run-${run.n}-${params.file}`) })
   return data
