@@ -1,3 +1,4 @@
+import { print } from '../design/tokens.ts'
 import { textWidth } from './textWidth.ts'
 import type { Palette } from '../design/tokens.ts'
 import type { Weight } from './textWidth.ts'
@@ -101,6 +102,11 @@ export class Canvas {
     this.add('rect', { ...box, ...attributes })
   }
 
+  /** Writers of PDF know no rim behind text, and would say it twice to whoever searches the page. */
+  private get isPrint(): boolean {
+    return this.palette === print
+  }
+
   /** A line of text. With `halo` it stands on a rim of that colour, so that lines under it do not cut it. */
   text(content: string, x: number, y: number, style: TextStyle & { halo?: string } = {}): LabelBox {
     const attributes: Attributes = {
@@ -111,12 +117,13 @@ export class Canvas {
       'text-anchor': style.anchor && style.anchor !== 'start' ? style.anchor : undefined,
     }
     const escaped = escapeXml(content)
-    if (style.halo) {
+    const box = textBox(content, x, y, style)
+    if (style.halo && this.isPrint) this.rect(box, { 'fill': style.halo, 'fill-opacity': 0.7 })
+    else if (style.halo) {
       const rim: Attributes = { 'stroke': style.halo, 'stroke-width': 3, 'stroke-linejoin': 'round', 'fill': style.halo, 'aria-hidden': 'true' }
       this.add('text', { ...attributes, ...rim }, escaped)
     }
     this.add('text', { ...attributes, fill: style.fill ?? this.palette.ink }, escaped)
-    const box = textBox(content, x, y, style)
     this.labels.push(box)
     return box
   }

@@ -78,7 +78,7 @@ function poleRemainder(chi1: ComparisonQuantity | null, chi2: ComparisonQuantity
   if (!chi1 || !chi2) return null
   const observed = driftOf(chi1.trends.observed, chi2.trends.observed)
   const residual = driftOf(chi1.trends.residual, chi2.trends.residual)
-  const say = (drift: ReturnType<typeof driftOf>) => `${perYear(drift.cm, 'cm')}${towards(drift.direction)}`
+  const say = (drift: ReturnType<typeof driftOf>) => `${perYear(drift.cm, 'cm')}${stands(drift.cm) ? towards(drift.direction) : ''}`
   return `The observed pole moved ${say(observed)}; ${say(residual)} is left when the model is taken away.`
 }
 

@@ -1,3 +1,6 @@
+import { coefficientSets } from '../earth/coefficientSets.ts'
+import { CHANDLER_PERIOD_DAYS, CHANDLER_Q, EARTH_RADIUS_M } from '../earth/constants.ts'
+import { formatNumber } from '../format/digits.ts'
 import type { CoefficientSetId, CoreChoice, OceanMode, PhysicsSettings } from '../types/domain.ts'
 
 export interface OceanText {
@@ -39,11 +42,7 @@ export const coreTexts: Readonly<Record<CoreChoice, OceanText>> = {
 }
 
 /** The coefficient sets, each with its source. */
-export const coefficientTexts: Readonly<Record<CoefficientSetId, { name: string, source: string }>> = {
-  'gross-2007': { name: 'Gross (2007)', source: 'Gross, R. S. (2007), Earth rotation variations – long period, Treatise on Geophysics 3, 239–294' },
-  'eubanks-1993': { name: 'Eubanks (1993)', source: 'Eubanks, T. M. (1993), Variations in the orientation of the Earth, AGU Geodynamics Series 24, 1–54' },
-  'barnes-1983': { name: 'Barnes et al. (1983)', source: 'Barnes, R. T. H., Hide, R., White, A. A. & Wilson, C. A. (1983), Proceedings of the Royal Society A 387, 31–73' },
-}
+export const coefficientTexts: Readonly<Record<CoefficientSetId, { name: string, source: string }>> = coefficientSets
 
 /** The settings of a run on one line. */
 export function settingsLine(settings: PhysicsSettings): string {
@@ -58,7 +57,7 @@ export function methodSections(settings: PhysicsSettings, compared: boolean): Me
   const sections: MethodSection[] = [
     {
       heading: 'Load',
-      text: 'Each region’s mass is uniform over its outline. Outlines are read as WGS 84 longitude and geodetic latitude with straight edges between vertices, mapped to geocentric latitude on a sphere of 6 371 km; areas are those of the ellipsoid. The moments of an outline are exact contour integrals.',
+      text: `Each region’s mass is uniform over its outline. Outlines are read as WGS 84 longitude and geodetic latitude with straight edges between vertices, mapped to geocentric latitude on a sphere of ${formatNumber(EARTH_RADIUS_M / 1000)}\u00a0km; areas are those of the ellipsoid. The moments of an outline are exact contour integrals.`,
     },
     { heading: 'Ocean', text: oceanTexts[settings.ocean].text },
     {
@@ -68,7 +67,7 @@ export function methodSections(settings: PhysicsSettings, compared: boolean): Me
     { heading: 'Core', text: coreTexts[settings.core].text },
     {
       heading: 'Trends and uncertainty',
-      text: 'Trends are weighted least-squares fits over the span, per Julian year of 365.25 days, with annual and semiannual terms from two years on. Their one-sigma is scaled by the residuals and widened by √((1 + r₁)/(1 − r₁)), r₁ being the lag-one autocorrelation. A source of error that several series share is fully correlated between them and adds linearly in the sum.',
+      text: 'Trends are weighted least-squares fits over the span, per Julian year of 365.25 days, with annual and semiannual terms from two years on. Their one-sigma is scaled by the residuals and widened by the square root of (1 + r₁)/(1 − r₁), r₁ being the lag-one autocorrelation. A source of error that several series share is fully correlated between them and adds linearly in the sum.',
     },
     {
       heading: 'Accuracy of the model',
@@ -78,7 +77,7 @@ export function methodSections(settings: PhysicsSettings, compared: boolean): Me
   if (compared) {
     sections.push({
       heading: 'Comparison',
-      text: 'Observed excitation and model are monthly means over their common span, each relative to its own mean. The residual is observed minus model. Reported polar motion is taken as excitation, χ₁ = x and χ₂ = −y, which holds for changes slower than the Chandler wobble of 433 days.',
+      text: `Observed excitation and model are monthly means over their common span, each relative to its own mean. The residual is observed minus model. The observed excitation of the pole is made from reported polar motion, χ = p + (i/σ) dp/dt with p = x − iy, for a Chandler period of ${formatNumber(CHANDLER_PERIOD_DAYS)} days and Q = ${formatNumber(CHANDLER_Q)}.`,
     })
   }
   return sections

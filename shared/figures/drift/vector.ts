@@ -1,7 +1,8 @@
+import { POLE_MM_PER_MAS } from '../../earth/constants.ts'
 import type { Measured } from '../../types/domain.ts'
 
-/** The mean radius of the Earth's surface under one milliarcsecond: 6 371 000 m · π / 648 000 000, in cm. */
-export const cmPerMas = 6_371_000 * 100 * Math.PI / 648_000_000
+/** Way of the pole over the ground, cm per mas. */
+export const cmPerMas = POLE_MM_PER_MAS / 10
 
 export interface DriftCovariance { c11: number, c12: number, c22: number }
 

@@ -138,7 +138,7 @@ function drawDrift(canvas: Canvas, view: MapView, degrees: number): Box[] {
 function drawNames(canvas: Canvas, shapes: readonly Shape[], arrow: Box[] | null, height: number, width: number): number {
   const { palette } = canvas
   const names = shapes.map(({ region, view, box }) => ({
-    text: shortened(region.name, Math.min(220, view.box.width * 0.75), 12),
+    text: shortened(region.name, Math.min(220, view.box.width * (view.kind === 'world' ? 0.75 : 0.95)), 12),
     box,
     frame: view.kind === 'world' ? { x: 0, y: view.box.y, width: view.box.width, height: view.box.height } : view.box,
   }))

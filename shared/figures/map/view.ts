@@ -40,7 +40,7 @@ export function mapViews(width: number, insets: { north: boolean, south: boolean
   if (width >= 620) {
     const gap = 16
     // Two insets stand over one another.
-    const side = Math.floor((width - gap) * (kinds.length === 2 ? 0.22 : 0.26))
+    const side = Math.floor((width - gap) * (kinds.length === 2 && width > 900 ? 0.22 : 0.27))
     const mapWidth = width - gap - side
     const height = Math.max(Math.round(mapWidth * aspect), side * kinds.length)
     const mapHeight = Math.round(mapWidth * aspect)

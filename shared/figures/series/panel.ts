@@ -42,7 +42,11 @@ export function axisWidth(y: FigureScale, height: number): number {
 }
 
 export function valueTicks(y: FigureScale, height: number): { value: number, text: string }[] {
-  const ticks = linear(y).ticks(Math.max(2, Math.floor(height / 44)))
+  const scale = linear(y)
+  let count = Math.max(2, Math.floor(height / 44))
+  // A round step may leave a single tick in view, which is no scale.
+  while (scale.ticks(count).length < 3 && count < 8) count++
+  const ticks = scale.ticks(count)
   const digits = tickDecimals(ticks)
   const signed = ticks.some(tick => tick < 0)
   return ticks.map(value => ({ value, text: signed ? formatSigned(value, digits) : formatNumber(value, digits) }))

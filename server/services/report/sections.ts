@@ -1,0 +1,137 @@
+import { formatArea, formatDate, formatInstant, formatMeasured, formatNumber, formatShare, formatSpan } from '#shared/format/numbers'
+import { print } from '#shared/design/tokens'
+import { cautions, cautionsFor } from '#shared/text/cautions'
+import { constantRows } from '#shared/text/constants'
+import { methodSections, settingsLine } from '#shared/text/method'
+import { listed } from '#shared/text/words'
+import { caution, page, paragraph, sectionHead, size, textTable, together } from './style'
+import type { ComparisonQuantity } from '#shared/types/run'
+import type { Block, ReportData } from './types'
+
+/** Overlaps and warnings, before any sum. Nothing where there are none. */
+export function overlapBlocks({ result }: ReportData): Block[] {
+  const names = new Map(result.regions.map(region => [region.key, region.name]))
+  const overlaps = result.overlaps.map(({ a, b, areaKm2, shareOfA, shareOfB }) =>
+    `${names.get(a) ?? a} and ${names.get(b) ?? b} share ${formatArea(areaKm2)}: ${formatShare(shareOfA).replace('+', '')} of the first, ${formatShare(shareOfB).replace('+', '')} of the second.`)
+  const messages = result.warnings.filter(warning => warning.code !== 'overlap').map(warning => warning.message)
+  const [first, ...rest] = [...overlaps, ...messages].map(text => caution(text))
+  return first ? [together(sectionHead('Before the sum', 'overlaps and warnings'), first), ...rest] : []
+}
+
+/** Trends side by side with their errors and noise, what is still in the observed series, and the cautions that belong to it. */
+export function comparisonBlocks(data: ReportData): Block[] {
+  const { comparison, observed } = data
+  if (!comparison) return []
+  const row = (name: string, unit: string, quantity: ComparisonQuantity | null, factor: number): string[][] => {
+    if (!quantity) return []
+    const { trends, r1 } = quantity
+    const trend = (which: keyof typeof trends) => formatMeasured(trends[which].value * factor, trends[which].sigma * factor).text
+    const rms = (value: number) => formatMeasured(value * factor, null, { signed: false }).value
+    return [[
+      `${name}, ${unit}`, trend('observed'), trend('model'), trend('residual'),
+      `${formatNumber(r1.observed, 2)} / ${formatNumber(r1.model, 2)} / ${formatNumber(r1.residual, 2)}`,
+      `${rms(quantity.rmsObserved)} / ${rms(quantity.rmsResidual)}`,
+    ]]
+  }
+  const rows = [...row('Length of day', 'µs per year', comparison.lod, 1000), ...row('χ₁', 'mas per year', comparison.chi1, 1), ...row('χ₂', 'mas per year', comparison.chi2, 1)]
+  return [
+    textTable({
+      head: sectionHead('Comparison with observation', `${formatSpan(comparison.span.fromMjd, comparison.span.toMjd)}, monthly means`),
+      columns: ['Trend', 'observed', 'model', 'residual', 'r₁ obs. / mod. / res.', 'RMS obs. / res., µs or mas'],
+      rows,
+      widths: ['*', 'auto', 'auto', 'auto', 'auto', 'auto'],
+      right: [1, 2, 3, 4, 5],
+    }),
+    ...(observed ? [paragraph(`Observed series: ${observed.name}. ${observed.source}`, { margin: [0, 6, 0, 0], fontSize: size.small, color: print.soft })] : []),
+    ...(comparison.notRemoved.length ? [paragraph(`Still in the observed series: ${listed(comparison.notRemoved)}.`, { margin: [0, 6, 0, 4] })] : []),
+    caution(cautions.core),
+    caution(cautions.noise),
+  ]
+}
+
+export function methodBlocks({ result, comparison }: ReportData): Block[] {
+  const { settings } = result
+  const [first, ...rest] = methodSections(settings, comparison !== null).map(({ heading, text }): Block => ({
+    text: [{ text: `${heading}. `, bold: true }, text], margin: [0, 0, 0, 5], lineHeight: 1.25,
+  }))
+  return [
+    together(sectionHead('Method', settingsLine(settings)), first!),
+    ...rest,
+    together(textTable({
+      head: sectionHead('Constants', 'with their sources'),
+      columns: ['Quantity', 'Value', 'Source'],
+      rows: constantRows(settings, settings.oceanAreaM2).map(({ name, value, source }) => [name, value, source]),
+      widths: [110, 130, '*'],
+    })),
+  ]
+}
+
+const kinds: Record<ReportData['sources'][number]['kind'], string> = {
+  'aquifer': 'aquifer', 'basin': 'basin', 'lake': 'lake', 'reservoir': 'reservoir', 'soil-water': 'soil water', 'snow-water': 'snow water',
+  'ice-sector': 'ice sector', 'glacier-region': 'glacier region',
+}
+
+/** A checksum in two lines, so that it fits a column and can still be copied. */
+function checksum(sha256: string): Block {
+  return { text: sha256.length > 32 ? `${sha256.slice(0, 32)}\n${sha256.slice(32)}` : sha256, fontSize: size.tiny - 1, color: print.soft }
+}
+
+export function sourceBlocks({ result, sources, observed }: ReportData): Block[] {
+  const byKey = new Map(result.regions.map(region => [region.key, region]))
+  const rows = sources.map((source) => {
+    const region = byKey.get(source.key)
+    return [
+      { text: [source.name, { text: `\n${kinds[source.kind]}, ${source.agency}${region ? `\n${formatArea(region.areaKm2)}` : ''}`, color: print.soft }] },
+      { text: [source.source || 'not stated', { text: `\nversion ${source.seriesVersion}${region ? `, ${region.epochsUsed} epochs, ${formatShare(region.coverage).replace('+', '')} of the span` : ''}`, color: print.soft }] },
+      checksum(source.seriesSha256),
+      checksum(source.outlineSha256),
+    ]
+  })
+  const seen = observed ? [[{ text: [observed.name, { text: '\nobserved rotation', color: print.soft }] }, { text: observed.source || 'not stated' }, checksum(observed.originalSha256), { text: '–' }]] : []
+  return [textTable({
+    head: sectionHead('Data', 'sources, versions and checksums (SHA-256)'),
+    columns: ['Region', 'Source of the series', 'Series', 'Outline'],
+    rows: [...rows, ...seen],
+    widths: [112, '*', 106, 106],
+  })]
+}
+
+export function cautionBlocks({ result, comparison, invented }: ReportData): Block[] {
+  const [first, ...rest] = cautionsFor(result, { comparison, invented }).map(key => caution(cautions[key]))
+  return [together(sectionHead('Cautions'), first!), ...rest]
+}
+
+/** Who and when, and what a reader needs to make the figures again. */
+export function recordBlocks(data: ReportData): Block[] {
+  const { result, runHash, inputSha256, preparedBy, preparedAt, runNumber, scenarioName, workspaceName } = data
+  const rows: [string, string][] = [
+    ['Account', workspaceName],
+    ['Scenario and run', `${scenarioName}, run ${runNumber}`],
+    ['Prepared by', preparedBy],
+    ['Run on', formatInstant(preparedAt)],
+    ['Span', `${formatDate(result.span.fromMjd)} to ${formatDate(result.span.toMjd)}, ${formatNumber(result.epochsMjd.length)} months; gaps up to ${formatNumber(result.settings.maxGapDays)} days are bridged`],
+    ['SHA-256 of the result', runHash],
+    ['SHA-256 of the input', inputSha256],
+    ['Engine', `Counterpoise ${result.engineVersion}`],
+    ['Earth model, SHA-256', result.earthModelChecksum],
+  ]
+  return [together(textTable({ head: sectionHead('Record', 'the same input gives the same figures'), columns: [], rows, widths: [110, '*'] }))]
+}
+
+/** Runs along the top of every page but the first, and along the foot of all. */
+export function runningHead({ scenarioName, runNumber, invented }: ReportData, pageNumber: number): Block {
+  const mark = invented ? [{ text: 'Invented data', bold: true, alignment: 'right' }] : []
+  const left = pageNumber === 1 ? { text: 'Counterpoise', bold: true } : { text: `Counterpoise  ${scenarioName}, run ${runNumber}`, color: print.soft }
+  return { columns: [left, ...mark], margin: [page.margin.left, 28, page.margin.right, 0], fontSize: size.small }
+}
+
+export function runningFoot({ runHash }: ReportData, pageNumber: number, pages: number): Block {
+  return {
+    columns: [
+      { text: `Calculated, not observed. Run ${runHash.slice(0, 16)}`, color: print.soft },
+      { text: `${pageNumber} of ${pages}`, alignment: 'right', color: print.soft, width: 60 },
+    ],
+    margin: [page.margin.left, 18, page.margin.right, 0],
+    fontSize: size.small,
+  }
+}

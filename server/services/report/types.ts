@@ -1,0 +1,41 @@
+import type { Outline, RegionKind } from '#shared/types/domain'
+import type { Comparison, RunResult } from '#shared/types/run'
+
+/** Where a region's figures come from. */
+export interface ReportSource {
+  key: string
+  name: string
+  kind: RegionKind
+  agency: string
+  outlineSha256: string
+  seriesVersion: number
+  seriesSha256: string
+  source: string
+  geometry: Outline
+}
+
+/** Everything that a report is made of; the same data make the same bytes. */
+export interface ReportData {
+  result: RunResult
+  comparison: Comparison | null
+  scenarioName: string
+  workspaceName: string
+  runNumber: number
+  /** SHA-256 of the result. */
+  runHash: string
+  inputSha256: string
+  preparedBy: string
+  /** ISO instant. */
+  preparedAt: string
+  sources: ReportSource[]
+  /** The observed series of the comparison. */
+  observed?: { name: string, source: string, originalSha256: string } | null
+  /** Demo: marked on every page. */
+  invented: boolean
+}
+
+/** Font files of a report, absolute paths of TrueType files. */
+export interface ReportFonts { normal: string, bold: string, italics: string }
+
+/** A piece of a page as the PDF writer takes it. */
+export type Block = { [key: string]: unknown }
