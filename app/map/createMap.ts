@@ -1,0 +1,44 @@
+import { Map as Chart, setWorkerUrl } from 'maplibre-gl'
+import workerUrl from 'maplibre-gl/dist/maplibre-gl-worker.mjs?url'
+import type { Palette } from '#shared/design/tokens'
+import { hatchImage } from './hatchImage'
+import { lossHatch, mapLayers, mapStyle, type MapProjection } from './mapStyle'
+
+/** A map in an element, looking straight down, north up; labels wait for the page's Noto Sans. */
+export async function createMap(container: HTMLElement, palette: Palette, projection: MapProjection): Promise<Chart> {
+  await Promise.race([document.fonts.load('400 24px "Noto Sans"', 'Aµ−'), new Promise(resolve => setTimeout(resolve, 1500))])
+  setWorkerUrl(workerUrl)
+  const map = new Chart({
+    container,
+    style: mapStyle(palette, projection, location.origin),
+    center: [-30, 30],
+    zoom: 1,
+    minZoom: -2,
+    maxZoom: 9,
+    maxPitch: 0,
+    dragRotate: false,
+    pitchWithRotate: false,
+    touchPitch: false,
+    attributionControl: false,
+    fadeDuration: 0,
+    locale: { 'Map.Title': 'Map of the regions' },
+    canvasContextAttributes: { antialias: true }
+  })
+  map.touchZoomRotate.disableRotation()
+  map.keyboard.disableRotation()
+  map.on('style.load', () => {
+    if (!map.hasImage(lossHatch)) map.addImage(lossHatch, hatchImage(palette.loss), { pixelRatio: 2 })
+  })
+  await map.once('load')
+  return map
+}
+
+/** Colours of another theme on a map that stands. */
+export function repaint(map: Chart, palette: Palette): void {
+  map.updateImage(lossHatch, hatchImage(palette.loss))
+  for (const layer of mapLayers(palette)) {
+    for (const [name, value] of Object.entries(layer.paint ?? {})) {
+      map.setPaintProperty(layer.id, name as never, value as never)
+    }
+  }
+}

@@ -1,0 +1,83 @@
+import { contourOf } from '#shared/earth/contour'
+import { ringPath } from '#shared/earth/rings'
+import { findCrossings } from '#shared/geo/crossings'
+import { cutRings } from '#shared/geo/cut'
+import { alongArc, drawnLine } from '#shared/geo/greatCircle'
+import { checkOutline } from '#shared/geo/outline'
+import type { BoundedRing } from '#shared/geo/pointInRing'
+import type { Outline, Position } from '#shared/types/domain'
+import { InputError } from '#shared/types/issue'
+import type { Draft, VertexPlace } from './draft'
+
+/** Seven decimals of a degree, one centimetre: what is stored. */
+const rounded = ([lon, lat]: Position): Position => [Math.round(lon * 1e7) / 1e7, Math.round(lat * 1e7) / 1e7]
+
+/** A ring's line from vertex to vertex and back: `edgeOf[k]` is the edge that step k lies on. */
+export function ringLine(draft: Draft, ring: readonly Position[]): { positions: Position[], edgeOf: number[] } {
+  if (draft.edges === 'great-circle') return drawnLine(ring)
+  return { positions: [...ring, ring[0]!], edgeOf: ring.map((_, k) => k) }
+}
+
+/** What the draft would be stored as; null while it encloses nothing. Check it with `faultOf`. */
+export function draftOutline(draft: Draft): Outline | null {
+  const rings = draft.rings.filter(ring => ring.length >= 3)
+  if (rings.length === 0) return null
+  try {
+    const bounded = rings.map((ring): BoundedRing => {
+      const positions = ringLine(draft, ring).positions.map(rounded)
+      return contourOf({ type: 'Polygon', coordinates: [positions] }).rings[0]!
+    })
+    const outline = cutRings(bounded)
+    const stored = outline.type === 'Polygon'
+      ? { type: outline.type, coordinates: outline.coordinates.map(ring => ring.map(rounded)) }
+      : { type: outline.type, coordinates: outline.coordinates.map(polygon => polygon.map(ring => ring.map(rounded))) }
+    return stored.coordinates.length === 0 ? null : stored
+  }
+  catch (error) {
+    if (error instanceof InputError) return null
+    throw error
+  }
+}
+
+/** Why the draft cannot be stored, and the lines on the map that are wrong. */
+export interface DraftFault { message: string, lines: Position[][] }
+
+/** Null where the draft can be stored. `outline` is what `draftOutline` gave. */
+export function faultOf(draft: Draft, outline: Outline | null): DraftFault | null {
+  const rings = draft.rings.filter(ring => ring.length >= 3)
+  if (rings.length === 0) return null
+  const lines = rings.map(ring => ringLine(draft, ring))
+  const { crossings } = findCrossings(lines.map(line => ringPath(line.positions)), 3)
+  if (crossings.length > 0) {
+    const wrong = crossings.flatMap(({ first, second }) => [first, second].map(({ ring, edge }) => edgeLine(lines[ring]!, edge)))
+    return { message: crossings.length === 1 ? 'Two edges cross.' : 'Edges cross.', lines: wrong }
+  }
+  if (outline === null) return { message: 'The outline encloses no area.', lines: [] }
+  const [issue] = checkOutline(outline)
+  return issue ? { message: issue.message, lines: [] } : null
+}
+
+function edgeLine({ positions, edgeOf }: { positions: Position[], edgeOf: number[] }, at: number): Position[] {
+  const edge = edgeOf[Math.min(at, edgeOf.length - 1)]!
+  const steps = edgeOf.flatMap((owner, k) => owner === edge ? [k] : [])
+  return positions.slice(steps[0]!, steps.at(-1)! + 2)
+}
+
+/** The middle of every edge, where a new vertex can be pulled out. */
+export function edgeMiddles(draft: Draft): { after: VertexPlace, place: Position }[] {
+  return draft.rings.flatMap((vertices, ring) => {
+    const isOpen = draft.open && ring === draft.rings.length - 1
+    const edges = isOpen ? vertices.length - 1 : vertices.length
+    return Array.from({ length: Math.max(0, edges) }, (_, vertex) => {
+      const [a, b] = [vertices[vertex]!, vertices[(vertex + 1) % vertices.length]!]
+      return { after: { ring, vertex }, place: middle(draft, a, b) }
+    })
+  })
+}
+
+function middle(draft: Draft, a: Position, b: Position): Position {
+  if (draft.edges === 'great-circle') return alongArc(a, b, 0.5)
+  const step = b[0] - a[0]
+  const short = Math.abs(step) <= 180 || Math.abs(step) === 360 ? step : step - 360 * Math.round(step / 360)
+  return [a[0] + short / 2, (a[1] + b[1]) / 2]
+}

@@ -1,0 +1,115 @@
+import type { ExpressionSpecification, LayerSpecification, StyleSpecification } from 'maplibre-gl'
+import type { Palette } from '#shared/design/tokens'
+import { graticule } from './graticule'
+import { collection } from './regionSources'
+
+export type MapProjection = 'globe' | 'flat'
+
+export const lossHatch = 'hatch-loss'
+/** Sources that the page fills. */
+export const sourceIds = ['region-fills', 'region-lines', 'region-labels', 'draft-fill', 'draft-lines', 'draft-handles'] as const
+export type SourceId = typeof sourceIds[number]
+
+/** The whole style: shipped tiles, graticule, regions and the outline being drawn. No glyphs: labels come from local Noto Sans. */
+export function mapStyle(palette: Palette, projection: MapProjection, origin: string): StyleSpecification {
+  return {
+    version: 8,
+    projection: { type: projection === 'globe' ? 'globe' : 'mercator' },
+    sources: {
+      earth: { type: 'vector', tiles: [`${origin}/tiles/{z}/{x}/{y}.pbf`], minzoom: 0, maxzoom: 5 },
+      graticule: { type: 'geojson', data: graticule() },
+      ...Object.fromEntries(sourceIds.map(id => [id, { type: 'geojson' as const, data: collection([]), tolerance: 0.2 }]))
+    },
+    layers: mapLayers(palette)
+  }
+}
+
+/** Layers from the ground up. A change of theme sets their paint anew. */
+export function mapLayers(palette: Palette): LayerSpecification[] {
+  return [...groundLayers(palette), ...regionLayers(palette), ...draftLayers(palette)]
+}
+
+function groundLayers(palette: Palette): LayerSpecification[] {
+  return [
+    { id: 'sea', type: 'background', paint: { 'background-color': palette.sea } },
+    { 'id': 'land', 'type': 'fill', 'source': 'earth', 'source-layer': 'land', 'paint': { 'fill-color': palette.land, 'fill-antialias': false } },
+    {
+      'id': 'coast', 'type': 'line', 'source': 'earth', 'source-layer': 'coast',
+      'paint': { 'line-color': palette.soft, 'line-width': 0.5, 'line-opacity': 0.6 }
+    },
+    { id: 'graticule', type: 'line', source: 'graticule', paint: { 'line-color': palette.soft, 'line-width': 0.5, 'line-opacity': 0.3 } }
+  ]
+}
+
+function regionLayers(palette: Palette): LayerSpecification[] {
+  const colour: ExpressionSpecification = ['match', ['get', 'sign'], 'loss', palette.loss, 'gain', palette.gain, palette.ink]
+  const selected: ExpressionSpecification = ['get', 'selected']
+  const tint: ExpressionSpecification = ['match', ['get', 'sign'], 'none', 0.1, 'loss', 0.22, 0.34]
+  return [
+    {
+      id: 'region-fill', type: 'fill', source: 'region-fills',
+      paint: { 'fill-color': colour, 'fill-opacity': tint, 'fill-antialias': false }
+    },
+    {
+      id: 'region-hatch', type: 'fill', source: 'region-fills', filter: ['==', ['get', 'sign'], 'loss'],
+      paint: { 'fill-pattern': lossHatch, 'fill-antialias': false }
+    },
+    {
+      id: 'region-line', type: 'line', source: 'region-lines', layout: { 'line-join': 'round' },
+      paint: { 'line-color': colour, 'line-width': ['case', selected, 3, 1.25] }
+    },
+    {
+      id: 'region-chosen', type: 'line', source: 'region-lines', filter: ['get', 'selected'], layout: { 'line-join': 'round' },
+      paint: { 'line-color': palette.ink, 'line-width': 1 }
+    },
+    {
+      id: 'region-label', type: 'symbol', source: 'region-labels',
+      layout: {
+        'text-field': ['case', ['==', ['get', 'trend'], ''], ['get', 'name'],
+          ['format', ['get', 'name'], {}, '\n', {}, ['get', 'trend'], { 'font-scale': 0.92 }]],
+        'text-font': ['Noto Sans'],
+        'text-size': 12.5,
+        'text-line-height': 1.25,
+        'text-max-width': 11,
+        'text-padding': 4,
+        'text-variable-anchor': ['center', 'top', 'bottom', 'left', 'right', 'top-left', 'bottom-right'],
+        'text-radial-offset': 1.1,
+        'text-justify': 'auto',
+        'symbol-sort-key': ['get', 'rank']
+      },
+      paint: { 'text-color': palette.ink, 'text-halo-color': palette.paper, 'text-halo-width': 1.6, 'text-halo-blur': 0.3 }
+    }
+  ]
+}
+
+function draftLayers(palette: Palette): LayerSpecification[] {
+  const is = (kind: string): ExpressionSpecification => ['==', ['get', 'kind'], kind]
+  return [
+    { id: 'draft-fill', type: 'fill', source: 'draft-fill', paint: { 'fill-color': palette.model, 'fill-opacity': 0.18, 'fill-antialias': false } },
+    {
+      id: 'draft-line', type: 'line', source: 'draft-lines', filter: is('edge'), layout: { 'line-join': 'round', 'line-cap': 'round' },
+      paint: { 'line-color': palette.model, 'line-width': 2 }
+    },
+    {
+      id: 'draft-ahead', type: 'line', source: 'draft-lines', filter: is('ahead'),
+      paint: { 'line-color': palette.model, 'line-width': 1.25, 'line-dasharray': [3, 3] }
+    },
+    {
+      id: 'draft-fault', type: 'line', source: 'draft-lines', filter: is('fault'),
+      paint: { 'line-color': palette.loss, 'line-width': 4, 'line-dasharray': [1.5, 1] }
+    },
+    {
+      id: 'draft-middle', type: 'circle', source: 'draft-handles', filter: is('middle'),
+      paint: { 'circle-radius': 3, 'circle-color': palette.paper, 'circle-stroke-color': palette.model, 'circle-stroke-width': 1, 'circle-opacity': 0.8, 'circle-stroke-opacity': 0.8 }
+    },
+    {
+      id: 'draft-vertex', type: 'circle', source: 'draft-handles', filter: is('vertex'),
+      paint: {
+        'circle-radius': ['case', ['get', 'chosen'], 6.5, 4.5],
+        'circle-color': ['case', ['get', 'chosen'], palette.model, palette.paper],
+        'circle-stroke-color': palette.model,
+        'circle-stroke-width': 2
+      }
+    }
+  ]
+}

@@ -1,0 +1,89 @@
+import type { Map as Chart } from 'maplibre-gl'
+import { arcDeg } from '#shared/geo/greatCircle'
+import { polygonsOf } from '#shared/geo/parts'
+import type { Outline, Position } from '#shared/types/domain'
+
+const tilePixels = 512
+/** Half the field of view of the camera, as a part of the height: 0.5 / tan(36.87° / 2) = 1.5. */
+const cameraHeights = 1.5
+/** Part of the smaller side of the map that what is shown may fill. */
+const fill = 0.43
+
+/** Radius of the globe itself in pixels, seen from far away, at a zoom and centre latitude. */
+function globeRadius(zoom: number, latitudeDeg: number): number {
+  return tilePixels * 2 ** zoom / (2 * Math.PI * Math.cos(latitudeDeg * Math.PI / 180))
+}
+
+/** Radius of the globe's edge on the screen in pixels, the camera being near; null for the flat map. */
+export function limbRadius(map: Chart): number | null {
+  if (map.getProjection()?.type !== 'globe') return null
+  const radius = globeRadius(map.getZoom(), map.getCenter().lat)
+  const camera = cameraHeights * map.getContainer().clientHeight
+  const distance = camera + radius
+  return camera * radius / Math.sqrt(distance * distance - radius * radius)
+}
+
+/** Zoom at which the whole globe fits the map, with a margin. */
+export function wholeGlobeZoom(map: Chart): number {
+  const { clientWidth, clientHeight } = map.getContainer()
+  const wanted = Math.min(clientWidth, clientHeight) * 0.465
+  const camera = cameraHeights * clientHeight
+  // limb = c r / √((c + r)² − r²) solved for r.
+  const radius = wanted * (wanted + Math.hypot(wanted, camera)) / camera
+  return Math.log2(radius * 2 * Math.PI * Math.cos(map.getCenter().lat * Math.PI / 180) / tilePixels)
+}
+
+/** The longitude's copy that is nearest to the middle of the map. */
+export function nearCentre(map: Chart, [lon, lat]: Position): Position {
+  return [lon + 360 * Math.round((map.getCenter().lng - lon) / 360), lat]
+}
+
+/** Whether a place lies behind the globe's edge. */
+function isHidden(map: Chart, place: Position): boolean {
+  if (map.getProjection()?.type !== 'globe') return false
+  const { lng, lat } = map.getCenter()
+  const radius = globeRadius(map.getZoom(), lat)
+  const edgeDeg = Math.acos(radius / (radius + cameraHeights * map.getContainer().clientHeight)) * 180 / Math.PI
+  return arcDeg([lng, lat], place) > edgeDeg
+}
+
+/** Where a place is on the screen; null behind the globe's edge. */
+export function toScreen(map: Chart, place: Position): { x: number, y: number } | null {
+  const [lng, lat] = nearCentre(map, place)
+  if (isHidden(map, place)) return null
+  const { x, y } = map.project([lng, lat])
+  return { x, y }
+}
+
+/** The place under a point of the screen, longitude within ±180°; null beside the globe. */
+export function toPlace(map: Chart, point: { x: number, y: number }): Position | null {
+  const radius = limbRadius(map)
+  if (radius !== null) {
+    const { clientWidth, clientHeight } = map.getContainer()
+    if (Math.hypot(point.x - clientWidth / 2, point.y - clientHeight / 2) > radius - 1) return null
+  }
+  const { lng, lat } = map.unproject([point.x, point.y])
+  return [lng - 360 * Math.floor((lng + 180) / 360), Math.max(-90, Math.min(90, lat))]
+}
+
+/** Centre and zoom that show all of some outlines about a centre; the whole globe where they are too far apart. */
+export function viewOf(map: Chart, outlines: readonly Outline[]): { center: Position, zoom: number } | null {
+  const places = outlines.flatMap(outline => polygonsOf(outline).flat(2))
+  if (places.length === 0) return null
+  const sum = [0, 0, 0]
+  for (const [lon, lat] of places) {
+    const [l, p] = [lon * Math.PI / 180, lat * Math.PI / 180]
+    sum[0]! += Math.cos(p) * Math.cos(l)
+    sum[1]! += Math.cos(p) * Math.sin(l)
+    sum[2]! += Math.sin(p)
+  }
+  const latitude = Math.atan2(sum[2]!, Math.hypot(sum[0]!, sum[1]!)) * 180 / Math.PI
+  const center: Position = [Math.atan2(sum[1]!, sum[0]!) * 180 / Math.PI, Math.max(-80, Math.min(80, latitude))]
+  const reach = Math.max(1, ...places.map(place => arcDeg(center, place)))
+  const { clientWidth, clientHeight } = map.getContainer()
+  const whole = wholeGlobeZoom(map) + Math.log2(Math.cos(center[1] * Math.PI / 180) / Math.cos(map.getCenter().lat * Math.PI / 180))
+  if (reach > 60) return { center, zoom: whole }
+  const radius = fill * Math.min(clientWidth, clientHeight) / Math.sin(reach * Math.PI / 180)
+  const zoom = Math.log2(radius * 2 * Math.PI * Math.cos(center[1] * Math.PI / 180) / tilePixels)
+  return { center, zoom: Math.min(6.5, Math.max(whole, zoom - 0.6)) }
+}
