@@ -1,0 +1,61 @@
+import type { ColumnChoices } from './preview'
+
+export interface SharedRateField { source: string, sigma: string }
+export interface SeriesFacts {
+  name: string
+  reason: string
+  source: string
+  licence: string
+  independence: string
+  sharedRates: SharedRateField[]
+}
+/** What somebody has entered so far. */
+export interface SeriesDraft { text: string, fileName: string | null, choices: ColumnChoices, facts: SeriesFacts }
+
+/** Browsers hold some five million characters for a tab; a longer text is left out and has to be chosen again. */
+export const longestDraftText = 1_500_000
+
+export function writeDraft(draft: SeriesDraft): string {
+  return JSON.stringify({ ...draft, text: draft.text.length > longestDraftText ? '' : draft.text })
+}
+
+const isText = (value: unknown): value is string => typeof value === 'string'
+
+/** A kept draft; null where there is none or it is not one. */
+export function readDraft(kept: string | null): SeriesDraft | null {
+  if (!kept) return null
+  let value: Partial<SeriesDraft>
+  try {
+    value = JSON.parse(kept) as Partial<SeriesDraft>
+  }
+  catch {
+    return null
+  }
+  const facts = value?.facts
+  if (!isText(value?.text) || typeof value.choices !== 'object' || value.choices === null || !facts) return null
+  if (![facts.name, facts.reason, facts.source, facts.licence, facts.independence].every(isText) || !Array.isArray(facts.sharedRates)) return null
+  return {
+    text: value.text, fileName: isText(value.fileName) ? value.fileName : null, choices: value.choices,
+    facts: { ...facts, sharedRates: facts.sharedRates.filter(rate => isText(rate?.source) && isText(rate?.sigma)) },
+  }
+}
+
+/** Systematic rates as typed, read for sending; a fault names the line. Empty lines are passed over. */
+export function readSharedRates(fields: readonly SharedRateField[], readNumber: (text: string) => number | null): { rates: { source: string, sigmaGtPerYear: number }[], faults: (string | null)[] } {
+  const rates: { source: string, sigmaGtPerYear: number }[] = []
+  const seen = new Set<string>()
+  const faults = fields.map(({ source, sigma }) => {
+    const name = source.trim()
+    const value = readNumber(sigma)
+    if (name === '' && value === null) return null
+    if (name === '') return 'Name the source of this error.'
+    if (seen.has(name)) return 'This source is named above already.'
+    if (value === null) return 'The rate is missing.'
+    if (!Number.isFinite(value)) return `“${sigma.trim()}” is not a number.`
+    if (value < 0) return 'A one-sigma is not negative.'
+    seen.add(name)
+    rates.push({ source: name, sigmaGtPerYear: value })
+    return null
+  })
+  return { rates, faults }
+}
