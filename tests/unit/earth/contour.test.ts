@@ -151,7 +151,8 @@ describe('faults', () => {
       contourOf(g)
     }
     catch (error) {
-      return `${(error as InputError).issues[0]!.path} ${(error as InputError).issues[0]!.code}`
+      if (!(error instanceof InputError)) throw error
+      return `${error.issues[0]!.path} ${error.issues[0]!.code}`
     }
     return 'none'
   }
