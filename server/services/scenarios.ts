@@ -10,7 +10,6 @@ import { schema } from '../database/client'
 import { Problem } from '../utils/problem'
 import { authorise, change, nameOfUser, newId } from './change'
 import type { Context } from './context'
-import { observedRow } from './observed'
 import { pageOf } from './paging'
 import { latestOutline, regionNames, seriesOfRegion } from './regions'
 import { massSeries } from './seriesStore'
@@ -132,7 +131,6 @@ export function binScenario(context: Context, principal: Principal | null, id: s
 export function freezeInput(context: Context, row: ScenarioRow): RunInput {
   const draft = JSON.parse(row.draft) as ScenarioDraft
   checkDraft(context, row.workspaceId, draft)
-  if (draft.observedId) observedRow(context, draft.observedId)
   const used = draft.regions.filter(r => r.scale !== 0)
   if (!used.length) throw new InputError('A run needs at least one region with a series.', [{ path: 'draft/regions', code: 'empty', message: 'no region is switched on' }])
   return {
