@@ -127,6 +127,8 @@ export interface RunResult {
 /** Observed rotation in canonical units, daily or coarser. NaN where a quantity is missing. */
 export interface ObservedSeries {
   format: 'eop14c04' | 'eop20c04' | 'finals2000a' | 'csv'
+  /** Set where the excitation comes from gravity coefficients: no tide or motion of rotation is in it. Absent: observed rotation. */
+  from?: 'gravity'
   mjd: Float64Array
   /** Reported pole, mas; x towards Greenwich, y towards 90° W. */
   xMas: Float64Array

@@ -31,7 +31,8 @@ const NODAL_BIAS = 'up to 3.7 ms per century over 10 years and 1.2 over 20'
  * no scatter.
  */
 export function compareRun(result: RunResult, observed: ObservedSeries, options: CompareOptions = {}): Comparison {
-  const tides = options.zonalTides ?? 'none'
+  const gravity = observed.from === 'gravity'
+  const tides = gravity ? 'none' : options.zonalTides ?? 'none'
   const series = rowsWhere(observed, i => observed.predicted[i] === 0)
   const { total } = result
   const months = commonMonths(result, series)
@@ -63,10 +64,10 @@ export function compareRun(result: RunResult, observed: ObservedSeries, options:
   if (spanDays > 0 && spanDays < SEASONAL_MINIMUM_DAYS) {
     warn('short-span', 'The common span is shorter than two years: trends are fitted without seasons and may hold part of one.')
   }
-  if (lod && tides === 'none') {
+  if (lod && tides === 'none' && !gravity) {
     warn('tides-in', `Zonal tides are still in the observed length of day; the 18.6-year one alone biases a trend by ${NODAL_BIAS}.`)
   }
-  if (lod) warn('core', 'Decadal changes in length of day come mostly from the Earth’s core; surface mass explains a small part. A small explained share is not an error.')
+  if (lod && !gravity) warn('core', 'Decadal changes in length of day come mostly from the Earth’s core; surface mass explains a small part. A small explained share is not an error.')
   if (lod && result.background.length > 0) {
     warn('background-apart', 'Background rows are not in the model of this comparison; they stand beside it in the budget.')
   }
@@ -80,7 +81,7 @@ export function compareRun(result: RunResult, observed: ObservedSeries, options:
     chi1,
     chi2,
     noise: 'ar1',
-    notRemoved: notRemoved(lod !== null, chi1 !== null, tides),
+    notRemoved: gravity ? notRemovedFromGravity : notRemoved(lod !== null, chi1 !== null, tides),
     warnings
   }
 }
@@ -134,6 +135,10 @@ function quantity(
 function measured(fit: TrendFit, sigma: number): Measured {
   return { value: fit.value, sigmaWhite: fit.sigmaWhite, sigma }
 }
+
+const notRemovedFromGravity = [
+  'mass of atmosphere and ocean, unless the series was made without them', 'glacial isostatic adjustment and other background rates'
+]
 
 function notRemoved(lod: boolean, pole: boolean, tides: 'none' | 'all'): string[] {
   return [

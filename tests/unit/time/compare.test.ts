@@ -90,6 +90,14 @@ describe('what a comparison must not do', () => {
     expect(comparison.chi1!.observed[10]).not.toBeNull()
   })
 
+  it('takes no tide off excitation that comes from gravity, and does not speak of the core there', () => {
+    const seen = { ...world(), from: 'gravity' as const }
+    const comparison = compareRun(run, seen, { zonalTides: 'all' })
+    expect(comparison.lod!.rmsResidual).toBeLessThan(0.01 * 80 * Math.abs(perGt.lodMicroseconds) * 1e-3)
+    expect(comparison.warnings).toEqual([])
+    expect(comparison.notRemoved.join(' ')).not.toContain('core')
+  })
+
   it('gives null for what is not observed, and warns where there is nothing in common', () => {
     const seen = world()
     seen.lodMs.fill(Number.NaN)
