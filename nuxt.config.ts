@@ -50,6 +50,14 @@ export default defineNuxtConfig({
     preset: 'node-server',
     compressPublicAssets: { gzip: true, brotli: false },
     routeRules: {
+      '/**': {
+        headers: {
+          'x-content-type-options': 'nosniff',
+          'referrer-policy': 'same-origin',
+          'cross-origin-opener-policy': 'same-origin',
+          'permissions-policy': 'camera=(), geolocation=(), microphone=()',
+        },
+      },
       '/tiles/**': { headers: { 'cache-control': 'public, max-age=86400' } },
     },
     externals: { external: ['better-sqlite3', 'pdfmake', 'piscina'] },

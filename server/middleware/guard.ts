@@ -5,14 +5,8 @@ import { sendProblem } from '../utils/route'
 const hostOf = (origin: string) => URL.canParse(origin) ? new URL(origin).host : ''
 const safe = new Set(['GET', 'HEAD', 'OPTIONS'])
 
-/** Headers for every answer, and a refusal of writes that another site's page sends with our cookie. */
+/** Headers of the interface's answers, and a refusal of writes that another site's page sends with our cookie. */
 export default defineEventHandler((event) => {
-  setResponseHeaders(event, {
-    'x-content-type-options': 'nosniff',
-    'referrer-policy': 'same-origin',
-    'cross-origin-opener-policy': 'same-origin',
-    'permissions-policy': 'camera=(), geolocation=(), microphone=()',
-  })
   if (event.path.startsWith('/api/')) {
     setResponseHeaders(event, { 'content-security-policy': 'default-src \'none\'; frame-ancestors \'none\'', 'cache-control': 'no-store' })
   }

@@ -27,5 +27,10 @@ export default defineNitroPlugin((nitroApp) => {
     html.bodyPrepend = html.bodyPrepend.map(mark)
     html.bodyAppend = html.bodyAppend.map(mark)
     setResponseHeader(event, 'content-security-policy', policy(nonce, import.meta.dev))
+    // A page holds its nonce and what its reader may see: no cache between may give it to somebody else.
+    setResponseHeader(event, 'cache-control', 'private, no-cache')
+  })
+  nitroApp.hooks.hook('render:response', (response) => {
+    if (response.headers) delete response.headers['x-powered-by']
   })
 })

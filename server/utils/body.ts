@@ -57,7 +57,7 @@ export async function readMultipart(event: H3Event, folder: string, limit: numbe
   let optionsText: string | undefined
   let writing: Promise<void> | undefined
   let cut = false
-  const parser = busboy({ headers: request.headers, limits: { files: 1, fileSize: limit, fields: 10, fieldSize: 1024 * 1024 } })
+  const parser = busboy({ headers: request.headers, defParamCharset: 'utf8', limits: { files: 1, fileSize: limit, fields: 10, fieldSize: 1024 * 1024 } })
   parser.on('file', (part, stream, info) => {
     if (part !== 'file' || upload) return void stream.resume()
     const hash = createHash('sha256')

@@ -142,7 +142,8 @@ async function principalOf(event: H3Event, context: Context): Promise<Principal 
 
 /** The secret inside the sealed cookie; visitors without a cookie are not given one. */
 export async function sessionToken(event: H3Event): Promise<string | null> {
-  if (!getCookie(event, cookieName)) return null
+  // A request with a token is a program's: the cookie of a browser that may be behind it counts for nothing.
+  if (!getCookie(event, cookieName) || getRequestHeader(event, 'authorization')) return null
   const session = await getUserSession(event) as { secure?: { token?: string } }
   return session.secure?.token ?? null
 }
