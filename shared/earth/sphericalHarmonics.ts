@@ -8,6 +8,7 @@ import { coefficientCount, legendreInto, legendreRecursion } from './legendre.ts
  */
 export interface Harmonics { degree: number, cosine: Float64Array, sine: Float64Array }
 
+/** Coefficients up to a degree, all 0. */
 export function emptyHarmonics(degree: number): Harmonics {
   return { degree, cosine: new Float64Array(coefficientCount(degree)), sine: new Float64Array(coefficientCount(degree)) }
 }
@@ -63,6 +64,7 @@ export function gridLongitudes({ columns }: HarmonicGrid): Float64Array {
 /** Scratch of the transforms of one grid: made once, used by one caller. */
 export interface TransformScratch { re: Float64Array, im: Float64Array }
 
+/** Scratch for the transforms of a grid. */
 export function transformScratch({ columns }: HarmonicGrid): TransformScratch {
   return { re: new Float64Array(columns), im: new Float64Array(columns) }
 }

@@ -8,6 +8,7 @@ import { geocentricFromGeodeticDeg, geodeticFromGeocentricDeg, squaredRadiusRati
 import { loveNumbersAt, seaLevelFactors, wahrK } from '../../../shared/earth/loadLoveNumbers.ts'
 import { modelUncertainty } from '../../../shared/earth/modelUncertainty.ts'
 import { observables } from '../../../shared/earth/observables.ts'
+import { responseAtPlace } from '../../../shared/earth/pointResponse.ts'
 import { responseOf } from '../../../shared/earth/response.ts'
 import { oceanModes, type Outline, type PhysicsSettings } from '../../../shared/types/domain.ts'
 import { shippedModel } from '../../reference/earth/shippedModel.ts'
@@ -94,6 +95,18 @@ describe('pole', () => {
     expect(poleDirectionDegEast(-1, 0)).toBe(180)
     expect(poleDirectionDegEast(-1, -0)).toBe(180)
     expect(poleDirectionDegEast(0, -2)).toBe(-90)
+  })
+})
+
+describe('response at a place', () => {
+  it.each(oceanModes)('is that of a tiny outline there, mode %s', (ocean) => {
+    const settings = { ocean, coefficients: 'gross-2007', core: 'decoupled' } as const
+    for (const [lon, lat] of [[-40, 72], [77, 29], [-105, -76], [179.9, -16.5], [12.3, 0.1]] as const) {
+      const h = 0.002
+      const outline = responseOf(contourOf(box(lon - h, lat - h, lon + h, lat + h)), model, settings)
+      const place = responseAtPlace(lon, lat, model, settings)
+      for (const key of ['chi1Mas', 'chi2Mas', 'lodMicroseconds', 'barystaticMm'] as const) expect(Math.abs(place[key] - outline[key])).toBeLessThan(1e-5 * 0.04)
+    }
   })
 })
 
