@@ -1,5 +1,5 @@
 import { mjdFromCalendar } from '../earth/time/epochs.ts'
-import { ObservedColumns, scaledDecimal } from './columns.ts'
+import { ObservedColumns, scaledDecimal, ut1MinusTaiMs } from './columns.ts'
 import type { ParsedObserved } from './columns.ts'
 
 interface Layout {
@@ -7,6 +7,7 @@ interface Layout {
   mjd: number
   x: number
   y: number
+  ut1: number
   lod: number
   sigmaX: number
   sigmaY: number
@@ -19,8 +20,8 @@ interface Layout {
  * Arcseconds and seconds. Source: the header lines of the files, IERS Earth Orientation Centre, Paris Observatory.
  */
 const layouts: Record<'eop14c04' | 'eop20c04', Layout> = {
-  eop14c04: { fields: 16, mjd: 3, x: 4, y: 5, lod: 7, sigmaX: 10, sigmaY: 11, sigmaLod: 13 },
-  eop20c04: { fields: 21, mjd: 4, x: 5, y: 6, lod: 12, sigmaX: 13, sigmaY: 14, sigmaLod: 20 }
+  eop14c04: { fields: 16, mjd: 3, x: 4, y: 5, ut1: 6, lod: 7, sigmaX: 10, sigmaY: 11, sigmaLod: 13 },
+  eop20c04: { fields: 21, mjd: 4, x: 5, y: 6, ut1: 7, lod: 12, sigmaX: 13, sigmaY: 14, sigmaLod: 20 }
 }
 
 const dataLine = /^\s*\d{4}\s+\d{1,2}\s+\d{1,2}\s/
@@ -75,6 +76,7 @@ function readRow(line: string, number: number, layout: Layout, columns: Observed
       yMas: scaledDecimal(fields[layout.y]!, 3),
       sigmaXMas: scaledDecimal(fields[layout.sigmaX]!, 3),
       sigmaYMas: scaledDecimal(fields[layout.sigmaY]!, 3),
+      ut1MinusTaiMs: ut1MinusTaiMs(fields[layout.ut1]!, mjd),
       lodMs: scaledDecimal(fields[layout.lod]!, 3),
       sigmaLodMs: scaledDecimal(fields[layout.sigmaLod]!, 3)
     }, number)

@@ -1,3 +1,4 @@
+import { taiMinusUtcSeconds } from '../earth/time/timeScales.ts'
 import type { Issue } from '../types/issue.ts'
 import type { ObservedSeries } from '../types/run.ts'
 
@@ -11,7 +12,7 @@ export interface ParsedObserved extends ObservedSeries {
 
 export const observedQuantities = ['xMas', 'yMas', 'sigmaXMas', 'sigmaYMas', 'lodMs', 'sigmaLodMs', 'chi1Mas', 'chi2Mas'] as const
 export type ObservedQuantity = typeof observedQuantities[number]
-export type ObservedRow = { mjd: number, predicted?: boolean } & Partial<Record<ObservedQuantity, number>>
+export type ObservedRow = { mjd: number, predicted?: boolean } & Partial<Record<ObservedQuantity | 'ut1MinusTaiMs', number>>
 
 /** Gathers rows in order of the file, refuses epochs that do not increase, and hands out typed columns. */
 export class ObservedColumns {
@@ -42,8 +43,8 @@ export class ObservedColumns {
 
   /** Columns as typed arrays, NaN where a quantity is missing. */
   finish(format: ObservedSeries['format']): ParsedObserved {
-    const column = (name: ObservedQuantity): Float64Array => Float64Array.from(this.rows, row => row[name] ?? Number.NaN)
-    const holds = (name: ObservedQuantity): boolean => this.rows.some(row => row[name] !== undefined && !Number.isNaN(row[name]))
+    const column = (name: ObservedQuantity | 'ut1MinusTaiMs'): Float64Array => Float64Array.from(this.rows, row => row[name] ?? Number.NaN)
+    const holds = (name: ObservedQuantity | 'ut1MinusTaiMs'): boolean => this.rows.some(row => row[name] !== undefined && !Number.isNaN(row[name]))
     return {
       format,
       mjd: Float64Array.from(this.rows, row => row.mjd),
@@ -58,9 +59,15 @@ export class ObservedColumns {
       rowsRead: this.rowsRead,
       issues: this.issues,
       understood: this.understood,
+      ...(holds('ut1MinusTaiMs') ? { ut1MinusTaiMs: column('ut1MinusTaiMs') } : {}),
       ...(holds('chi1Mas') || holds('chi2Mas') ? { chi1Mas: column('chi1Mas'), chi2Mas: column('chi2Mas') } : {})
     }
   }
+}
+
+/** UT1 − TAI in ms from the field of a file that holds UT1 − UTC in seconds: leap seconds and the rates of UTC before 1972 are out. */
+export function ut1MinusTaiMs(field: string, mjdUtc: number): number {
+  return scaledDecimal(field, 3) - taiMinusUtcSeconds(mjdUtc) * 1000
 }
 
 const decimal = /^[+-]?(?:\d+\.?\d*|\.\d+)$/

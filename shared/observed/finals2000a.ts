@@ -1,11 +1,11 @@
 import { calendarFromMjd } from '../earth/time/epochs.ts'
-import { ObservedColumns, scaledDecimal } from './columns.ts'
+import { ObservedColumns, scaledDecimal, ut1MinusTaiMs } from './columns.ts'
 import type { ParsedObserved } from './columns.ts'
 
 /** Fixed columns of finals2000A, 1-based and inclusive. Source: readme.finals2000A, IERS Rapid Service/Prediction Centre. */
 const at = {
   date: [1, 6], mjd: [8, 15], poleFlag: [17, 17], x: [19, 27], sigmaX: [28, 36], y: [38, 46], sigmaY: [47, 55],
-  ut1Flag: [58, 58], lod: [80, 86], sigmaLod: [87, 93]
+  ut1Flag: [58, 58], ut1: [59, 68], lod: [80, 86], sigmaLod: [87, 93]
 } as const
 
 function field(line: string, [from, to]: readonly [number, number]): string {
@@ -60,6 +60,7 @@ function readRow(line: string, number: number, mjd: number, columns: ObservedCol
       sigmaXMas: scaledDecimal(field(line, at.sigmaX), 3),
       yMas: scaledDecimal(field(line, at.y), 3),
       sigmaYMas: scaledDecimal(field(line, at.sigmaY), 3),
+      ut1MinusTaiMs: ut1MinusTaiMs(field(line, at.ut1), mjd),
       lodMs: scaledDecimal(field(line, at.lod), 0),
       sigmaLodMs: scaledDecimal(field(line, at.sigmaLod), 0)
     }, number)

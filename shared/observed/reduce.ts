@@ -1,16 +1,15 @@
 import { isoDateFromMjd, monthsBetween } from '../earth/time/epochs.ts'
 import type { CalendarMonth } from '../earth/time/epochs.ts'
-import { medianStep, monthlyMeans, present } from '../earth/time/monthlyMeans.ts'
-import { COARSE_POLE_DAYS, excitationOfSeries, rowsWhere } from '../earth/time/observedExcitation.ts'
+import { medianStep } from '../earth/time/monthlyMeans.ts'
+import { COARSE_POLE_DAYS, excitationOfSeries } from '../earth/time/observedExcitation.ts'
 import { FILTER_VALID_STEPS } from '../earth/time/polarMotion.ts'
 import { smooth } from '../earth/time/smoothing.ts'
-import { fitTrend } from '../earth/time/trend.ts'
 import { zonalTideLodMs } from '../earth/time/zonalTides.ts'
 import type { Measured } from '../types/domain.ts'
-import { InputError } from '../types/issue.ts'
 import type { ObservedSeries, RunWarning } from '../types/run.ts'
 import { reduceSettings } from './reduceOptions.ts'
 import type { ReduceOptions, ReduceSettings } from './reduceOptions.ts'
+import { monthsOf, rowsInSpan, seasonsOf, trendOf } from './steps.ts'
 
 type Column = (number | null)[]
 
@@ -56,11 +55,7 @@ interface Daily { mjd: ArrayLike<number>, lod: ArrayLike<number>, tide: ArrayLik
  */
 export function reduceObserved(series: ObservedSeries, options: ReduceOptions = {}): ReducedSeries {
   const settings = reduceSettings(options)
-  const kept = rowsWhere(series, i => (settings.includePredictions || series.predicted[i] === 0)
-    && (settings.fromMjd === null || series.mjd[i]! >= settings.fromMjd) && (settings.toMjd === null || series.mjd[i]! <= settings.toMjd))
-  if (kept.mjd.length === 0) {
-    throw new InputError('No row is left to reduce', [{ code: 'no-rows', message: 'The span holds no observed row; predictions are left out unless asked for.' }])
-  }
+  const kept = rowsInSpan(series, settings, settings.includePredictions)
   const tide = settings.zonalTides === 'none' ? new Float64Array(kept.mjd.length) : zonalTideLodMs(kept.mjd, settings.zonalTides)
   const finish = (mjd: ArrayLike<number>, value: ArrayLike<number>): ArrayLike<number> => afterwards(mjd, value, settings)
   const daily: Daily = {
@@ -107,48 +102,24 @@ function afterwards(mjd: ArrayLike<number>, value: ArrayLike<number>, { removeSe
 }
 
 function withoutSeasons(mjd: ArrayLike<number>, value: ArrayLike<number>): ArrayLike<number> {
-  const { epochs, values } = present(mjd, value)
-  if (epochs.length < 10) return value
-  const fit = fitTrend({ mjd: epochs, value: values })
-  if (!fit.seasonal) return value
-  const [constant, trend] = [fit.coefficients[0]!, fit.coefficients[1]!]
-  let at = 0
-  return Float64Array.from(value, v => {
-    if (Number.isNaN(v)) return v
-    const season = fit.model[at]! - constant - trend * (epochs[at]! - fit.referenceMjd) / 365.25
-    at++
-    return v - season
-  })
+  const seasons = seasonsOf(mjd, value)
+  return seasons ? Float64Array.from(value, (v, i) => v - seasons.season[i]!) : value
 }
 
 function monthly(daily: Daily): { columns: Daily, months: CalendarMonth[], lodMonthly: { samples: number[], effectiveSamples: number[] } } {
   const months = monthsBetween(daily.mjd[0]!, daily.mjd[daily.mjd.length - 1]!)
-  const means = (value: ArrayLike<number>): Float64Array => Float64Array.from(monthlyMeans(daily.mjd, value, months).value, v => v ?? Number.NaN)
-  const lodMonthly = monthlyMeans(daily.mjd, daily.reduced, months)
+  const means = (value: ArrayLike<number>): Float64Array => monthsOf(daily.mjd, value, months).value
+  const reduced = monthsOf(daily.mjd, daily.reduced, months)
   return {
-    columns: {
-      mjd: months.map(month => month.middleMjd),
-      lod: means(daily.lod),
-      tide: means(daily.tide),
-      reduced: Float64Array.from(lodMonthly.value, v => v ?? Number.NaN),
-      x: means(daily.x),
-      y: means(daily.y)
-    },
+    columns: { mjd: reduced.mjd, lod: means(daily.lod), tide: means(daily.tide), reduced: reduced.value, x: means(daily.x), y: means(daily.y) },
     months,
-    lodMonthly
+    lodMonthly: reduced
   }
 }
 
-function monthlyChi(chi: { mjd: ArrayLike<number>, chi1: ArrayLike<number>, chi2: ArrayLike<number> }, months: CalendarMonth[]): { mjd: number[], chi1: Float64Array, chi2: Float64Array } {
-  const means = (value: ArrayLike<number>): Float64Array => Float64Array.from(monthlyMeans(chi.mjd, value, months).value, v => v ?? Number.NaN)
-  return { mjd: months.map(month => month.middleMjd), chi1: means(chi.chi1), chi2: means(chi.chi2) }
-}
-
-function trendOf(mjd: ArrayLike<number>, value: ArrayLike<number>): Measured | null {
-  const { epochs, values } = present(mjd, value)
-  if (epochs.length < 3) return null
-  const { value: trend, sigmaWhite, sigma } = fitTrend({ mjd: epochs, value: values })
-  return { value: trend, sigmaWhite, sigma }
+function monthlyChi(chi: { mjd: ArrayLike<number>, chi1: ArrayLike<number>, chi2: ArrayLike<number> }, months: CalendarMonth[]): { mjd: Float64Array, chi1: Float64Array, chi2: Float64Array } {
+  const first = monthsOf(chi.mjd, chi.chi1, months)
+  return { mjd: first.mjd, chi1: first.value, chi2: monthsOf(chi.mjd, chi.chi2, months).value }
 }
 
 function warningsOf(series: ObservedSeries, settings: ReduceSettings, poleStep: number | null): RunWarning[] {

@@ -143,6 +143,8 @@ export interface ObservedSeries {
   /** Rows that hold a date and nothing else. */
   emptyRows: number
   rowsRead: number
+  /** UT1 − TAI, ms; absent where the file has no UT1. */
+  ut1MinusTaiMs?: Float64Array
   /** Excitation that the file holds itself, mas, in place of the pole; absent otherwise. */
   chi1Mas?: Float64Array
   chi2Mas?: Float64Array

@@ -20,6 +20,9 @@ describe('IERS EOP 14 C04', () => {
     // 1962-01-01: -0.012700 0.213000 … 0.0017230 … 0.030000 0.030000 … 0.0014000
     expect([series.mjd[0], series.xMas[0], series.yMas[0], series.lodMs[0]]).toEqual([37665, -12.7, 213, 1.723])
     expect([series.sigmaXMas[0], series.sigmaYMas[0], series.sigmaLodMs[0]]).toEqual([30, 30, 1.4])
+    // UT1−UTC of 1962-01-01, 0.0326338 s, and the 1.845858 s of TAI−UTC that day (IERS, UTC-TAI.history); 37 s in 2022.
+    expect(series.ut1MinusTaiMs![0]!).toBeCloseTo(32.6338 - 1845.858, 6)
+    expect(series.ut1MinusTaiMs![158]! + 37000).toBeCloseTo(-19.2085, 6)
     // 2022-11-29: 0.149881 0.189736 … 0.0000128 … 0.000032 0.000022 … 0.0000071
     expect([series.mjd[158], series.xMas[158], series.yMas[158], series.lodMs[158]]).toEqual([59912, 149.881, 189.736, 0.0128])
     expect([series.sigmaXMas[158], series.sigmaYMas[158], series.sigmaLodMs[158]]).toEqual([0.032, 0.022, 0.0071])
