@@ -14,7 +14,7 @@ export interface RecognisedColumns {
 }
 
 const epochName = /date|epoch|time|mjd|year|month|jahr|datum|fecha/i
-const sigmaName = /sigma|σ|±|\+\/-|err|unc|std|s\.?d\b|1s/i
+const sigmaName = /sigma|σ|±|\+\/-|err|unc|std|fehler|unsich|incert|s\.?d\b|1s/i
 const valueName = /mass|gt\b|gigaton|lwe|tws|ewh|water|storage|value|thick|anomal|mm|cm/i
 /** Rows that a guess looks at. */
 const LOOKED_AT = 100

@@ -50,7 +50,8 @@ export function checkSeries(regions: readonly RunRegionInput[]): void {
     if (![...mjd, ...massGt].every(Number.isFinite)) add('not-finite', 'epochs and masses must be finite numbers.')
     if (mjd.some((t, k) => k > 0 && t <= mjd[k - 1]!)) add('epoch-order', 'epochs must increase.')
     if (sigmaGt?.some(s => !(s > 0) || !Number.isFinite(s))) add('sigma-not-positive', 'one-sigmas must be positive.')
-    if (sharedRates.some(s => !(s.sigmaGtPerYear >= 0) || !Number.isFinite(s.sigmaGtPerYear))) add('sigma-not-positive', 'systematic one-sigmas must not be negative.')
+    // The sign says which way a source moves this series: one that raises a region may lower another.
+    if (sharedRates.some(s => !Number.isFinite(s.sigmaGtPerYear))) add('not-finite', 'systematic one-sigmas must be finite.')
     if (!Number.isFinite(scale)) issues.push({ path: `regions/${i}/scale`, code: 'not-finite', message: `${name}: the factor must be a finite number.` })
   })
   if (issues.length > 0) throw new InputError('Some series cannot be used', issues)
