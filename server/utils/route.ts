@@ -100,7 +100,9 @@ function parse(schemaOf: ZodType | undefined, value: unknown, status: 404 | 422)
   const parsed = schemaOf.safeParse(value ?? {})
   if (parsed.success) return parsed.data
   if (status === 404) throw new Problem(404, 'not-found', 'There is no such thing here.')
-  const issues: Issue[] = parsed.error.issues.map(i => ({ path: i.path.join('/'), code: i.code, message: i.message }))
+  const issues: Issue[] = parsed.error.issues.flatMap(i => i.code === 'unrecognized_keys'
+    ? i.keys.map(key => ({ path: [...i.path, key].join('/'), code: 'unknown', message: 'is not known here' }))
+    : [{ path: i.path.join('/'), code: i.code as string, message: i.message }])
   throw new InputError(`${issues.length === 1 ? 'One thing does' : `${issues.length} things do`} not hold: ${issues[0]?.path || 'body'}: ${issues[0]?.message}`, issues)
 }
 
@@ -153,7 +155,7 @@ export async function giveCookie(event: H3Event, token: string) {
 }
 
 export async function takeCookie(event: H3Event) {
-  if (getCookie(event, cookieName)) await clearUserSession(event, { cookie: { secure: getRequestProtocol(event) === 'https' } })
+  if (getCookie(event, cookieName) && !getRequestHeader(event, 'authorization')) await clearUserSession(event, { cookie: { secure: getRequestProtocol(event) === 'https' } })
 }
 
 /** Content-Disposition of a download, names in any script included (RFC 6266). */

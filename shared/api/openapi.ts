@@ -5,21 +5,27 @@ import { problem } from './schemas.ts'
 
 type Json = Record<string, unknown>
 
-function schemaOf(type: ZodType, io: 'input' | 'output'): Json {
-  const { $schema: _, ...schema } = z.toJSONSchema(type, { io, unrepresentable: 'any', reused: 'inline' }) as Json
-  return schema
+type Components = Record<string, Json>
+
+/** JSON Schema of a zod schema; parts that have a name go to the document's components. */
+function schemaOf(type: ZodType, io: 'input' | 'output', components: Components): Json {
+  const { $schema: _, $defs, ...schema } = z.toJSONSchema(type, { io, unrepresentable: 'any', reused: 'inline' }) as Json & { $defs?: Record<string, Json> }
+  for (const [name, part] of Object.entries($defs ?? {})) components[name] = pointed(part)
+  return pointed(schema)
 }
 
+const pointed = (schema: Json) => JSON.parse(JSON.stringify(schema).replaceAll('"#/$defs/', '"#/components/schemas/')) as Json
+
 /** Properties of an object schema, as OpenAPI parameters. */
-function parameters(type: ZodType | undefined, place: 'path' | 'query'): Json[] {
+function parameters(type: ZodType | undefined, place: 'path' | 'query', components: Components): Json[] {
   if (!type) return []
-  const { properties = {}, required = [] } = schemaOf(type, 'input') as { properties?: Record<string, Json>, required?: string[] }
+  const { properties = {}, required = [] } = schemaOf(type, 'input', components) as { properties?: Record<string, Json>, required?: string[] }
   return Object.entries(properties).map(([name, schema]) => ({ name, in: place, required: place === 'path' || required.includes(name), schema }))
 }
 
-function requestBody(c: Contract): Json | undefined {
+function requestBody(c: Contract, components: Components): Json | undefined {
   if (!c.body) return undefined
-  const schema = schemaOf(c.body, 'input')
+  const schema = schemaOf(c.body, 'input', components)
   if (c.bodyType !== 'multipart') return { required: true, content: { 'application/json': { schema } } }
   return {
     required: true,
@@ -32,7 +38,7 @@ function requestBody(c: Contract): Json | undefined {
   }
 }
 
-function operation(c: Contract): Json {
+function operation(c: Contract, components: Components): Json {
   const type = c.answerType ?? 'application/json'
   const empty = c.status === 204
   const open = c.action === 'public.read'
@@ -40,13 +46,13 @@ function operation(c: Contract): Json {
     operationId: c.id,
     summary: c.summary,
     tags: [c.path.split('/')[3]],
-    parameters: [...parameters(c.params, 'path'), ...parameters(c.query, 'query')],
-    ...(c.body ? { requestBody: requestBody(c) } : {}),
+    parameters: [...parameters(c.params, 'path', components), ...parameters(c.query, 'query', components)],
+    ...(c.body ? { requestBody: requestBody(c, components) } : {}),
     ...(open ? { security: [] } : {}),
     responses: {
       [String(c.status ?? 200)]: empty
         ? { description: 'Done' }
-        : { description: c.summary, content: { [type]: { schema: c.answer && !c.answerType ? schemaOf(c.answer, 'output') : { type: 'string', format: 'binary' } } } },
+        : { description: c.summary, content: { [type]: { schema: c.answer && !c.answerType ? schemaOf(c.answer, 'output', components) : { type: 'string', format: 'binary' } } } },
       default: { description: 'What went wrong, and where', content: { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } } },
     },
     'x-action': c.action,
@@ -56,7 +62,9 @@ function operation(c: Contract): Json {
 /** The interface as an OpenAPI 3.1 document, made from the contracts list and nothing else. */
 export function openApiDocument(): Json {
   const paths: Record<string, Json> = {}
-  for (const c of contractList) (paths[c.path] ??= {})[c.method.toLowerCase()] = operation(c)
+  const schemas: Components = {}
+  schemaOf(problem, 'output', schemas)
+  for (const c of contractList) (paths[c.path] ??= {})[c.method.toLowerCase()] = operation(c, schemas)
   return {
     openapi: '3.1.0',
     info: { title: 'Counterpoise', version: '1', description: 'Regional mass change and what it does to the Earth’s spin and pole. Units and signs stand in every name: Gt, mas, microseconds, mm.' },
@@ -64,7 +72,7 @@ export function openApiDocument(): Json {
     security: [{ session: [] }],
     paths,
     components: {
-      schemas: { Problem: schemaOf(problem, 'output') },
+      schemas,
       securitySchemes: { session: { type: 'apiKey', in: 'cookie', name: 'counterpoise-session' } },
     },
   }
