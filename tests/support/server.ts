@@ -13,7 +13,8 @@ export interface RunningServer {
   pid: number
   /** Everything that the server wrote so far. */
   output: () => string
-  stop: () => Promise<void>
+  /** Ends the server by its process id; its data folder goes too unless it is kept for another start. */
+  stop: (options?: { keepData?: boolean }) => Promise<void>
 }
 
 export async function freePort(): Promise<number> {
@@ -28,10 +29,10 @@ export async function freePort(): Promise<number> {
  * Starts the built server on a free loopback port with a data folder of its own, every answer held to its contract,
  * and waits until it lets requests in.
  */
-export async function startServer(env: Record<string, string> = {}, keepDataDir?: string): Promise<RunningServer> {
+export async function startServer(env: Record<string, string> = {}, givenDataDir?: string): Promise<RunningServer> {
   const entry = join(buildDir, 'server', 'index.mjs')
   if (!existsSync(entry)) throw new Error(`There is no built server at ${entry}: run npm test, or npm run build first.`)
-  const dataDir = keepDataDir ?? mkdtempSync(join(tmpdir(), 'counterpoise-test-'))
+  const dataDir = givenDataDir ?? mkdtempSync(join(tmpdir(), 'counterpoise-test-'))
   const port = await freePort()
   const child = spawn(process.execPath, [entry], {
     env: { PATH: process.env.PATH, NODE_ENV: 'production', PORT: String(port), NUXT_DATA_DIR: dataDir, COUNTERPOISE_CHECK_ANSWERS: '1', ...env },
@@ -44,9 +45,9 @@ export async function startServer(env: Record<string, string> = {}, keepDataDir?
   await ready(url, child, () => output)
   return {
     url, dataDir, pid: child.pid!, output: () => output,
-    stop: async () => {
+    stop: async ({ keepData = false } = {}) => {
       await ended(child)
-      if (!keepDataDir) rmSync(dataDir, { recursive: true, force: true })
+      if (!keepData) rmSync(dataDir, { recursive: true, force: true })
     },
   }
 }
