@@ -17,10 +17,10 @@ interface EvaluateAnswer { settings: Record<string, unknown>, epochs?: unknown[]
 const evaluate = async (body: unknown) => await reader.get('evaluate', { body }) as unknown as EvaluateAnswer
 const one = (massGt: number, geometry: Outline, more: object = {}, settings: object = { ocean: 'uniform' }) => ({ regions: [{ id: 'a', geometry, massGt, ...more }], settings })
 
-// An independent reference implementation in another language; see tests/reference/fixtures/earth/README.md.
+// An independent reference implementation in another language; see shared/validation/data/README.md.
 interface Mode { chi1_mas: number, chi2_mas: number, chi3: number, dLOD_us: number }
 interface Case { id: string, title: string, loads: { mass_Gt: number, geometry: Outline }[], expected: { barystatic_mm: number, scale_chi_mas: number, scale_dLOD_us: number, modes: Record<string, Mode> } }
-const cases = (JSON.parse(readFileSync('tests/reference/fixtures/earth/load-cases.json', 'utf8')) as { cases: Case[] }).cases
+const cases = (JSON.parse(readFileSync('shared/validation/data/loadCases.json', 'utf8')) as { cases: Case[] }).cases
 /** Tolerances in parts of the case's scale: edges joined otherwise; another make of the ocean function; and its degree-256 solution against the fields' degree. */
 const modes = [['none', 'none', 2e-5], ['uniform', 'uniform', 5e-4], ['fingerprint', 'fingerprint', 1e-3], ['fingerprint-rotation', 'fingerprint_rot', 1e-3]] as const
 

@@ -19,9 +19,9 @@ export interface LoadCase {
   }
 }
 
-/** Cases of the independent reference implementation, see ../fixtures/earth/README.md. */
+/** Cases of the independent reference implementation, see shared/validation/data/README.md. */
 export function loadCases(): LoadCase[] {
-  const path = fileURLToPath(new URL('../fixtures/earth/load-cases.json', import.meta.url))
+  const path = fileURLToPath(new URL('../../../shared/validation/data/loadCases.json', import.meta.url))
   return (JSON.parse(readFileSync(path, 'utf8')) as { cases: LoadCase[] }).cases
 }
 

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { weightedLeastSquares } from '../../../shared/earth/time/leastSquares.ts'
-import { longley, norris } from './nistStrd.ts'
+import { longley, norris } from '../../../shared/validation/data/nistStrd.ts'
 
 /** Number of equal significant digits, the measure that NIST uses (log relative error). */
 function digits(value: number, certified: number): number {

@@ -1,7 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { decayTimeDays, defaultChandler, excitationFromPole, filterGain, poleFromExcitation } from '../../../shared/earth/time/polarMotion.ts'
-import reference from '../../fixtures/time-reference.json'
+import reference from '../../../shared/validation/data/timeReference.json'
 
 const { liouville } = reference
 const days = (count: number, step = 1): number[] => Array.from({ length: count }, (_, i) => 50000 + i * step)

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { fitTrend } from '../../../shared/earth/time/trend.ts'
 import { J2000_MJD } from '../../../shared/earth/time/epochs.ts'
-import reference from '../../fixtures/time-reference.json'
+import reference from '../../../shared/validation/data/timeReference.json'
 
 const { stats } = reference
 

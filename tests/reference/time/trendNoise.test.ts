@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { J2000_MJD } from '../../../shared/earth/time/epochs.ts'
 import { fitAr1ByCorrelation, trendNoise } from '../../../shared/earth/time/trendNoise.ts'
-import reference from '../../fixtures/time-reference.json'
+import reference from '../../../shared/validation/data/timeReference.json'
 import { normals } from '../../unit/time/runFixtures.ts'
 
 const months = (count: number): number[] => Array.from({ length: count }, (_, i) => 52000 + i * 30.4375)

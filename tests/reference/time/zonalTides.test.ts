@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { ttCenturies } from '../../../shared/earth/time/timeScales.ts'
 import { zonalTideEffect, zonalTides } from '../../../shared/earth/time/zonalTides.ts'
 import { zonalTideTerms } from '../../../shared/earth/time/zonalTideTerms.ts'
-import reference from '../../fixtures/time-reference.json'
+import reference from '../../../shared/validation/data/timeReference.json'
 
 describe('zonal tides, IERS Conventions (2010), Table 8.1', () => {
   it('give the test value of the Conventions', () => {
