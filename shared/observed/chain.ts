@@ -2,9 +2,8 @@ import { mjdFromIsoDate, monthsBetween } from '../earth/time/epochs.ts'
 import { medianStep, present } from '../earth/time/monthlyMeans.ts'
 import { excitationOfSeries } from '../earth/time/observedExcitation.ts'
 import { smooth } from '../earth/time/smoothing.ts'
-import { ttCenturies } from '../earth/time/timeScales.ts'
 import { fitTrend } from '../earth/time/trend.ts'
-import { zonalTideEffect, zonalTideLodMs, zonalTides } from '../earth/time/zonalTides.ts'
+import { zonalTidesMs } from '../earth/time/zonalTides.ts'
 import { InputError } from '../types/issue.ts'
 import type { ObservedSeries, RunWarning } from '../types/run.ts'
 import { chainConclusions } from './chainConclusions.ts'
@@ -68,17 +67,20 @@ function apply(step: ChainStep, series: ObservedSeries, tracks: Tracks, inputs: 
     case 'excitation': return excite(series, tracks, step)
     case 'angular-momentum': return subtractFluid(tracks, step, inputs.corrections![step.correction]!, series)
     case 'background': return step.rows.length === 0 ? null : { after: {} }
-    case 'seasons': return subtract(tracks, ({ mjd, value }) => seasonsOf(mjd, value)?.season ?? null)
+    case 'seasons': return subtract(tracks, ({ mjd, value }) => {
+      const removed = seasonsOf(mjd, value)?.season
+      return removed ? { removed } : null
+    })
     case 'smoothing': return subtract(tracks, ({ mjd, value }) => {
-      const smoothed = smooth(mjd, value, step.smoothing.kind, step.smoothing.widthDays)
-      return value.map((v, i) => v - smoothed[i]!)
-    }, ({ mjd, value }) => smooth(mjd, value, step.smoothing.kind, step.smoothing.widthDays))
+      const after = smooth(mjd, value, step.smoothing.kind, step.smoothing.widthDays)
+      return { removed: value.map((v, i) => v - after[i]!), after }
+    })
     case 'monthly': return averageMonths(tracks)
     case 'detrend': return subtract(tracks, ({ mjd, value }) => {
       const { epochs, values } = present(mjd, value)
       if (epochs.length < 3) return null
       const fit = fitTrend({ mjd: epochs, value: values })
-      return Float64Array.from(mjd, t => straightPart(fit, t))
+      return { removed: mjd.map(t => straightPart(fit, t)) }
     })
   }
 }
@@ -93,32 +95,33 @@ function tracksOf(series: ObservedSeries): Tracks {
   }))
 }
 
-/** Takes what `find` finds off each reduced quantity; `result` where the difference would not be it to the last digit. */
-function subtract(tracks: Tracks, find: (track: Track) => Float64Array | null, result?: (track: Track) => Float64Array): Done | null {
+/** Takes what `find` finds off each reduced quantity; it may say itself what is left. */
+function subtract(tracks: Tracks, find: (track: Track) => { removed: Float64Array, after?: Float64Array } | null): Done | null {
   const after: Tracks = {}
   const removed: Tracks = {}
   for (const quantity of reducedQuantities) {
     const track = tracks[quantity]
     const part = track && find(track)
     if (!track || !part) continue
-    removed[quantity] = { mjd: track.mjd, value: part }
-    after[quantity] = { mjd: track.mjd, value: result ? result(track) : track.value.map((v, i) => v - part[i]!) }
+    removed[quantity] = { mjd: track.mjd, value: part.removed }
+    after[quantity] = part.after ? { mjd: track.mjd, value: part.after } : less(track, part.removed)
   }
   return Object.keys(after).length > 0 ? { after, removed } : null
 }
 
+function less({ mjd, value }: Track, part: Float64Array): Track {
+  return { mjd, value: value.map((v, i) => v - part[i]!) }
+}
+
 function withoutTides({ lod, ut1 }: Tracks, set: 'all' | 'under-35-days'): Done | null {
-  if (!lod && !ut1) return null
-  const after: Tracks = {}
-  const removed: Tracks = {}
-  const take = (quantity: 'lod' | 'ut1', track: Track, tide: Float64Array): void => {
-    removed[quantity] = { mjd: track.mjd, value: tide }
-    after[quantity] = { mjd: track.mjd, value: track.value.map((v, i) => v - tide[i]!) }
+  const epochs = (lod ?? ut1)?.mjd
+  if (!epochs) return null
+  // Length of day and UT1 stand on the same epochs of the file.
+  const { lodMs, ut1Ms } = zonalTidesMs(epochs, set)
+  return {
+    after: { ...(lod ? { lod: less(lod, lodMs) } : {}), ...(ut1 ? { ut1: less(ut1, ut1Ms) } : {}) },
+    removed: { ...(lod ? { lod: { mjd: epochs, value: lodMs } } : {}), ...(ut1 ? { ut1: { mjd: epochs, value: ut1Ms } } : {}) }
   }
-  if (lod) take('lod', lod, zonalTideLodMs(lod.mjd, set))
-  const terms = zonalTides(set)
-  if (ut1) take('ut1', ut1, ut1.mjd.map(mjd => zonalTideEffect(ttCenturies(mjd), terms).ut1Seconds * 1000))
-  return { after, removed }
 }
 
 function excite(series: ObservedSeries, tracks: Tracks, chandler: { periodDays: number, q: number }): Done | null {
@@ -149,7 +152,7 @@ function subtractFluid(tracks: Tracks, step: Extract<ChainStep, { kind: 'angular
     const values = onEpochs(correction.series, correctionValues(correction, { mass: step.mass, motion }, quantity), track.mjd, widthDays)
     const part = withoutMean(track.mjd, values, !step.trend).removed
     removed[quantity] = { mjd: track.mjd, value: part }
-    after[quantity] = { mjd: track.mjd, value: track.value.map((v, i) => v - part[i]!) }
+    after[quantity] = less(track, part)
   }
   return Object.keys(after).length > 0 && (step.mass || motion) ? { after, removed } : null
 }

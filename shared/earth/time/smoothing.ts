@@ -11,6 +11,12 @@ export function smooth(mjd: ArrayLike<number>, value: ArrayLike<number>, kind: '
   const reach = kind === 'boxcar' ? widthDays / 2 : 1.5 * widthDays
   const weightOf = (distance: number): number => kind === 'boxcar' ? 1 : Math.exp(-4 * Math.LN2 * (distance / widthDays) ** 2)
   const step = n > 1 ? (mjd[n - 1]! - mjd[0]!) / (n - 1) : 1
+  // Distances of a regular series are whole steps: their weights are worked out once.
+  const byStep = Float64Array.from({ length: Math.floor(reach / step) + 2 }, (_, k) => weightOf(k * step))
+  const weightAt = (distance: number): number => {
+    const steps = Math.round(distance / step)
+    return distance === steps * step ? byStep[steps]! : weightOf(distance)
+  }
   let full = 1
   for (let d = step; d <= reach; d += step) full += 2 * weightOf(d)
   const out = new Float64Array(n)
@@ -21,7 +27,7 @@ export function smooth(mjd: ArrayLike<number>, value: ArrayLike<number>, kind: '
     let weights = 0
     for (let k = from; k < n && mjd[k]! <= mjd[i]! + reach; k++) {
       if (Number.isNaN(value[k]!)) continue
-      const weight = weightOf(Math.abs(mjd[k]! - mjd[i]!))
+      const weight = weightAt(Math.abs(mjd[k]! - mjd[i]!))
       sum += weight * value[k]!
       weights += weight
     }

@@ -56,8 +56,20 @@ export function zonalTideEffect(t: number, terms: readonly ZonalTideTerm[] = zon
   return { ut1Seconds: ut1 * 1e-4, lodSeconds: lod * 1e-5, omegaRadPerSecond: rate * 1e-14 }
 }
 
+/** Effect of the zonal tides on the length of day and on UT1, both in ms, at epochs in MJD (UTC). */
+export function zonalTidesMs(mjdUtc: ArrayLike<number>, set: ZonalTideSet = 'all'): { lodMs: Float64Array, ut1Ms: Float64Array } {
+  const terms = zonalTides(set)
+  const lodMs = new Float64Array(mjdUtc.length)
+  const ut1Ms = new Float64Array(mjdUtc.length)
+  for (let i = 0; i < mjdUtc.length; i++) {
+    const effect = zonalTideEffect(ttCenturies(mjdUtc[i]!), terms)
+    lodMs[i] = effect.lodSeconds * 1000
+    ut1Ms[i] = effect.ut1Seconds * 1000
+  }
+  return { lodMs, ut1Ms }
+}
+
 /** Effect of the zonal tides on the length of day in ms, at epochs in MJD (UTC). */
 export function zonalTideLodMs(mjdUtc: ArrayLike<number>, set: ZonalTideSet = 'all'): Float64Array {
-  const terms = zonalTides(set)
-  return Float64Array.from(mjdUtc, mjd => zonalTideEffect(ttCenturies(mjd), terms).lodSeconds * 1000)
+  return zonalTidesMs(mjdUtc, set).lodMs
 }
