@@ -22,7 +22,7 @@ describe('openapi.json', () => {
   it('is valid OpenAPI 3.1', async () => {
     expect(document.openapi).toMatch(/^3\.1\.\d$/)
     const { Validator } = await import('@seriousme/openapi-schema-validator')
-    const { valid, errors } = await new Validator().validate(text)
+    const { valid, errors } = await new Validator().validate(JSON.parse(text) as Record<string, unknown>)
     expect(errors ?? []).toEqual([])
     expect(valid).toBe(true)
   })
