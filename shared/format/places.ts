@@ -41,6 +41,7 @@ export function formatDirection(direction: { value: number, sigma: number | null
   const digits = sigma > 0 && sigma < 0.95 ? 1 : 0
   const [degrees, side] = formatLongitude(value, digits).split('\u00a0') as [string, string?]
   const error = formatNumber(sigma, digits)
-  const shown = /[1-9]/.test(error) ? `±\u00a0${error}°` : `±\u00a0<\u202f${digits === 1 ? '0.1' : '1'}°`
+  // A direction that is fixed by the outline alone has no error that its digits could show.
+  const shown = /[1-9]/.test(error) ? `±\u00a0${error}°` : ''
   return [degrees, shown, side].filter(Boolean).join('\u00a0')
 }

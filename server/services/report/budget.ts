@@ -1,7 +1,7 @@
 import { print } from '#shared/design/tokens'
 import { budgetColumns, budgetTable } from '#shared/figures/budget/table'
 import { textWidth } from '#shared/figures/textWidth'
-import { hairlines, headRow, size } from './style'
+import { hairlines, headRow, size, together } from './style'
 import type { AlignedText } from '#shared/figures/budget/aligned'
 import type { BudgetTableRow } from '#shared/figures/budget/table'
 import type { Block, ReportData } from './types'
@@ -27,6 +27,9 @@ function cellOf(row: BudgetTableRow, i: number): Block {
     noWrap: true,
   }
 }
+
+/** A budget of this many rows stands on one page. */
+const mostUnbroken = 24
 
 const figureSize = size.table - 0.5
 
@@ -56,14 +59,15 @@ export function reportBudget({ result, comparison }: ReportData, title: Block): 
   ].map(cell => ({ ...cell, bold: row.kind === 'model' })))
   // A rule above each group, and one below the table.
   const groups = rows.flatMap(({ kind }, i) => i > 0 && groupOf(kind) !== groupOf(rows[i - 1]!.kind) ? [i + 2] : [])
-  return {
+  const table: Block = {
     table: {
       headerRows: 2, keepWithHeaderRows: 1, dontBreakRows: true, widths: ['*', ...columnWidths(rows)],
       body: [headRow(title, columns.length), columns, ...body],
     },
-    layout: { ...hairlines([2, ...groups, rows.length + 2], [0, 1]), paddingLeft: (i: number) => i === 0 ? 0 : 6 },
+    layout: { ...hairlines([2, ...groups, rows.length + 2], [0, 1]), paddingLeft: (i: number) => i === 0 ? 0 : 4.5 },
     fontSize: figureSize,
   }
+  return rows.length <= mostUnbroken ? together(table) : table
 }
 
 function groupOf(kind: BudgetTableRow['kind']): string {

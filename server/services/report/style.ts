@@ -2,7 +2,7 @@ import { print } from '#shared/design/tokens'
 import type { Block } from './types'
 
 /** A4 in points; what stands between the margins. */
-export const page = { margin: { left: 52, top: 58, right: 52, bottom: 54 }, contentWidth: 595.28 - 104 } as const
+export const page = { margin: { left: 46, top: 58, right: 46, bottom: 54 }, contentWidth: 595.28 - 92 } as const
 
 export const size = { body: 9.5, small: 8, table: 7.5, tiny: 6.5, head: 19 } as const
 

@@ -60,9 +60,12 @@ function measuredOf(row: BudgetRow): Record<MeasuredColumn, Measured | null> {
   }
 }
 
-/** Decimals of each column: one more than its sum deserves, so that small rows do not run on for ever. */
+/** Decimals of each column: one more than its sum deserves, but not more than three for that, so that small rows do not run on. */
 function decimalsOf(total: BudgetRow): Record<MeasuredColumn, number> {
-  const deserved = (measured: Measured | null) => measured ? measuredDecimals(measured.value, measured.sigma) + 1 : 3
+  const deserved = (measured: Measured | null) => {
+    const own = measured ? measuredDecimals(measured.value, measured.sigma) : 2
+    return Math.max(own, Math.min(own + 1, 3))
+  }
   const { mass, lod, lodCentury, chi1, chi2, drift } = measuredOf(total)
   const pole = Math.max(deserved(chi1), deserved(chi2))
   return { mass: deserved(mass), lod: deserved(lod), lodCentury: deserved(lodCentury), chi1: pole, chi2: pole, drift: deserved(drift) }

@@ -13,7 +13,7 @@ import type { GeoPermissibleObjects } from 'd3-geo'
 import type { MultiPolygon as GeoMultiPolygon } from 'geojson'
 import type { Outline } from '../../types/domain.ts'
 import type { FigureOptions } from '../options.ts'
-import type { Box, Figure } from '../svg.ts'
+import type { Box, Figure, Point } from '../svg.ts'
 import type { MapView } from './view.ts'
 
 export interface MapRegion {
@@ -59,7 +59,7 @@ export function mapFigure(data: MapData, options: FigureOptions): Figure {
     return box ? [{ region, geometry: geometries[i]!, view, box }] : []
   })
   const bottom = drawNames(canvas, shapes, arrow, height, width)
-  const key = drawKey(canvas, data.regions, bottom, width, options.id)
+  const key = drawKey(canvas, data.regions, drift, bottom, { width, id: options.id })
   return canvas.figure(width, Math.ceil(key), 'Map of the regions', describe(data.regions), hatch(`${options.id}-loss`, palette.loss, { pitch: 4, stroke: 1 }))
 }
 
@@ -119,20 +119,29 @@ function touchesInset(view: MapView, geometry: GeoMultiPolygon): boolean {
   return geometry.coordinates.some(rings => rings[0]!.some(point => geoDistance([point[0]!, point[1]!], pole) < 41 * Math.PI / 180))
 }
 
-function drawDrift(canvas: Canvas, view: MapView, degrees: number): Box[] {
+function drawArrow(canvas: Canvas, [x0, y0]: Point, [x, y]: Point): void {
   const { palette } = canvas
+  const length = Math.hypot(x - x0, y - y0)
+  const [dx, dy] = [(x - x0) / length, (y - y0) / length]
+  canvas.line(x0, y0, x - dx * 6, y - dy * 6, palette.model, { 'stroke-width': 2.5 })
+  canvas.path(pathThrough([[x, y], [x - dx * 10 - dy * 4.5, y - dy * 10 + dx * 4.5], [x - dx * 10 + dy * 4.5, y - dy * 10 - dx * 4.5]], true), { fill: palette.model })
+}
+
+function drawDrift(canvas: Canvas, view: MapView, degrees: number): Box[] {
   const { cx, cy, r } = circleOf(view)
   const angle = degrees * Math.PI / 180
   const [dx, dy] = [Math.cos(angle), -Math.sin(angle)]
   const [x, y] = [cx + dx * r * 0.5, cy + dy * r * 0.5]
-  canvas.line(cx, cy, x - dx * 6, y - dy * 6, palette.model, { 'stroke-width': 2.5 })
-  canvas.path(pathThrough([[x, y], [x - dx * 10 - dy * 4.5, y - dy * 10 + dx * 4.5], [x - dx * 10 + dy * 4.5, y - dy * 10 - dx * 4.5]], true), { fill: palette.model })
-  const text = `pole to ${formatLongitude(degrees)}`
-  const anchor = dx >= 0 ? 'start' : 'end'
-  const room = textWidth(text, 12, 600)
-  const at = anchor === 'start' ? Math.min(x + dx * 5, view.box.x + view.box.width - room) : Math.max(x + dx * 5, view.box.x + room)
-  const label = canvas.text(text, at, y + dy * 10 + 4, { weight: 600, fill: palette.model, anchor, halo: palette.sea })
-  return [label, { x: Math.min(cx, x), y: Math.min(cy, y), width: Math.abs(x - cx), height: Math.abs(y - cy) }]
+  drawArrow(canvas, [cx, cy], [x, y])
+  // Names keep off the arrow, which is told by the key.
+  return [0.2, 0.5, 0.8].map(part => ({ x: cx + (x - cx) * part - 5, y: cy + (y - cy) * part - 5, width: 10, height: 10 }))
+}
+
+/** Where names of a view may stand: round a polar inset also on the free ground beside it. */
+function frameOf({ kind, box }: MapView, width: number): Box {
+  if (kind === 'world') return { ...box, x: 0 }
+  const [left, right] = [Math.max(0, box.x - 60), Math.min(width, box.x + box.width + 60)]
+  return { x: left, y: box.y, width: right - left, height: box.height }
 }
 
 function drawNames(canvas: Canvas, shapes: readonly Shape[], arrow: Box[] | null, height: number, width: number): number {
@@ -140,7 +149,7 @@ function drawNames(canvas: Canvas, shapes: readonly Shape[], arrow: Box[] | null
   const names = shapes.map(({ region, view, box }) => ({
     text: shortened(region.name, Math.min(220, view.box.width * (view.kind === 'world' ? 0.75 : 0.95)), 12),
     box,
-    frame: view.kind === 'world' ? { x: 0, y: view.box.y, width: view.box.width, height: view.box.height } : view.box,
+    frame: frameOf(view, width),
   }))
   const placed = placeNames(names, arrow ?? [])
   placed.forEach((place, i) => {
@@ -156,20 +165,26 @@ function drawNames(canvas: Canvas, shapes: readonly Shape[], arrow: Box[] | null
   return height + missing.length * 20 + (missing.length ? 4 : 0)
 }
 
-function drawKey(canvas: Canvas, regions: readonly MapRegion[], top: number, width: number, id: string): number {
+function drawKey(canvas: Canvas, regions: readonly MapRegion[], drift: number | null, top: number, { width, id }: { width: number, id: string }): number {
   const { palette } = canvas
   const entries = [
-    regions.some(region => (region.massGtPerYear ?? 0) < 0) ? { text: 'mass lost', colour: palette.loss, lost: true } : null,
-    regions.some(region => (region.massGtPerYear ?? 0) > 0) ? { text: 'mass gained', colour: palette.gain, lost: false } : null,
+    regions.some(region => (region.massGtPerYear ?? 0) < 0) ? { text: 'mass lost', mark: 'loss' as const } : null,
+    regions.some(region => (region.massGtPerYear ?? 0) > 0) ? { text: 'mass gained', mark: 'gain' as const } : null,
+    drift === null ? null : { text: `drift of the pole, to ${formatLongitude(drift)}`, mark: 'drift' as const },
   ].filter(entry => entry !== null)
-  let x = 2
-  const base = top + 20
-  for (const { text, colour, lost } of entries) {
+  let [x, base] = [2, top + 20]
+  for (const { text, mark } of entries) {
+    const needed = 22 + textWidth(text, 12)
+    if (x > 2 && x + needed > width) [x, base] = [2, base + 20]
     const box = { x, y: base - 10, width: 16, height: 11 }
-    canvas.rect(box, { 'fill': colour, 'fill-opacity': lost ? 0.25 : 0.4 })
-    canvas.rect(box, { fill: lost ? `url(#${id}-loss)` : 'none', stroke: colour })
+    if (mark === 'drift') drawArrow(canvas, [x, base - 4], [x + 17, base - 4])
+    else {
+      const colour = palette[mark]
+      canvas.rect(box, { 'fill': colour, 'fill-opacity': mark === 'loss' ? 0.25 : 0.4 })
+      canvas.rect(box, { fill: mark === 'loss' ? `url(#${id}-loss)` : 'none', stroke: colour })
+    }
     canvas.text(text, x + 22, base, { fill: palette.soft })
-    x += 22 + textWidth(text, 12) + 18
+    x += needed + 18
   }
   const source = 'Equal-area. Coast: Natural Earth'
   if (x + textWidth(source, 11) < width) canvas.text(source, width, base, { size: 11, anchor: 'end', fill: palette.soft })

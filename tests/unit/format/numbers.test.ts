@@ -93,6 +93,7 @@ describe('places', () => {
     expect(formatDirection({ value: -30.2, sigma: 4.6 })).toBe(`30°${hard}±${hard}5°${hard}W`)
     expect(formatDirection({ value: 64.16, sigma: 0.43 })).toBe(`64.2°${hard}±${hard}0.4°${hard}E`)
     expect(formatDirection({ value: 179.9, sigma: 4 })).toBe(`180°${hard}±${hard}4°`)
+    expect(formatDirection({ value: -36.52, sigma: 0.004 })).toBe(`36.5°${hard}W`)
     expect(formatDirection({ value: 10, sigma: null })).toBe(`10°${hard}E`)
     expect(formatDirection({ value: 10, sigma: 95 })).toBe('no settled direction')
     expect(formatDirection(null)).toBe('no direction')
