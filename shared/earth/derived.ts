@@ -4,7 +4,7 @@ import type { Contour } from './contour.ts'
 import type { EarthModel } from './earthModel.ts'
 import { deltaJ2Of, inertiaOf, rigidStokesOf, yieldedStokesOf } from './inertia.ts'
 import { loveNumbersAt } from './loadLoveNumbers.ts'
-import { netMoments } from './netMoments.ts'
+import { netMoments, type NetMoments } from './netMoments.ts'
 
 /** What one gigatonne gained by a region does to the gravity field and to the centre of mass. */
 export interface DerivedPerGt {
@@ -32,7 +32,11 @@ export function geocentreFactor(): number {
 
 /** Derived quantities of an outline per gigatonne gained. Throws as `responseOf`. */
 export function derivedOf(contour: Contour, model: EarthModel, mode: OceanMode): DerivedPerGt {
-  const net = netMoments(contour, model, mode)
+  return derivedOfMoments(netMoments(contour, model, mode), mode)
+}
+
+/** The same from moments of region and sea together, per gigatonne. */
+export function derivedOfMoments(net: NetMoments, mode: OceanMode): DerivedPerGt {
   const cos2 = (2 / 3) * (net.mass - net.p2)
   const stokes = yieldedStokesOf(rigidStokesOf(inertiaOf(KG_PER_GT, { xz: net.xz, yz: net.yz, cos2 }), net.mass * KG_PER_GT))
   const shift = geocentreFactor() * EARTH_RADIUS_M * 1000 * KG_PER_GT / EARTH_MASS_KG

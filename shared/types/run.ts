@@ -40,6 +40,12 @@ export interface RunRegionInput {
   series: MassSeries
   /** Factor on the mass; 0 switches the region off and keeps its row. */
   scale: number
+  /** Part of the mass change that reaches the sea, 0 to 1; the rest is kept on land as `restTo` says. Absent: 1. */
+  fractionToOcean?: number
+  /** Key of the region that the rest goes to; null or absent: evenly to land elsewhere. */
+  restTo?: string | null
+  /** Part of an ice region's mass change that is grounded above flotation and so changes a load, 0 to 1. Absent: 1. */
+  groundedFraction?: number
 }
 
 /** A rate that is not from a region: tidal braking, isostatic adjustment, … */
@@ -76,7 +82,22 @@ export interface BudgetRow {
   shareOfModelPole: number | null
 }
 
+/** Rates of the gravity field and of the centre of mass; radius 6 371 000 m, fully normalised, with the yielding of the Earth. */
+export interface DerivedRates {
+  deltaC21PerYear: Measured
+  deltaS21PerYear: Measured
+  /** CM − CF towards Greenwich, 90° E and the north pole; null in the mode `none`. */
+  geocentreMmPerYear: { x: Measured, y: Measured, z: Measured } | null
+}
+
+/** One choice of the model and how much another choice would change the sum's rates; never added to the data's errors. */
+export interface ModelUncertaintyRate { id: string, name: string, text: string, chi1MasPerYear: number, chi2MasPerYear: number, lodMicrosecondsPerYear: number }
+
 export interface RunRegionResult extends BudgetRow {
+  /** Absent in runs of earlier engines. */
+  derived?: DerivedRates
+  /** Key of the region whose water this row keeps on land; the row is no region of its own. */
+  keptFrom?: string
   kind: RegionKind
   agency: string
   areaKm2: number
@@ -117,7 +138,9 @@ export interface RunResult {
   epochsMjd: number[]
   regions: RunRegionResult[]
   /** Sum over regions, background left out. */
-  total: BudgetRow & { series: RunTotalSeries }
+  total: BudgetRow & { series: RunTotalSeries, derived?: DerivedRates }
+  /** Absent in runs of earlier engines. */
+  modelUncertainty?: ModelUncertaintyRate[]
   background: BudgetRow[]
   restOfWorld: BudgetRow
   overlaps: RegionOverlap[]

@@ -16,19 +16,27 @@ export interface MassRates {
   white: Covariance
 }
 
+/** What one gigatonne of a series does, and how much of it the row counts: less than 1 where water is kept on land. */
+export interface EffectPerGt extends ResponsePerGt { massGt: number }
+
+/** A linear functional of the mass rates with both errors. */
+export function functional(rates: MassRates, weights: ArrayLike<number>): Measured {
+  return {
+    value: dot(weights, rates.value),
+    sigmaWhite: Math.sqrt(varianceOfFunctional(rates.white, weights)),
+    sigma: Math.sqrt(varianceOfFunctional(rates.quoted, weights))
+  }
+}
+
 interface DriftCovariance { c11: number, c12: number, c22: number }
 
 /**
  * Budget row of the sum of n regions: every quantity is a linear functional of the mass rates, its weights the responses per
  * gigatonne gained. Variances are exact: a region's χ₁ and χ₂ are fully correlated, a shared source adds with its sign.
  */
-export function budgetRow(key: string, name: string, rates: MassRates, responses: readonly ResponsePerGt[]): BudgetRow {
-  const weightsOf = (pick: (response: ResponsePerGt) => number): Float64Array => Float64Array.from(responses, pick)
-  const measure = (weights: ArrayLike<number>): Measured => ({
-    value: dot(weights, rates.value),
-    sigmaWhite: Math.sqrt(varianceOfFunctional(rates.white, weights)),
-    sigma: Math.sqrt(varianceOfFunctional(rates.quoted, weights))
-  })
+export function budgetRow(key: string, name: string, rates: MassRates, responses: readonly EffectPerGt[]): BudgetRow {
+  const weightsOf = (pick: (response: EffectPerGt) => number): Float64Array => Float64Array.from(responses, pick)
+  const measure = (weights: ArrayLike<number>): Measured => functional(rates, weights)
   const chi1 = weightsOf(r => r.chi1Mas)
   const chi2 = weightsOf(r => r.chi2Mas)
   const drift = (covariance: Covariance): DriftCovariance => ({
@@ -42,7 +50,7 @@ export function budgetRow(key: string, name: string, rates: MassRates, responses
   return {
     key,
     name,
-    massGtPerYear: measure(weightsOf(() => 1)),
+    massGtPerYear: measure(weightsOf(r => r.massGt)),
     lodMicrosecondsPerYear: lod,
     lodMsPerCentury: scaled(lod, MS_PER_CENTURY),
     chi1MasPerYear: chi1Rate,

@@ -7,22 +7,30 @@ import type { EarthModel } from '../earthModel.ts'
 import { responseOf } from '../response.ts'
 import type { ResponsePerGt } from '../response.ts'
 import { budgetRow, emptyRow, enteredRow, sharesOf } from './budget.ts'
-import type { MassRates } from './budget.ts'
+import type { EffectPerGt, MassRates } from './budget.ts'
 import { covarianceOf } from './covariance.ts'
 import type { CalendarMonth } from './epochs.ts'
 import { JULIAN_YEAR_DAYS } from './epochs.ts'
 import { monthlyAnomalies, monthlyWeights } from './monthly.ts'
 import type { MonthlyAnomalies } from './monthly.ts'
+import { keptOnLand, netEffect, ownEffect } from './keptOnLand.ts'
+import type { KeptOnLand } from './keptOnLand.ts'
+import { derivedRates, modelUncertaintyRates } from './runDerived.ts'
 import { runWarnings } from './runWarnings.ts'
 import { LEAST_EPOCHS, checkSeries, spanOf } from './span.ts'
 import type { Span } from './span.ts'
 import { fitTrend } from './trend.ts'
 import type { TrendFit } from './trend.ts'
 
-interface FittedRegion {
+export interface FittedRegion {
+  /** As it was sent, with the grounded part already in its factor. */
   region: RunRegionInput
+  /** The factor as it was sent. */
+  scale: number
   contour: Contour
   response: ResponsePerGt
+  /** The part that is kept on land; null where all of it reaches the sea. */
+  kept: KeptOnLand | null
   fit: TrendFit | null
   monthly: MonthlyAnomalies
   epochsUsed: number
@@ -45,11 +53,13 @@ export function computeRun(input: RunInput, model: EarthModel): RunResult {
   const { span, months } = spanOf(input.regions, input.settings)
   checkEpochs(input.regions, span)
 
-  const fitted = input.regions.map(region => fitRegion(region, input.settings, model, span, months))
-  const total = budgetRow('total', 'Sum of the regions', ratesOf(fitted), fitted.map(f => f.response))
-  const regions = fitted.map((f) => {
-    const row = budgetRow(f.region.key, f.region.name, ratesOf([f]), [f.response])
-    return { ...regionResult(f, row, months), ...sharesOf(row, total) }
+  const fitted = keptOnLand(input.regions.map(region => fitRegion(region, input.settings, model, span, months)), input.settings, model)
+  const rates = ratesOf(fitted)
+  const total = budgetRow('total', 'Sum of the regions', rates, fitted.map(netEffect))
+  const regions = fitted.flatMap((f) => {
+    const row = budgetRow(f.region.key, f.region.name, ratesOf([f]), [ownEffect(f)])
+    const own = { ...regionResult(f, row, months), derived: derivedRates([{ ...f, kept: null }], ratesOf([f]), input.settings.ocean, model), ...sharesOf(row, total) }
+    return f.kept ? [own, keptResult(f, f.kept, total, months)] : [own]
   })
   return {
     schemaVersion: 1,
@@ -59,7 +69,8 @@ export function computeRun(input: RunInput, model: EarthModel): RunResult {
     span,
     epochsMjd: months.map(month => month.middleMjd),
     regions,
-    total: { ...total, series: totalSeries(fitted.filter(f => f.region.scale !== 0), months) },
+    total: { ...total, derived: derivedRates(fitted, rates, input.settings.ocean, model), series: totalSeries(fitted.filter(f => f.region.scale !== 0), months) },
+    modelUncertainty: modelUncertaintyRates(fitted, rates, input.settings, model),
     background: input.background.map(enteredRow),
     restOfWorld: input.restOfWorld ? enteredRow(input.restOfWorld) : emptyRow('rest-of-world', 'Rest of the world, not in this account'),
     overlaps,
@@ -77,7 +88,8 @@ function checkEpochs(regions: readonly RunRegionInput[], span: Span): void {
   if (issues.length > 0) throw new InputError('Some series have too few epochs inside the span', issues)
 }
 
-function fitRegion(region: RunRegionInput, settings: RunInput['settings'], model: EarthModel, span: Span, months: readonly CalendarMonth[]): FittedRegion {
+function fitRegion(sent: RunRegionInput, settings: RunInput['settings'], model: EarthModel, span: Span, months: readonly CalendarMonth[]): FittedRegion {
+  const region = { ...sent, scale: sent.scale * (sent.groundedFraction ?? 1) }
   const { series } = region
   const inside = series.mjd.map((t, i) => t >= span.fromMjd && t <= span.toMjd ? i : -1).filter(i => i >= 0)
   const mjd = inside.map(i => series.mjd[i]!)
@@ -88,8 +100,10 @@ function fitRegion(region: RunRegionInput, settings: RunInput['settings'], model
   const contour = contourOf(region.geometry)
   return {
     region,
+    scale: sent.scale,
     contour,
     response: responseOf(contour, model, settings),
+    kept: null,
     fit,
     monthly: monthlyAnomalies(monthlyWeights(mjd, months, settings.maxGapDays), months, value, sigma),
     epochsUsed: mjd.length
@@ -121,7 +135,7 @@ function regionResult(f: FittedRegion, row: BudgetRow, months: readonly Calendar
     agency: region.agency,
     areaKm2: contour.areaM2 / 1e6,
     centroid: contour.centroid,
-    scale: region.scale,
+    scale: f.scale,
     perGt: { ...f.response },
     massGt: monthly.value.map(value => value === null ? null : region.scale * value + 0),
     sigmaMassGt: monthly.variance.map((variance, j) => {
@@ -132,6 +146,20 @@ function regionResult(f: FittedRegion, row: BudgetRow, months: readonly Calendar
     epochsUsed: f.epochsUsed,
     coverage: monthly.coverage,
     trendNoise: { r1: f.fit?.r1 ?? 0, seasonal: f.fit?.seasonal ?? false }
+  }
+}
+
+/** The row of what a region's water does where it is kept on land: of opposite sign, and fully correlated with the region's own. */
+function keptResult(f: FittedRegion, { effect, target }: KeptOnLand, total: BudgetRow, months: readonly CalendarMonth[]): RunRegionResult {
+  const name = target ? `Kept on land: ${f.region.name} to ${target.name}` : `Kept on land elsewhere: from ${f.region.name}`
+  const row = budgetRow(`${f.region.key}-kept`, name, ratesOf([f]), [effect])
+  const own = regionResult(f, row, months)
+  const { massGt: factor, ...perGt } = effect
+  return {
+    ...own, ...sharesOf(row, total), keptFrom: f.region.key, perGt,
+    areaKm2: target ? target.contour.areaM2 / 1e6 : 0, centroid: target ? target.contour.centroid : [0, 0],
+    massGt: own.massGt.map(mass => mass === null ? null : factor * mass + 0),
+    sigmaMassGt: own.sigmaMassGt.map(sigma => sigma === null ? null : Math.abs(factor) * sigma)
   }
 }
 
@@ -147,7 +175,8 @@ function totalSeries(active: readonly FittedRegion[], months: readonly CalendarM
   const sources = active.map(f => sourcesOf(f.region))
   const names = [...new Set(sources.flat().map(s => s.source))]
   const sourceIndex = sources.map(list => list.map(({ source, rate }) => ({ at: names.indexOf(source), rate })))
-  const sum = (pick: (response: ResponsePerGt) => number): { value: (number | null)[], sigma: (number | null)[] } => {
+  const effects = active.map(netEffect)
+  const sum = (pick: (effect: EffectPerGt) => number): { value: (number | null)[], sigma: (number | null)[] } => {
     const value: (number | null)[] = []
     const sigma: (number | null)[] = []
     months.forEach((month, j) => {
@@ -155,14 +184,14 @@ function totalSeries(active: readonly FittedRegion[], months: readonly CalendarM
       let variance = 0
       const systematic = new Float64Array(names.length)
       for (let i = 0; i < active.length; i++) {
-        const { region, response, monthly } = active[i]!
+        const { region, monthly } = active[i]!
         const mass = monthly.value[j] ?? null
         if (mass === null) {
           value.push(null)
           sigma.push(null)
           return
         }
-        const weight = region.scale * pick(response)
+        const weight = region.scale * pick(effects[i]!)
         total += weight * mass
         variance += weight ** 2 * monthly.variance[j]!
         const years = (month.middleMjd - monthly.meanMjd) / JULIAN_YEAR_DAYS
@@ -174,7 +203,7 @@ function totalSeries(active: readonly FittedRegion[], months: readonly CalendarM
     })
     return { value, sigma }
   }
-  const mass = sum(() => 1)
+  const mass = sum(r => r.massGt)
   const lod = sum(r => r.lodMicroseconds)
   const chi1 = sum(r => r.chi1Mas)
   const chi2 = sum(r => r.chi2Mas)
