@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { epochFormats } from '../series/epochColumn.ts'
 import { oceanModes } from '../types/domain.ts'
 import { contract, type Contract } from './contract.ts'
 import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
@@ -16,6 +17,19 @@ const nothing = z.void()
 const editionPath = z.object({ slug: z.string().max(80), n: z.coerce.number().int().min(1) })
 const bytes = z.unknown()
 
+const seaLevelQuery = z.object({
+  /** Rotational feedback, on by default for maps of the sea. */
+  feedback: z.enum(['true', 'false']).default('true').transform(text => text === 'true'),
+  step: z.enum(['1', '2', '3', '5']).default('2').transform(Number),
+  /** Places as latitude,longitude;latitude,longitude. */
+  at: z.string().max(2000).optional(),
+})
+const seaLevelAnswer = z.object({
+  unit: z.enum(['mm per year', 'mm per 100 Gt lost']), feedback: z.boolean(), degree: z.int(), barystaticMm: z.number(), stepDeg: z.number(),
+  latitudesDeg: z.array(z.number()), longitudesDeg: z.array(z.number()), seaLevelMm: z.array(z.number()), sea: z.array(z.number()),
+  places: z.array(z.object({ latitudeDeg: z.number(), longitudeDeg: z.number(), seaLevelMm: z.number(), relative: z.number().nullable() })),
+})
+
 const password = z.string().min(10, 'must have at least 10 characters').max(200)
 const versionFacts = z.object({
   name, reason: prose.default(''), source: prose, licence: prose.default(''), independence: prose.default(''),
@@ -25,7 +39,7 @@ const columnIndex = z.int().min(0)
 const observedOptions = versionFacts.extend({
   /** For a table (CSV): which column is what. Left out, columns are recognised by name. */
   csv: z.object({
-    epochColumn: columnIndex.optional(), epochFormat: z.enum(['iso-date', 'year-month', 'decimal-year', 'mjd']).optional(),
+    epochColumn: columnIndex.optional(), epochFormat: z.enum(epochFormats).optional(),
     columns: z.object({
       xMas: columnIndex, yMas: columnIndex, lodMs: columnIndex, sigmaXMas: columnIndex, sigmaYMas: columnIndex, sigmaLodMs: columnIndex, chi1Mas: columnIndex, chi2Mas: columnIndex,
     }).partial().optional(),
@@ -217,6 +231,19 @@ export const contracts = {
     id: 'runFile', method: 'GET', path: '/api/v1/runs/{id}/files/{file}', action: 'report.export', summary: 'Report and data of a run: report.pdf, budget.csv, series.csv, regions.geojson, run.json',
     params: z.object({ id: ulid, file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'run.json']) }),
     query: z.object({ observed: ulid.optional(), zonalTides: z.enum(['none', 'all']).default('none') }), answer: bytes, answerType: 'application/octet-stream',
+  }),
+
+  runSeaLevel: contract({
+    id: 'runSeaLevel', method: 'GET', path: '/api/v1/runs/{id}/sea-level', action: 'run.read', summary: 'Where the sea rises and falls for the trends of a run', params: byId,
+    query: seaLevelQuery, answer: seaLevelAnswer,
+  }),
+  runSeaLevelCsv: contract({
+    id: 'runSeaLevelCsv', method: 'GET', path: '/api/v1/runs/{id}/sea-level.csv', action: 'run.read', summary: 'The same as a grid in CSV', params: byId,
+    query: seaLevelQuery, answer: bytes, answerType: 'text/csv',
+  }),
+  regionSeaLevel: contract({
+    id: 'regionSeaLevel', method: 'GET', path: '/api/v1/regions/{id}/sea-level', action: 'region.read', summary: 'Where the sea rises and falls for 100 Gt lost by a region', params: byId,
+    query: seaLevelQuery, answer: seaLevelAnswer,
   }),
 
   // Publication

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { epochFormats } from '../series/epochColumn.ts'
 import { coefficientSetIds, coreChoices, oceanModes, regionKinds, roles } from '../types/domain.ts'
 
 /** Limits guard the server against bodies that cannot be meant; each says what it guards. */
@@ -89,7 +90,7 @@ export const perGt = z.object({
 
 export const massColumns = z.object({
   epochColumn: z.int().min(0).optional(), valueColumn: z.int().min(0).optional(), sigmaColumn: z.int().min(0).nullable().optional(),
-  epochFormat: z.enum(['iso-date', 'year-month', 'decimal-year', 'mjd']).optional(),
+  epochFormat: z.enum(epochFormats).optional(),
   unit: z.enum(['Gt', 'mm-we', 'cm-we']).optional(),
   withdrawalPositive: z.boolean().optional(), delimiter: z.string().max(1).optional(), decimalComma: z.boolean().optional(),
   header: z.boolean().optional(),
@@ -107,7 +108,13 @@ export const scenarioDraft = z.object({
   settings: physicsSettings.extend({
     fromMjd: finite.nullable(), toMjd: finite.nullable(), maxGapDays: finite.min(1).max(2000),
   }),
-  regions: z.array(z.object({ regionId: ulid, versionId: ulid, scale: finite.min(-1000).max(1000) })).max(limits.regions),
+  regions: z.array(z.object({
+    regionId: ulid, versionId: ulid, scale: finite.min(-1000).max(1000),
+    /** Part of the mass change that reaches the sea; the rest goes to another region of the draft, or to all land evenly (null). */
+    fractionToOcean: finite.min(0).max(1).optional(), restTo: ulid.nullable().optional(),
+    /** Ice: the part that is grounded above flotation and so changes a load. */
+    groundedFraction: finite.min(0).max(1).optional(),
+  })).max(limits.regions),
   background: z.array(backgroundRow).max(50),
   restOfWorld: backgroundRow.nullable(),
   /** Observed series that the result page opens with; not part of the run. */

@@ -1,56 +1,70 @@
 import { InputError } from '../types/issue.ts'
 import type { Issue } from '../types/issue.ts'
-import { epochFormatTexts, parseEpoch } from './epochColumn.ts'
+import { epochFormatTexts } from './epochColumn.ts'
 import type { EpochFormat } from './epochColumn.ts'
-import { conversionOf } from './massUnits.ts'
+import { rowSteps } from './massRows.ts'
+import type { CellEdit, MassSeriesRow, RowLeftOut, RowsRead } from './massRows.ts'
+import { recipeOf } from './massUnits.ts'
 import type { MassUnit } from './massUnits.ts'
-import { isMissing, parseNumber } from './numbers.ts'
+import { gtPerMetre } from './recipe.ts'
+import type { Recipe, Replayed, SeriesTable } from './recipe.ts'
 import { recogniseMassColumns } from './recogniseColumns.ts'
-import type { ColumnGuess } from './recogniseColumns.ts'
-import { readTable } from './table.ts'
-import type { Table, TableOptions } from './table.ts'
+import type { ColumnGuess, RecognisedColumns } from './recogniseColumns.ts'
+import { replayRecipe } from './replay.ts'
+import { allAtOnce, withPauses } from './steps.ts'
+import type { PaceOptions, Steps } from './steps.ts'
+import { tableSteps } from './table.ts'
+import type { Table, TableOptions, TableSource } from './table.ts'
+
+export type { MassSeriesRow } from './massRows.ts'
 
 export interface MassSeriesOptions extends TableOptions {
   /** Columns counted from 0; absent: recognised. `sigmaColumn: null` reads no one-sigma though a column looks like one. */
   epochColumn?: number
+  /** Where each row's period ends; null: rows have no end though a column looks like one. */
+  endColumn?: number | null
   valueColumn?: number
   sigmaColumn?: number | null
   epochFormat?: EpochFormat
+  /** The last day of a period is part of it. */
+  endDayIncluded?: boolean
   unit?: MassUnit
   /** Ellipsoidal area of the region, m²; needed for heights. */
-  areaM2?: number
+  areaM2?: number | null
   /** The file counts water taken out as positive: the sign is turned. */
   withdrawalPositive?: boolean
   /** Marks of a missing value besides blank, NaN and −9999. */
   missingValues?: string[]
-}
-
-export interface MassSeriesRow {
-  /** Line in the file, counted from 1. */
-  row: number
-  epochText: string
-  mjd: number
-  valueText: string
-  /** Value and one-sigma as the file has them, in its unit and sign. */
-  value: number
-  sigma: number | null
+  /** Cells put right by hand, and rows left out on purpose; both are kept with the reading. */
+  edits?: CellEdit[]
+  leaveOut?: RowLeftOut[]
+  /** The way to gigatonnes in place of `unit`, `areaM2` and `withdrawalPositive`. */
+  recipe?: Recipe | null
 }
 
 export interface MassSeriesReading {
   columns: { index: number, name: string, sample: string[], guess: ColumnGuess }[]
   /** Every choice as it was used: give it back as options, changed where it was wrong. */
-  chosen: {
-    epochColumn: number, valueColumn: number, sigmaColumn: number | null, epochFormat: EpochFormat, unit: MassUnit, areaM2: number | null
-    withdrawalPositive: boolean, delimiter: Table['delimiter'], decimalComma: boolean, header: boolean, missingValues: string[]
+  chosen: RecognisedColumns['chosen'] & {
+    areaM2: number | null, withdrawalPositive: boolean, recipe: Recipe | null
+    delimiter: Table['delimiter'], decimalComma: boolean, header: boolean, missingValues: string[], edits: CellEdit[], leaveOut: RowLeftOut[]
   }
   /** Good rows in order of time. */
   rows: MassSeriesRow[]
-  /** One entry for each row that cannot be used, in order of the file: rowsRead = rows.length + issues.length. */
+  /** One entry for each row that cannot be used, in order of the file: rowsRead = rows.length + issues.length + leftOut.length. */
   issues: Issue[]
+  /** Rows that were left out on purpose, and cells that were put right, as they were. */
+  leftOut: RowsRead['leftOut']
+  edited: RowsRead['edited']
   /** What the user should know and need not mend: rows that were sorted, values that look like another unit. */
   notices: Issue[]
+  /** The good rows as a recipe takes them. */
+  table: SeriesTable
+  /** The recipe that was carried out, and what came of it. */
+  recipe: Recipe
+  replayed: Replayed
   mjd: number[]
-  /** Mass change in Gt on the same epochs, gain positive; one-sigma in Gt or null. */
+  /** Mass change in Gt on the same epochs, gain positive; one-sigma in Gt or null. One epoch more than rows where rates were summed. */
   massGt: number[]
   sigmaGt: number[] | null
   conversion: { steps: string[], gtPerUnit: number }
@@ -59,132 +73,116 @@ export interface MassSeriesReading {
 }
 
 /**
- * Reads a mass-change series from delimited text. Nothing is dropped in silence: each row of the file is either in `rows`
- * or in `issues`, with its line number and the reason.
+ * Reads a mass-change series from delimited text or from the cells of a sheet. Nothing is dropped in silence: each row of the file is
+ * in `rows`, in `issues` with its line number and the reason, or in `leftOut`.
  *
- * @throws InputError when the text is empty or too large, columns cannot be found, or an area is needed and missing
+ * @throws InputError when the text is empty or too large, columns cannot be found, an area is needed and missing, or rates have no periods
  */
-export function readMassSeries(text: string, options: MassSeriesOptions = {}): MassSeriesReading {
-  const table = readTable(text, options)
-  const guess = recogniseMassColumns(table, options)
+export function readMassSeries(source: TableSource, options: MassSeriesOptions = {}): MassSeriesReading {
+  return allAtOnce(readingSteps(source, options))
+}
+
+/** As `readMassSeries`, with pauses and progress, and to be cancelled: a page stays alive over 100 000 rows. */
+export function readMassSeriesPaced(source: TableSource, options: MassSeriesOptions, pace: PaceOptions): Promise<MassSeriesReading> {
+  return withPauses(readingSteps(source, options), pace)
+}
+
+function* readingSteps(source: TableSource, options: MassSeriesOptions): Steps<MassSeriesReading> {
+  return yield* seriesSteps(yield* tableSteps(source, options), options)
+}
+
+/** A series of a table that is read already. */
+export function* seriesSteps(table: Table, options: MassSeriesOptions): Steps<MassSeriesReading> {
+  const needsPeriods = options.recipe?.steps.some(step => step.kind === 'integrate') ?? false
+  const recognised = recogniseMassColumns(table, { ...options, needsPeriods })
   const chosen: MassSeriesReading['chosen'] = {
-    ...guess.chosen,
+    ...recognised.chosen,
     areaM2: options.areaM2 ?? null,
     withdrawalPositive: options.withdrawalPositive ?? false,
+    recipe: options.recipe ?? null,
     delimiter: table.delimiter,
     decimalComma: table.decimalComma,
     header: table.header !== null,
-    missingValues: options.missingValues ?? []
+    missingValues: options.missingValues ?? [],
+    edits: options.edits ?? [],
+    leaveOut: options.leaveOut ?? []
   }
   checkColumns(chosen, table.width)
-  const conversion = conversionOf(chosen.unit, chosen.areaM2, chosen.withdrawalPositive)
-  const { rows, issues, sortedRows } = readRows(table, chosen)
-  const sign = chosen.withdrawalPositive ? -1 : 1
+  const recipe = chosen.recipe ?? recipeOf(chosen.unit, chosen.areaM2, chosen.withdrawalPositive)
+  const { rows, issues, leftOut, edited, sortedRows } = yield* rowSteps(table, chosen)
+  const values = tableOf(rows)
+  const replayed = replayRecipe(recipe, values)
   return {
-    columns: guess.columns,
+    columns: recognised.columns,
     chosen,
     rows,
     issues,
-    notices: notices(rows, chosen.unit, sortedRows),
-    mjd: rows.map(row => row.mjd),
-    // + 0 turns −0 into 0, which JSON and people write the same.
-    massGt: rows.map(row => sign * row.value * conversion.gtPerUnit + 0),
-    sigmaGt: chosen.sigmaColumn === null ? null : rows.map(row => row.sigma! * conversion.gtPerUnit),
-    conversion: { steps: [epochFormatTexts[chosen.epochFormat], ...conversion.steps], gtPerUnit: conversion.gtPerUnit },
+    leftOut,
+    edited,
+    notices: notices(rows, recipe, sortedRows),
+    table: values,
+    recipe,
+    replayed,
+    mjd: replayed.mjd,
+    massGt: replayed.massGt,
+    sigmaGt: replayed.sigmaGt,
+    conversion: {
+      steps: [epochFormatTexts[chosen.epochFormat], ...chosen.endDayIncluded ? ['The last day of a period is part of it.'] : [], ...replayed.steps.map(step => step.sentence)],
+      gtPerUnit: gtPerUnitOf(recipe)
+    },
     rowsRead: table.rows.length + table.broken.length
   }
 }
 
+/** Columns of good rows; periods only where every row has one. */
+function tableOf(rows: readonly MassSeriesRow[]): SeriesTable {
+  const periods = rows.length > 0 && rows.every(row => row.endMjd > row.startMjd)
+  return {
+    mjd: rows.map(row => row.mjd),
+    startMjd: periods ? rows.map(row => row.startMjd) : null,
+    endMjd: periods ? rows.map(row => row.endMjd) : null,
+    value: rows.map(row => row.value),
+    sigma: rows.length > 0 && rows[0]!.sigma !== null ? rows.map(row => row.sigma!) : null
+  }
+}
+
+/** Size of the step from a unit of the file to gigatonnes (per year for a rate), its sign left out. */
+function gtPerUnitOf({ steps }: Recipe): number {
+  return steps.reduce((factor, step) => {
+    if (step.kind === 'unit') return factor * step.unit.factor
+    if (step.kind === 'storage') return factor * step.parameter.value
+    if (step.kind === 'density') return factor * step.parameter.value / 1000
+    return step.kind === 'area' ? factor * gtPerMetre(step.parameter.value) : factor
+  }, 1)
+}
+
 function checkColumns(chosen: MassSeriesReading['chosen'], width: number): void {
   const issues: Issue[] = []
-  for (const name of ['epochColumn', 'valueColumn', 'sigmaColumn'] as const) {
-    const column = chosen[name]
-    if (column !== null && !(Number.isInteger(column) && column >= 0 && column < width)) {
+  const used = (['epochColumn', 'endColumn', 'valueColumn', 'sigmaColumn'] as const).filter(name => chosen[name] !== null)
+  for (const name of used) {
+    const column = chosen[name]!
+    if (!(Number.isInteger(column) && column >= 0 && column < width)) {
       issues.push({ path: name, code: 'no-such-column', message: `The file has ${width} columns; column ${column + 1} is none of them.` })
     }
   }
-  if (chosen.epochColumn === chosen.valueColumn || chosen.valueColumn === chosen.sigmaColumn || chosen.epochColumn === chosen.sigmaColumn) {
-    issues.push({ path: 'valueColumn', code: 'same-column', message: 'Epoch, value and one-sigma must be in different columns.' })
+  if (new Set(used.map(name => chosen[name])).size < used.length) {
+    issues.push({ path: 'valueColumn', code: 'same-column', message: 'Epoch, end, value and one-sigma must be in different columns.' })
   }
   if (issues.length > 0) throw new InputError('The chosen columns do not fit the file', issues)
 }
 
-function readRows(table: Table, chosen: MassSeriesReading['chosen']): { rows: MassSeriesRow[], issues: Issue[], sortedRows: number } {
-  const rows: MassSeriesRow[] = []
-  const issues: Issue[] = table.broken.map(({ line, text }) => ({
-    row: line, value: text.slice(0, 60), code: 'open-quote', message: 'A quotation mark in this row is never closed.'
-  }))
-  const lineOfEpoch = new Map<number, number>()
-  let sortedRows = 0
-  let latest = -Infinity
-  for (const { line, cells } of table.rows) {
-    const read = readRow(line, cells, chosen, table)
-    if ('code' in read) {
-      issues.push(read)
-      continue
-    }
-    const earlier = lineOfEpoch.get(read.mjd)
-    if (earlier !== undefined) {
-      issues.push({ row: line, column: nameOf(table, chosen.epochColumn), value: read.epochText, code: 'duplicate-epoch', message: `The epoch stands in row ${earlier} already.` })
-      continue
-    }
-    lineOfEpoch.set(read.mjd, line)
-    if (read.mjd < latest) sortedRows++
-    latest = Math.max(latest, read.mjd)
-    rows.push(read)
-  }
-  rows.sort((a, b) => a.mjd - b.mjd)
-  issues.sort((a, b) => a.row! - b.row!)
-  return { rows, issues, sortedRows }
-}
+/** Greatest height of water that is believed, m. */
+const MOST_METRES = 100
 
-/** A good row, or the first thing that is wrong with it. */
-function readRow(line: number, cells: string[], chosen: MassSeriesReading['chosen'], table: Table): MassSeriesRow | Issue {
-  const fault = (index: number, code: string, message: string): Issue =>
-    ({ row: line, column: nameOf(table, index), value: (cells[index] ?? '').trim().slice(0, 60), code, message })
-  const needed = Math.max(chosen.epochColumn, chosen.valueColumn, chosen.sigmaColumn ?? 0)
-  if (cells.length <= needed) return fault(needed, 'missing-cell', `The row has ${cells.length} cells; column ${needed + 1} is missing.`)
-
-  const epochText = cells[chosen.epochColumn]!.trim()
-  let mjd: number
-  try {
-    mjd = parseEpoch(epochText, chosen.epochFormat, chosen.decimalComma)
-  } catch (error) {
-    if (!(error instanceof RangeError)) throw error
-    return fault(chosen.epochColumn, isMissing(epochText) ? 'missing-epoch' : 'bad-epoch', `The epoch cannot be read: ${error.message}.`)
-  }
-  const valueText = cells[chosen.valueColumn]!.trim()
-  if (isMissing(valueText, chosen.missingValues)) return fault(chosen.valueColumn, 'missing-value', 'The row has no value.')
-  const value = parseNumber(valueText, chosen.decimalComma)
-  if (!Number.isFinite(value)) return fault(chosen.valueColumn, 'not-a-number', `“${valueText.slice(0, 40)}” is not a number${hint(valueText, chosen.decimalComma)}.`)
-  if (chosen.sigmaColumn === null) return { row: line, epochText, mjd, valueText, value, sigma: null }
-
-  const sigmaText = cells[chosen.sigmaColumn]!.trim()
-  if (isMissing(sigmaText, chosen.missingValues)) return fault(chosen.sigmaColumn, 'missing-sigma', 'The row has no one-sigma. Choose no one-sigma column to use it all the same.')
-  const sigma = parseNumber(sigmaText, chosen.decimalComma)
-  if (!Number.isFinite(sigma)) return fault(chosen.sigmaColumn, 'not-a-number', `“${sigmaText.slice(0, 40)}” is not a number${hint(sigmaText, chosen.decimalComma)}.`)
-  if (!(sigma > 0)) return fault(chosen.sigmaColumn, 'sigma-not-positive', `A one-sigma must be positive, got ${sigmaText}.`)
-  return { row: line, epochText, mjd, valueText, value, sigma }
-}
-
-function hint(text: string, decimalComma: boolean): string {
-  if (!decimalComma && /^[+\-\u2212]?\d+,\d+$/.test(text)) return '; is the comma a decimal comma?'
-  return decimalComma && /^[+\-\u2212]?\d+\.\d+$/.test(text) ? '; is the point a decimal point?' : ''
-}
-
-function nameOf(table: Table, index: number): string {
-  return table.header?.[index]?.trim() || `column ${index + 1}`
-}
-
-function notices(rows: MassSeriesRow[], unit: MassUnit, sortedRows: number): Issue[] {
+function notices(rows: readonly MassSeriesRow[], { steps }: Recipe, sortedRows: number): Issue[] {
   const found: Issue[] = []
   if (sortedRows > 0) {
     found.push({ code: 'sorted', message: `${sortedRows === 1 ? 'One row was' : `${sortedRows} rows were`} not in order of time; the rows have been sorted.` })
   }
-  const largest = rows.reduce((most, row) => Math.max(most, Math.abs(row.value)), 0)
-  const metres = unit === 'mm-we' ? largest / 1000 : unit === 'cm-we' ? largest / 100 : 0
-  if (metres > 100) {
-    found.push({ code: 'suspicious-unit', message: `The largest height is ${Math.round(metres)} m of water. Check the unit.` })
+  const unit = steps.find(step => step.kind === 'unit')?.unit
+  if (unit?.quantity === 'water-height') {
+    const metres = rows.reduce((most, row) => Math.max(most, Math.abs(row.value)), 0) * unit.factor
+    if (metres > MOST_METRES) found.push({ code: 'suspicious-unit', message: `The largest height is ${Math.round(metres)} m of water. Check the unit.` })
   }
   return found
 }

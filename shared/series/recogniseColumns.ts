@@ -1,47 +1,74 @@
+import { calendarFromMjd } from '../earth/time/epochs.ts'
 import { InputError } from '../types/issue.ts'
-import { recogniseEpochFormat } from './epochColumn.ts'
+import { hasWholeDays, parsePeriod, recogniseEpochFormat, splitPeriod } from './epochColumn.ts'
 import type { EpochFormat } from './epochColumn.ts'
 import type { MassUnit } from './massUnits.ts'
 import { isMissing, parseNumber } from './numbers.ts'
 import type { Table } from './table.ts'
 
-export type ColumnGuess = 'epoch' | 'value' | 'sigma' | 'other'
-export interface ColumnChoices { epochColumn?: number, valueColumn?: number, sigmaColumn?: number | null, epochFormat?: EpochFormat, unit?: MassUnit }
+export type ColumnGuess = 'epoch' | 'end' | 'value' | 'sigma' | 'other'
+export interface ColumnChoices {
+  epochColumn?: number
+  /** Column in which the period ends that begins in `epochColumn`; null: there is none though a column looks like one. */
+  endColumn?: number | null
+  valueColumn?: number
+  sigmaColumn?: number | null
+  epochFormat?: EpochFormat
+  endDayIncluded?: boolean
+  unit?: MassUnit
+  /** Rows are amounts or rates over periods: a bare year is one. */
+  needsPeriods?: boolean
+}
 
 export interface RecognisedColumns {
   columns: { index: number, name: string, sample: string[], guess: ColumnGuess }[]
-  chosen: { epochColumn: number, valueColumn: number, sigmaColumn: number | null, epochFormat: EpochFormat, unit: MassUnit }
+  chosen: {
+    epochColumn: number, endColumn: number | null, valueColumn: number, sigmaColumn: number | null
+    epochFormat: EpochFormat, endDayIncluded: boolean, unit: MassUnit
+  }
+  /** Every column of numbers with its one-sigma: more than one where the table holds several regions side by side. */
+  valueColumns: { valueColumn: number, sigmaColumn: number | null, name: string }[]
 }
 
-const epochName = /date|epoch|time|mjd|year|month|jahr|datum|fecha/i
-const sigmaName = /sigma|σ|±|\+\/-|err|unc|std|fehler|unsich|incert|s\.?d\b|1s/i
+const epochName = /date|epoch|time|mjd|year|month|period|jahr|datum|fecha/i
+const beginName = /start|begin|from|since|von/i
+const endName = /(^|[^a-z])(end|stop|until|to|till|bis|through|last)([^a-z]|$)/i
+const sigmaName = /sigma|σ|±|\+\/-|err|unc|std|s\.?d\b|1s/i
 const valueName = /mass|gt\b|gigaton|lwe|tws|ewh|water|storage|value|thick|anomal|mm|cm/i
+const otherName = /^(?:lat|lon|lng|id|no|nr|n|row|count|quality|flag|gap|days?|doy)(?:itude|gitude)?$|flag|quality/i
 /** Rows that a guess looks at. */
 const LOOKED_AT = 100
 
 /**
  * Which column holds the epoch, the value and its one-sigma, by names and by what the cells look like; choices that are given
  * stand. A column named as an error is never taken as the value.
+ *
+ * @throws InputError where no column of epochs, or none of numbers, is found
  */
 export function recogniseMassColumns(table: Table, given: ColumnChoices): RecognisedColumns {
-  const count = table.width
   const cells = (index: number): string[] => table.rows.slice(0, LOOKED_AT).map(row => row.cells[index] ?? '')
   const name = (index: number): string => table.header?.[index]?.trim() ?? ''
   const numeric = (index: number): number => {
     const filled = cells(index).filter(cell => !isMissing(cell))
     return filled.length === 0 ? 0 : filled.filter(cell => !Number.isNaN(parseNumber(cell, table.decimalComma))).length / filled.length
   }
-  const indices = Array.from({ length: count }, (_, i) => i)
+  const indices = Array.from({ length: table.width }, (_, i) => i)
 
-  const epochs = indices.map(index => ({ index, found: recogniseEpochFormat(cells(index), table.decimalComma), named: epochName.test(name(index)) }))
-  const taken = new Set([given.valueColumn, given.sigmaColumn])
+  const epochs = indices.map(index => ({
+    index, found: recogniseEpochFormat(cells(index), table.decimalComma, given.needsPeriods), named: epochName.test(name(index)) || beginName.test(name(index))
+  }))
+  const taken = new Set([given.valueColumn, given.sigmaColumn, given.endColumn])
   const epoch = given.epochColumn !== undefined
     ? epochs[given.epochColumn]
-    : best(epochs.filter(e => !taken.has(e.index) && e.found), e => e.found!.share + (e.named ? 0.6 : 0) + (e.index === 0 ? 0.1 : 0))
+    : best(epochs.filter(e => !taken.has(e.index) && e.found && !endName.test(name(e.index))), e => e.found!.share + (e.named ? 0.6 : 0) + (e.index === 0 ? 0.1 : 0))
   const epochColumn = given.epochColumn ?? epoch?.index
   if (epochColumn === undefined) fail('no-epoch-column', 'No column of dates, months, decimal years or Modified Julian Dates was found.')
+  const epochFormat = given.epochFormat ?? epoch?.found?.format ?? 'iso-date'
+  const endColumn = given.endColumn !== undefined
+    ? given.endColumn
+    : epochs.find(e => e.index !== epochColumn && !taken.has(e.index) && endName.test(name(e.index)) && e.found?.format === epochFormat)?.index ?? null
 
-  const candidates = indices.filter(index => index !== epochColumn && numeric(index) > 0.5)
+  const candidates = indices.filter(index => index !== epochColumn && index !== endColumn && numeric(index) > 0.5)
   const sigmaColumn = given.sigmaColumn !== undefined
     ? given.sigmaColumn
     : candidates.find(index => index !== given.valueColumn && sigmaName.test(name(index))) ?? null
@@ -49,17 +76,63 @@ export function recogniseMassColumns(table: Table, given: ColumnChoices): Recogn
     numeric(index) + (valueName.test(name(index)) ? 1 : 0) - (sigmaName.test(name(index)) ? 2 : 0) - (epochName.test(name(index)) ? 0.5 : 0) - index * 1e-3)
   if (valueColumn === undefined) fail('no-value-column', 'No column of numbers was found beside the epochs.')
 
-  const unit = given.unit ?? unitOf(name(valueColumn))
-  const epochFormat = given.epochFormat ?? epoch?.found?.format ?? 'iso-date'
   return {
     columns: indices.map(index => ({
       index,
       name: name(index) || `column ${index + 1}`,
       sample: cells(index).slice(0, 3).map(cell => cell.trim().slice(0, 40)),
-      guess: index === epochColumn ? 'epoch' : index === valueColumn ? 'value' : index === sigmaColumn ? 'sigma' : 'other'
+      guess: index === epochColumn ? 'epoch' : index === endColumn ? 'end' : index === valueColumn ? 'value' : index === sigmaColumn ? 'sigma' : 'other'
     })),
-    chosen: { epochColumn, valueColumn, sigmaColumn, epochFormat, unit }
+    chosen: {
+      epochColumn, endColumn, valueColumn, sigmaColumn, epochFormat,
+      endDayIncluded: given.endDayIncluded ?? endsAreIncluded(table, epochColumn, endColumn, epochFormat),
+      unit: given.unit ?? unitOf(name(valueColumn))
+    },
+    valueColumns: sideBySide(candidates, name)
   }
+}
+
+/** Columns of numbers that are neither errors nor descriptions, each with the column of errors that follows it or bears its name. */
+function sideBySide(candidates: number[], name: (index: number) => string): RecognisedColumns['valueColumns'] {
+  const sigmas = candidates.filter(index => sigmaName.test(name(index)))
+  const values = candidates.filter(index => !sigmaName.test(name(index)) && !otherName.test(name(index)) && !epochName.test(name(index)))
+  return values.map((index) => {
+    const named = name(index) === '' ? undefined : sigmas.find(s => bareName(name(s)) === bareName(name(index)))
+    const next = sigmas.includes(index + 1) && /^\W*$/.test(bareName(name(index + 1))) ? index + 1 : undefined
+    const alone = values.length === 1 ? sigmas[0] : undefined
+    return { valueColumn: index, sigmaColumn: named ?? next ?? alone ?? null, name: name(index) || `column ${index + 1}` }
+  })
+}
+
+/** A column's name without the words for errors and units. */
+function bareName(name: string): string {
+  return name.toLowerCase().replace(/one[- ]?sigma|sigma|σ|±|\+\/-|errors?|err|uncertainty|unc|std|s\.?d\b|1s|[[(].*?[\])]|(^|[^a-z])(gt|mm|cm|km3|km³|m)(?=[^a-z]|$)/g, ' ').replace(/[\s_.,:-]+/g, ' ').trim()
+}
+
+/** Whether the last day of a period is part of it: by where the next period begins, or by its being the last of a month. */
+function endsAreIncluded(table: Table, epochColumn: number, endColumn: number | null, format: EpochFormat): boolean {
+  if (!hasWholeDays(format)) return false
+  const ends: { startMjd: number, endMjd: number }[] = []
+  for (const { cells } of table.rows.slice(0, LOOKED_AT)) {
+    try {
+      const parts = endColumn === null ? splitPeriod(cells[epochColumn] ?? '', table.decimalComma) : { from: cells[epochColumn] ?? '', to: cells[endColumn] ?? '', format }
+      if (!parts || !hasWholeDays(parts.format)) continue
+      ends.push({ startMjd: parsePeriod(parts.from, parts.format).mjd, endMjd: parsePeriod(parts.to, parts.format).mjd })
+    } catch (error) {
+      // A cell that is no date is listed when the rows are read.
+      if (!(error instanceof RangeError)) throw error
+    }
+  }
+  if (ends.length === 0) return false
+  const steps = ends.slice(1).map((end, i) => end.startMjd - ends[i]!.endMjd)
+  const included = steps.filter(step => step === 1).length
+  const excluded = steps.filter(step => step === 0).length
+  if (included !== excluded) return included > excluded
+  return ends.every(({ startMjd, endMjd }) => endMjd === startMjd || isLastOfMonth(endMjd))
+}
+
+function isLastOfMonth(mjd: number): boolean {
+  return calendarFromMjd(mjd + 1).day === 1
 }
 
 /** Unit by the name of the column; gigatonnes where it says nothing. */

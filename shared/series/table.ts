@@ -1,6 +1,8 @@
 import Papa from 'papaparse'
 import { InputError } from '../types/issue.ts'
 import { isMissing, parseNumber } from './numbers.ts'
+import { allAtOnce } from './steps.ts'
+import type { Steps } from './steps.ts'
 
 export type Delimiter = ',' | ';' | '\t' | '|' | ' '
 
@@ -11,6 +13,9 @@ export interface TableOptions {
   /** Whether the first row holds names; absent: recognised. */
   header?: boolean
 }
+
+/** What a table is read from: delimited text, or the cells of a sheet. */
+export type TableSource = string | { cells: string[][] }
 
 export interface Table {
   delimiter: Delimiter
@@ -30,27 +35,60 @@ export const tableLimits = { rows: 200_000, bytes: 16 * 1024 * 1024 }
 /** A quoted cell may hold line ends; one that runs on further than this is a quotation mark that was never closed. */
 const LONGEST_CELL_LINES = 20
 
+/** Lines that are worked on between two pauses. */
+const CHUNK = 5000
+/** Marks of a line that is a comment. */
+const comment = /^(?:[#%!]|\/\/)/
+
 /**
  * Cells of a delimited text: comma, semicolon, tab, bar or blanks; byte-order mark, Windows line ends, blank lines and
- * lines that begin with `#` are passed over, yet every row keeps the number of its line in the file.
+ * lines that begin with `#`, `%`, `!` or `//` are passed over, yet every row keeps the number of its line in the file.
+ * The cells of a sheet are taken as they are, a row's line being its number in the sheet.
  *
  * @throws InputError (413) over 200 000 rows or 16 MB, InputError (422) for a text without rows
  */
-export function readTable(text: string, options: TableOptions = {}): Table {
-  checkSize(text)
-  const { blocks, broken } = logicalLines(text.charCodeAt(0) === 0xFEFF ? text.slice(1) : text)
-  if (blocks.length > tableLimits.rows + 1) tooLarge('rows', `The file has more than ${tableLimits.rows} rows`, 'too-many-rows')
-  if (blocks.length === 0 && broken.length === 0) {
-    throw new InputError('The file holds no rows', [{ code: 'no-rows', message: 'The file is empty or holds comments only.' }])
-  }
-  const sample = blocks.slice(0, 50).map(block => block.text)
-  const delimiter = options.delimiter ?? recogniseDelimiter(sample)
-  const cells = splitCells(blocks.map(block => block.text), delimiter)
-  const decimalComma = options.decimalComma ?? (delimiter !== ',' && usesDecimalComma(cells.slice(0, 50)))
-  const hasHeader = options.header ?? (cells.length > 0 && looksLikeHeader(cells[0]!, decimalComma))
-  const rows = blocks.map((block, i) => ({ line: block.line, cells: cells[i]! }))
+export function readTable(source: TableSource, options: TableOptions = {}): Table {
+  return allAtOnce(tableSteps(source, options))
+}
+
+/** As `readTable`, in steps. */
+export function* tableSteps(source: TableSource, options: TableOptions = {}): Steps<Table> {
+  const { rows, broken, delimiter } = typeof source === 'string' ? yield* textRows(source, options) : { ...sheetRows(source.cells), delimiter: options.delimiter ?? ',' }
+  const sample = rows.slice(0, 50).map(row => row.cells)
+  const decimalComma = options.decimalComma ?? (delimiter !== ',' && usesDecimalComma(sample))
+  const hasHeader = options.header ?? (rows.length > 0 && looksLikeHeader(sample[0]!, decimalComma))
   const header = hasHeader ? rows.shift()?.cells ?? null : null
   return { delimiter, decimalComma, header, rows, broken, width: rows.reduce((most, row) => Math.max(most, row.cells.length), header?.length ?? 0) }
+}
+
+type Rows = Pick<Table, 'rows' | 'broken'>
+
+function* textRows(text: string, options: TableOptions): Steps<Rows & Pick<Table, 'delimiter'>> {
+  checkSize(text)
+  const { blocks, broken } = yield* logicalLines(text.charCodeAt(0) === 0xFEFF ? text.slice(1) : text)
+  checkCount(blocks.length, broken.length)
+  const delimiter = options.delimiter ?? recogniseDelimiter(blocks.slice(0, 50).map(block => block.text))
+  const rows: Table['rows'] = []
+  for (let from = 0; from < blocks.length; from += CHUNK) {
+    const chunk = blocks.slice(from, from + CHUNK)
+    const cells = splitCells(chunk.map(block => block.text), delimiter)
+    chunk.forEach((block, i) => rows.push({ line: block.line, cells: cells[i]! }))
+    yield 0.3 + 0.4 * from / blocks.length
+  }
+  return { rows, broken, delimiter }
+}
+
+function sheetRows(sheet: string[][]): Rows {
+  const rows = sheet.map((cells, i) => ({ line: i + 1, cells })).filter(({ cells }) => cells.some(cell => cell.trim() !== '') && !comment.test(cells[0]!.trim()))
+  checkCount(rows.length, 0)
+  return { rows, broken: [] }
+}
+
+function checkCount(rows: number, broken: number): void {
+  if (rows > tableLimits.rows + 1) tooLarge('rows', `The file has more than ${tableLimits.rows} rows`, 'too-many-rows')
+  if (rows === 0 && broken === 0) {
+    throw new InputError('The file holds no rows', [{ code: 'no-rows', message: 'The file is empty or holds comments only.' }])
+  }
 }
 
 function checkSize(text: string): void {
@@ -65,14 +103,19 @@ function tooLarge(what: string, message: string, code: string): never {
 }
 
 /** Lines joined where a quoted cell runs over line ends, without comments and blank lines. */
-function logicalLines(text: string): { blocks: { line: number, text: string }[], broken: { line: number, text: string }[] } {
+function* logicalLines(text: string): Steps<{ blocks: { line: number, text: string }[], broken: { line: number, text: string }[] }> {
   const lines = text.split(/\r\n|\n|\r/)
   const blocks: { line: number, text: string }[] = []
   const broken: { line: number, text: string }[] = []
+  let pauseAt = CHUNK
   for (let i = 0; i < lines.length; i++) {
+    if (i >= pauseAt) {
+      yield 0.3 * i / lines.length
+      pauseAt += CHUNK
+    }
     const line = lines[i]!
     const trimmed = line.trim()
-    if (trimmed === '' || trimmed[0] === '#' || /^[;,\t| ]+$/.test(line)) continue
+    if (trimmed === '' || comment.test(trimmed) || /^[;,\t| ]+$/.test(line)) continue
     if (!line.includes('"') || closes(line)) {
       blocks.push({ line: i + 1, text: line })
       continue

@@ -74,7 +74,7 @@ describe('conversion', () => {
     expect(read.chosen.unit).toBe('mm-we')
     expect(read.massGt[0]).toBeCloseTo(1e-3, 15)
     expect(read.massGt[1]).toBeCloseTo(-2e-2, 15)
-    expect(read.conversion.steps.join(' ')).toContain('1 mm is 0.0010000 Gt')
+    expect(read.conversion.steps.join(' ')).toContain('1 m of water is 1.0000 Gt')
   })
 
   it('takes ten times as much for centimetres, and turns the sign of withdrawal but not of its error', () => {
