@@ -45,7 +45,7 @@ export function formatMeasured(
   const shown = options.signed === false ? formatNumber(value, digits) : formatSigned(value, digits)
   const shownSigma = sigmaText(sigma, digits)
   const unit = options.unit ? `${hardSpace}${options.unit}` : ''
-  return { value: shown, sigma: shownSigma, text: `${shown}${shownSigma ? ` ${shownSigma}` : ''}${unit}` }
+  return { value: shown, sigma: shownSigma, text: `${shown}${shownSigma ? `${hardSpace}${shownSigma}` : ''}${unit}` }
 }
 
 function sigmaText(sigma: number | null | undefined, digits: number): string {

@@ -22,7 +22,7 @@ export function beamFigure(data: BeamData, options: FigureOptions): Figure {
   const width = figureWidth(options.width)
   const palette = paletteOf(options.theme)
   const canvas = new Canvas(palette)
-  const segments = beamSegments(data.items)
+  const segments = beamSegments(data)
   const total = Number.isFinite(data.total.value) ? data.total.value : 0
   const sigma = data.total.sigma !== null && Number.isFinite(data.total.sigma) ? Math.max(0, data.total.sigma) : 0
   const x = scaleOf(segments, total, sigma, width)

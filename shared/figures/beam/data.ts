@@ -1,4 +1,4 @@
-import { formatMeasured } from '../../format/measured.ts'
+import { formatMeasured, measuredDecimals } from '../../format/measured.ts'
 import type { Measured } from '../../types/domain.ts'
 import type { RunResult } from '../../types/run.ts'
 
@@ -41,7 +41,9 @@ export interface BeamSegment extends BeamItem {
   figure: string
 }
 
-export function beamSegments(items: readonly BeamItem[]): BeamSegment[] {
+export function beamSegments({ items, total }: BeamData): BeamSegment[] {
+  // One decimal more than the sum deserves, so that a small item does not run on.
+  const decimals = Number.isFinite(total.value) && total.value !== 0 ? measuredDecimals(total.value, total.sigma) + 1 : undefined
   const ends = { plus: 0, minus: 0 }
   return [...items]
     .filter(item => Number.isFinite(item.value))
@@ -50,6 +52,6 @@ export function beamSegments(items: readonly BeamItem[]): BeamSegment[] {
       const side = item.value < 0 ? 'minus' : 'plus'
       const from = ends[side]
       ends[side] += item.value
-      return { ...item, from, to: ends[side], figure: formatMeasured(item.value, item.sigma).text }
+      return { ...item, from, to: ends[side], figure: formatMeasured(item.value, item.sigma, { decimals }).text }
     })
 }

@@ -14,7 +14,7 @@ describe('beamFigure', () => {
   }
 
   it('lays regions head to tail from zero, the largest nearest to the pivot', () => {
-    const segments = beamSegments(beamData(sampleRun()).items)
+    const segments = beamSegments(beamData(sampleRun()))
     expect(segments.map(({ name }) => name)[0]).toBe('Northern ice dome')
     for (const side of [1, -1]) {
       const own = segments.filter(segment => Math.sign(segment.value) === side)

@@ -31,7 +31,7 @@ describe('formatMeasured', () => {
     [5.15, 0.36, '+5.15', '0.36'], [-214.4, 12.3, '\u2212214', '12'], [9.63, 0.8, '+9.63', '0.80'], [0.0123, 0.0996, '+0.01', '0.10'],
     [1234.6, 123, '+1235', '123'], [-0.0712, 0.0107, '\u22120.071', '0.011'], [0, 0.36, '0.00', '0.36'],
   ])('chooses digits of %s ± %s from the sigma', (value, sigma, shown, error) => {
-    expect(formatMeasured(value, sigma)).toEqual({ value: shown, sigma: `±${hard}${error}`, text: `${shown} ±${hard}${error}` })
+    expect(formatMeasured(value, sigma)).toEqual({ value: shown, sigma: `±${hard}${error}`, text: `${shown}${hard}±${hard}${error}` })
   })
   it('gives value and sigma the same decimals, whatever the scale', () => {
     for (let exponent = -4; exponent < 6; exponent++) {
@@ -43,7 +43,7 @@ describe('formatMeasured', () => {
     }
   })
   it('gives a bound where the sigma is finer than the digits that are deserved', () => {
-    expect(formatMeasured(123.456789, 0.00002).text).toBe(`+123.46 ±${hard}<${thin}0.01`)
+    expect(formatMeasured(123.456789, 0.00002).text).toBe(`+123.46${hard}±${hard}<${thin}0.01`)
   })
   it('leaves the error out where there is none', () => {
     expect(formatMeasured(5.1543, null, { unit: 'µs' })).toEqual({ value: '+5.15', sigma: '', text: `+5.15${hard}µs` })
@@ -51,7 +51,7 @@ describe('formatMeasured', () => {
     expect(formatMeasured(null, 3).text).toBe('–')
   })
   it('can go without a plus sign', () => {
-    expect(formatMeasured(6.21, 0.5, { signed: false }).text).toBe(`6.21 ±${hard}0.50`)
+    expect(formatMeasured(6.21, 0.5, { signed: false }).text).toBe(`6.21${hard}±${hard}0.50`)
   })
 })
 

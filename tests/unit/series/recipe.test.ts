@@ -50,7 +50,7 @@ describe('conversion to gigatonnes', () => {
     expect(done.factors[0]).toMatchObject({ source: 'specific yield of the Sand', own: false })
     expect(done.factors[0]!.loading[0]).toBeCloseTo(0.03, 15)
     expect(done.factors[0]!.loading[1]).toBeCloseTo(-0.06, 15)
-    expect(done.steps[1]!.sentence).toBe('Head change × specific yield 0.100 ± 0.030, an error that all epochs share (specific yield of the Sand) is a height of water.'.replace(' ± ', ' ±\u00a0'))
+    expect(done.steps[1]!.sentence).toBe('Head change × specific yield 0.100 ± 0.030, an error that all epochs share (specific yield of the Sand) is a height of water.'.replace(' ± ', '\u00a0±\u00a0'))
   })
 
   it('of ice: −1 m at 917 kg/m³ over 1000 km² are −0.917 Gt; at 850 ± 60 kg/m³, −0.85 ± 0.06', () => {
