@@ -6,9 +6,9 @@ export interface QuantityText { id: ComparedQuantity, name: string, short: strin
 
 /** The three quantities that a run and an observation meet in. Rates: `toRate` turns the comparison's unit into the table's. */
 export const quantities: readonly QuantityText[] = [
-  { id: 'lod', name: 'Excess length of day', short: 'ΔLOD', unit: 'ms', rateUnit: 'µs/yr', toRate: 1000 },
-  { id: 'chi1', name: 'Pole excitation towards 0°', short: 'χ₁', unit: 'mas', rateUnit: 'mas/yr', toRate: 1 },
-  { id: 'chi2', name: 'Pole excitation towards 90° E', short: 'χ₂', unit: 'mas', rateUnit: 'mas/yr', toRate: 1 },
+  { id: 'lod', name: 'excess length of day', short: 'ΔLOD', unit: 'ms', rateUnit: 'µs/yr', toRate: 1000 },
+  { id: 'chi1', name: 'pole excitation towards 0°', short: 'χ₁', unit: 'mas', rateUnit: 'mas/yr', toRate: 1 },
+  { id: 'chi2', name: 'pole excitation towards 90° E', short: 'χ₂', unit: 'mas', rateUnit: 'mas/yr', toRate: 1 },
 ]
 
 export function quantityOf(text: unknown): ComparedQuantity {

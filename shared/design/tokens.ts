@@ -93,7 +93,7 @@ export function cssVariables(): string {
     `:root {\n  color-scheme: light;\n${declarations(light, '  ')}\n}`,
     `@media (prefers-color-scheme: dark) {\n  :root:not([data-theme="light"]) {\n    color-scheme: dark;\n${declarations(dark, '    ')}\n  }\n}`,
     `:root[data-theme="dark"] {\n  color-scheme: dark;\n${declarations(dark, '  ')}\n}`,
-    `@media print {\n  :root, :root[data-theme] {\n    color-scheme: light;\n${declarations(print, '    ')}\n  }\n}`,
+    `@media print {\n  :root, :root[data-theme], :root:not([data-theme="light"]) {\n    color-scheme: light;\n${declarations(print, '    ')}\n  }\n}`,
     '',
   ].join('\n')
 }
