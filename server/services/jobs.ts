@@ -1,4 +1,5 @@
 import { EventEmitter } from 'node:events'
+import { dirname, join } from 'node:path'
 import { eq, inArray } from 'drizzle-orm'
 import Piscina from 'piscina'
 import type { Principal } from '#shared/permissions'
@@ -29,7 +30,7 @@ export class Jobs {
   private readonly aborts = new Map<string, AbortController>()
   private context!: Context
 
-  constructor(workerFile: string, private readonly fieldsPath: string | null) {
+  constructor(private readonly workerFile: string, private readonly fieldsPath: string | null) {
     this.pool = new Piscina({ filename: workerFile, minThreads: 0, maxThreads: 1, idleTimeout: 60_000 })
   }
 
@@ -48,6 +49,11 @@ export class Jobs {
     }).run()
     void this.execute(id)
     return jobView(this.row(id))
+  }
+
+  /** Work of seconds in a worker thread, waited for: `worker` names a file of server/workers. */
+  async compute<T>(worker: string, task: unknown, signal?: AbortSignal): Promise<T> {
+    return await this.pool.run(task, { filename: join(dirname(this.workerFile), `${worker}.mjs`), signal }) as T
   }
 
   /** A run that is waited for, as at first start. Fails where the job fails. */

@@ -67,6 +67,9 @@ function checkDraft(context: Context, workspaceId: string, draft: ScenarioDraft)
     else if (!version) issues.push({ path: `draft/regions/${i}/versionId`, code: 'unknown', message: `is not a version of ${region.name}’s series` })
     if (seen.has(choice.regionId)) issues.push({ path: `draft/regions/${i}/regionId`, code: 'duplicate', message: 'is named twice' })
     seen.add(choice.regionId)
+    if (choice.restTo && (choice.restTo === choice.regionId || !draft.regions.some(other => other.regionId === choice.restTo))) {
+      issues.push({ path: `draft/regions/${i}/restTo`, code: 'unknown', message: 'is not another region of this scenario' })
+    }
   })
   const { fromMjd, toMjd } = draft.settings
   if (fromMjd !== null && toMjd !== null && fromMjd >= toMjd) issues.push({ path: 'draft/settings/toMjd', code: 'order', message: 'must be later than the first day' })
@@ -127,6 +130,10 @@ export function binScenario(context: Context, principal: Principal | null, id: s
   })
 }
 
+function keyOf(draft: ScenarioDraft, regionId: string): string {
+  return `r${draft.regions.findIndex(r => r.regionId === regionId) + 1}`
+}
+
 /** Everything that a run of this draft depends on, copied out of the account: no ids, no clock times. */
 export function freezeInput(context: Context, row: ScenarioRow): RunInput {
   const draft = JSON.parse(row.draft) as ScenarioDraft
@@ -146,6 +153,10 @@ export function freezeInput(context: Context, row: ScenarioRow): RunInput {
         geometry: outline.geometry, outlineSha256: outline.sha256,
         seriesVersion: version.n, seriesSha256: version.dataSha256, source: version.source,
         series: massSeries(context, version.id), scale: choice.scale,
+        ...(choice.fractionToOcean !== undefined && choice.fractionToOcean < 1
+          ? { fractionToOcean: choice.fractionToOcean, restTo: choice.restTo ? keyOf(draft, choice.restTo) : null }
+          : {}),
+        ...(choice.groundedFraction !== undefined && choice.groundedFraction < 1 ? { groundedFraction: choice.groundedFraction } : {}),
       }
     }),
     background: draft.background,
