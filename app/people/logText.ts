@@ -4,7 +4,7 @@ export interface FieldChange { field: string, before: string | null, after: stri
 const names: Record<string, string> = {
   agencyId: 'agency', outline: 'outline SHA-256', dataSha256: 'values SHA-256', originalSha256: 'original SHA-256', inputSha256: 'input SHA-256',
   resultSha256: 'result SHA-256', rowsStored: 'rows stored', rowsLeftOut: 'rows left out', inBin: 'in the bin', userId: 'person', n: 'version',
-  workspaceId: 'workspace', scenarioId: 'scenario', runId: 'run', regionId: 'region',
+  bytes: 'size in bytes', workspaceId: 'workspace', scenarioId: 'scenario', runId: 'run', regionId: 'region',
 }
 
 function flat(value: unknown, path = ''): [string, unknown][] {
@@ -19,6 +19,7 @@ function flat(value: unknown, path = ''): [string, unknown][] {
 export function valueText(value: unknown, idNames: ReadonlyMap<string, string>): string {
   if (value === true) return 'yes'
   if (value === false) return 'no'
+  if (typeof value === 'number') return String(value).replace('-', '\u2212')
   const text = String(value)
   if (/^[0-9a-f]{64}$/.test(text)) return `${text.slice(0, 12)}…`
   return idNames.get(text) ?? (text === '' ? 'empty' : text)
@@ -44,4 +45,21 @@ export function entityLink(entity: string, id: string, after: unknown): string |
   if (entity === 'scenario') return `/scenarios/${id}`
   if (entity === 'run') return `/runs/${id}`
   return null
+}
+
+/** The change on one line: the first few fields, checksums left out. */
+export function changeSummary(changes: readonly FieldChange[], most = 3): string {
+  const telling = changes.filter(change => !change.field.endsWith('SHA-256'))
+  const shown = telling.slice(0, most).map(({ field, before, after }) => {
+    if (before !== null && after !== null) return `${field}: ${before} → ${after}`
+    return after !== null ? `${field}: ${after}` : `${field}: ${before} taken away`
+  })
+  const rest = changes.length - shown.length
+  return `${shown.join('; ')}${shown.length && rest > 0 ? `; ${rest} more` : ''}` || `${changes.length === 1 ? 'one checksum' : `${changes.length} checksums`}`
+}
+
+/** What a logged row was called, as far as the entry itself or the known names tell. */
+export function entryName(entityId: string, before: unknown, after: unknown, idNames: ReadonlyMap<string, string>): string {
+  const own = (value: unknown, key: string) => typeof value === 'object' && value !== null && typeof (value as Record<string, unknown>)[key] === 'string' ? (value as Record<string, string>)[key]! : ''
+  return idNames.get(entityId) || own(after, 'name') || own(after, 'title') || own(after, 'email') || own(before, 'name') || idNames.get(own(after, 'region')) || idNames.get(own(before, 'userId')) || ''
 }

@@ -59,3 +59,9 @@ export function readSharedRates(fields: readonly SharedRateField[], readNumber: 
   })
   return { rates, faults }
 }
+
+/** Name of a file's text after it was changed on the screen: `wells.csv` becomes `wells-mended.csv`. */
+export function mendedName(name: string): string {
+  if (/-mended(\.\w{1,5})?$/.test(name)) return name
+  return name.replace(/(\.\w{1,5})?$/, ending => `-mended${ending}`)
+}
