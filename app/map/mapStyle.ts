@@ -77,7 +77,7 @@ function regionLayers(palette: Palette): LayerSpecification[] {
         'text-justify': 'auto',
         'symbol-sort-key': ['get', 'rank']
       },
-      paint: { 'text-color': palette.ink, 'text-halo-color': palette.paper, 'text-halo-width': 1.6, 'text-halo-blur': 0.3 }
+      paint: { 'text-color': palette.ink, 'text-halo-color': palette.paper, 'text-halo-width': 1.4 }
     }
   ]
 }

@@ -12,6 +12,8 @@ export interface MapRegion {
   geometry: Outline
   /** Its sign makes the region warm and hatched (loss) or cool and plain (gain); null draws ink alone. */
   massTrendGtPerYear: number | null
+  /** The trend's uncertainty leaves its sign open: drawn in ink. */
+  open?: boolean
   selected: boolean
 }
 
@@ -33,8 +35,8 @@ export class ShapeCache {
   }
 }
 
-export function signOf(massTrendGtPerYear: number | null): Sign {
-  if (!massTrendGtPerYear) return 'none'
+export function signOf({ massTrendGtPerYear, open }: Pick<MapRegion, 'massTrendGtPerYear' | 'open'>): Sign {
+  if (!massTrendGtPerYear || open) return 'none'
   return massTrendGtPerYear < 0 ? 'loss' : 'gain'
 }
 
@@ -46,7 +48,7 @@ export function regionSources(regions: readonly MapRegion[], cache: ShapeCache, 
   for (const region of regions) {
     if (region.id === hidden) continue
     const { shape, centroid, areaM2 } = cache.of(region.geometry)
-    const properties = { id: region.id, sign: signOf(region.massTrendGtPerYear), selected: region.selected }
+    const properties = { id: region.id, sign: signOf(region), selected: region.selected }
     fills.push({ type: 'Feature', properties, geometry: shape.fill })
     lines.push({ type: 'Feature', properties, geometry: { type: 'MultiLineString', coordinates: shape.lines } })
     labels.push({

@@ -17,20 +17,32 @@ export function overlapsOf(items: readonly { id: string, geometry: Outline }[]):
   const found: OutlineOverlap[] = []
   for (let i = 0; i < items.length; i++) {
     for (let j = i + 1; j < items.length; j++) {
-      const a = spreads[i]!
-      const b = spreads[j]!
-      const areaM2 = sharedAreaM2(a, b)
-      if (areaM2 <= leastShare * Math.min(a.areaM2, b.areaM2)) continue
-      found.push({
-        a: items[i]!.id,
-        b: items[j]!.id,
-        areaKm2: areaM2 / 1e6,
-        shareOfA: Math.min(1, areaM2 / a.areaM2),
-        shareOfB: Math.min(1, areaM2 / b.areaM2)
-      })
+      const overlap = pairOverlap(items[i]!.id, spreads[i]!, items[j]!.id, spreads[j]!)
+      if (overlap) found.push(overlap)
     }
   }
   return found
+}
+
+/** Ground that one outline shares with each of some others; `b` names the other. As `overlapsOf`, without the pairs among the others. */
+export function overlapsWith(item: { id: string, geometry: Outline }, others: readonly { id: string, geometry: Outline }[]): OutlineOverlap[] {
+  const a = spreadOf(item.geometry)
+  return others.flatMap((other) => {
+    const overlap = pairOverlap(item.id, a, other.id, spreadOf(other.geometry))
+    return overlap ? [overlap] : []
+  })
+}
+
+function pairOverlap(idA: string, a: Spread, idB: string, b: Spread): OutlineOverlap | null {
+  const areaM2 = sharedAreaM2(a, b)
+  if (areaM2 <= leastShare * Math.min(a.areaM2, b.areaM2)) return null
+  return {
+    a: idA,
+    b: idB,
+    areaKm2: areaM2 / 1e6,
+    shareOfA: Math.min(1, areaM2 / a.areaM2),
+    shareOfB: Math.min(1, areaM2 / b.areaM2)
+  }
 }
 
 /** Area that two outlines share, m² on the WGS 84 ellipsoid, by slabs of longitude in which no edge begins, ends or crosses another. */

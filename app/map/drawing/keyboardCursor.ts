@@ -26,7 +26,7 @@ const margin = 40
  * Drawing by keys on the focused map: arrows move a crosshair, Enter sets a vertex (on the first one it finishes, a second time
  * in one place too), Backspace takes the last back. While editing, Enter picks a vertex or the middle of an edge up and sets it down.
  */
-export function keyboardCursor(map: ShallowRef<Chart | null>, hands: Hands): KeyboardCursor {
+export function keyboardCursor(map: Readonly<Ref<Chart | null>>, hands: Hands): KeyboardCursor {
   const place = shallowRef<Position | null>(null)
   const onScreen = shallowRef<{ x: number, y: number } | null>(null)
   const shown = ref(false)

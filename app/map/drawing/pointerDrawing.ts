@@ -1,4 +1,4 @@
-import { onScopeDispose, watch, type ShallowRef } from 'vue'
+import { onScopeDispose, watch, type Ref } from 'vue'
 import type { Map as Chart, MapMouseEvent, MapTouchEvent } from 'maplibre-gl'
 import { toPlace, toScreen } from '../view'
 import { insertVertex, moveVertex, type Draft, type VertexPlace } from './draft'
@@ -15,7 +15,7 @@ const ends = ['mouseup', 'touchend', 'touchcancel'] as const
 interface Drag { at: VertexPlace, base: Draft, inserted: boolean, moved: boolean, from: { x: number, y: number } }
 
 /** Mouse and touch on the map: set, drag, pull out and choose vertices. The map keeps every gesture that starts beside a handle. */
-export function pointerDrawing(map: ShallowRef<Chart | null>, hands: Hands, cursor: KeyboardCursor): void {
+export function pointerDrawing(map: Readonly<Ref<Chart | null>>, hands: Hands, cursor: KeyboardCursor): void {
   let drag: Drag | null = null
   /** A click that ends a drag, or the second of a double click, sets nothing. */
   let swallow = false

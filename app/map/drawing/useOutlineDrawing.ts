@@ -1,4 +1,4 @@
-import { computed, onScopeDispose, ref, shallowRef, watch, type ShallowRef } from 'vue'
+import { computed, onScopeDispose, ref, shallowRef, watch, type Ref } from 'vue'
 import type { GeoJSONSource, Map as Chart } from 'maplibre-gl'
 import type { Outline, Position } from '#shared/types/domain'
 import { addVertex, beginRing, dropLast, emptyDraft, finishRing, removeVertex, vertexCount, type Draft, type VertexPlace } from './draft'
@@ -16,7 +16,7 @@ export type DrawingState = 'idle' | 'drawing' | 'editing'
  * the outline it makes whenever either changes, while a vertex is dragged too. `onCancel` when Escape gives the whole up.
  */
 export function useOutlineDrawing(
-  map: ShallowRef<Chart | null>,
+  map: Readonly<Ref<Chart | null>>,
   options: { onUpdate?: (draft: Draft, outline: Outline | null) => void, onCancel?: () => void } = {}
 ) {
   const active = ref(false)

@@ -2,7 +2,7 @@ import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { parseAngle } from '../../../shared/geo/parseAngle.ts'
 import { parseCoordinates } from '../../../shared/geo/parseCoordinates.ts'
-import { InputError } from '../../../shared/types/issue.ts'
+import type { InputError } from '../../../shared/types/issue.ts'
 
 const refused = (text: string): InputError => {
   try {

@@ -1,7 +1,7 @@
 import { intersect, featureCollection, polygon as turfPolygon } from '@turf/turf'
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { overlapsOf } from '../../../shared/geo/overlap.ts'
+import { overlapsOf, overlapsWith } from '../../../shared/geo/overlap.ts'
 import { spreadOf } from '../../../shared/geo/spread.ts'
 import type { Outline, Position } from '../../../shared/types/domain.ts'
 import { box, geographicLibAreaM2 } from './geodesicArea.ts'
@@ -112,6 +112,13 @@ describe('overlapsOf', () => {
       const found = overlapsOf([region('a', a), region('b', b)])[0]?.areaKm2 ?? 0
       expect(Math.abs(found - expected / 1e6)).toBeLessThan(2e-6 * spreadOf(region('a', a).geometry).areaM2 / 1e6)
     }), { numRuns: 60, seed: 7 })
+  })
+
+  it('finds the same for one against the others', () => {
+    const items = [region('a', box(0, 0, 10, 10)), region('b', box(8, 5, 20, 15)), region('c', box(15, 0, 40, 10))]
+    const pairs = overlapsOf(items)
+    expect(overlapsWith(items[0]!, items.slice(1))).toEqual(pairs.filter(pair => pair.a === 'a'))
+    expect(overlapsWith(items[1]!, [items[2]!])).toEqual(pairs.filter(pair => pair.a === 'b'))
   })
 
   it('is symmetric', () => {
