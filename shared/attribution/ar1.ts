@@ -1,4 +1,5 @@
-import { weightedLeastSquares } from '../earth/time/leastSquares.ts'
+import { cholesky, dot, orthonormal, withoutSpan, zeros } from './linearAlgebra.ts'
+import type { Matrix } from './linearAlgebra.ts'
 import type { Whitening } from './metric.ts'
 
 /** AR(1) noise of one observable: one-sigma in its unit, and correlation over one step. */
@@ -29,19 +30,26 @@ export function stepsOf(mjd: ArrayLike<number>, stepDays: number): Float64Array 
 
 /**
  * σ and φ of the AR(1) noise about a fit of some columns, by restricted likelihood (Patterson & Thompson 1971), which does not forget
- * what the columns take. φ between −0.5 and 0.995 to 1e-3.
+ * what the columns take. φ between −0.5 and 0.995 to 1e-3. Values without any noise get a σ of rounding size.
  *
  * @param lost degrees of freedom that were taken from the values before, beyond the columns
  */
 export function estimateAr1(value: Float64Array, columns: readonly Float64Array[], steps: ArrayLike<number>, lost = 0): Ar1Noise {
   const n = value.length
-  if (n < columns.length + 3) throw new RangeError(`noise of ${columns.length} columns needs at least ${columns.length + 3} values, got ${n}`)
+  const p = columns.length
+  if (n < p + 3) throw new RangeError(`noise of ${p} columns needs at least ${p + 3} values, got ${n}`)
+  // What the columns explain goes first, so that small noise on a large offset keeps its digits.
+  const rest = withoutSpan(value, orthonormal(columns))
+  const floor = 1e-12 * Math.sqrt(dot(value, value) / n)
+  if (!(dot(rest, rest) > n * floor * floor)) return { sigma: Math.max(floor, Number.MIN_VALUE ** 0.25), phi: 0 }
+  const products = laggedProducts([...columns, rest], steps)
   const at = (phi: number): { deviance: number, variance: number } => {
-    const whiten = ar1Whitening({ sigma: 1, phi }, steps)
-    const fit = weightedLeastSquares(columns.map(whiten), whiten(value))
-    let logCovariance = 0
-    for (let k = 1; k < n; k++) logCovariance += Math.log(1 - phi ** (2 * steps[k]!))
-    return { deviance: fit.degreesOfFreedom * Math.log(Math.max(fit.variance, 1e-300)) + fit.logDeterminant + logCovariance, variance: fit.variance }
+    const factor = cholesky(products.whitened(phi))
+    // The last pivot of columns and values together is what the columns leave of the values.
+    const variance = factor[p]![p]! ** 2 / (n - p)
+    let determinant = 0
+    for (let j = 0; j < p; j++) determinant += 2 * Math.log(factor[j]![j]!)
+    return { deviance: (n - p) * Math.log(variance) + determinant + products.logCovariance(phi), variance }
   }
   // Coarse grid, then golden section about its best point.
   const grid = [-0.5, -0.3, -0.1, 0.1, 0.3, 0.5, 0.65, 0.8, 0.9, 0.96, 0.99]
@@ -63,7 +71,49 @@ export function estimateAr1(value: Float64Array, columns: readonly Float64Array[
     }
   }
   const phi = (low + high) / 2
-  const degrees = n - columns.length
-  const variance = at(phi).variance * degrees / Math.max(1, degrees - lost)
+  const variance = at(phi).variance * (n - p) / Math.max(1, n - p - lost)
   return { sigma: Math.sqrt(variance), phi }
+}
+
+/**
+ * Products of columns at lag nought and one, from which those of the whitened columns follow for any φ without going through the
+ * epochs again: Σ (aₖ − φˢ aₖ₋₁)(bₖ − φˢ bₖ₋₁)/(1 − φ²ˢ), summed for each length of step s.
+ */
+function laggedProducts(columns: readonly Float64Array[], steps: ArrayLike<number>): { whitened: (phi: number) => Matrix, logCovariance: (phi: number) => number } {
+  const size = columns.length
+  const first = zeros(size)
+  const byStep = new Map<number, { count: number, here: Matrix, crossed: Matrix, before: Matrix }>()
+  for (let k = 1; k < steps.length; k++) {
+    const step = steps[k]!
+    if (!byStep.has(step)) byStep.set(step, { count: 0, here: zeros(size), crossed: zeros(size), before: zeros(size) })
+    byStep.get(step)!.count++
+  }
+  for (let i = 0; i < size; i++) {
+    for (let j = 0; j <= i; j++) {
+      const [a, b] = [columns[i]!, columns[j]!]
+      first[i]![j] = a[0]! * b[0]!
+      for (let k = 1; k < a.length; k++) {
+        const { here, crossed, before } = byStep.get(steps[k]!)!
+        here[i]![j] = here[i]![j]! + a[k]! * b[k]!
+        crossed[i]![j] = crossed[i]![j]! + a[k]! * b[k - 1]! + a[k - 1]! * b[k]!
+        before[i]![j] = before[i]![j]! + a[k - 1]! * b[k - 1]!
+      }
+    }
+  }
+  return {
+    whitened: phi => first.map((row, i) => row.map((value, j) => {
+      if (j > i) return 0
+      let sum = value
+      for (const [step, { here, crossed, before }] of byStep) {
+        const c = phi ** step
+        sum += (here[i]![j]! - c * crossed[i]![j]! + c * c * before[i]![j]!) / (1 - c * c)
+      }
+      return sum
+    })),
+    logCovariance: (phi) => {
+      let sum = 0
+      for (const [step, { count }] of byStep) sum += count * Math.log(1 - phi ** (2 * step))
+      return sum
+    }
+  }
 }
