@@ -34,6 +34,19 @@ export function parseCoordinates(text: string, options: { order?: CoordinateOrde
 }
 
 /** What a first line like `latitude, longitude` says about the order; null where it is not a header. */
+/**
+ * One place as people write it: `51.5, −0.12`, `51°30′N 0°07′W`; longitude folded to at most 180°. Latitude comes first where no letter says
+ * which is which. Throws InputError with the reason.
+ */
+export function parsePlace(text: string): Position {
+  const read = readLine(text.trim(), 'lat-lon')
+  if (typeof read === 'string') {
+    throw new InputError(`${read.charAt(0).toUpperCase()}${read.slice(1)}`, [{ value: text.trim().slice(0, 60), code: 'coordinate', message: read }])
+  }
+  const [lon, lat] = read
+  return [lon > 180 ? lon - 360 : lon < -180 ? lon + 360 : lon, lat]
+}
+
 function orderOfHeader(line: string): CoordinateOrder | null {
   const words = line.toLowerCase().split(/[\s,;]+/).map(word => word.replace(/[^a-z]/g, ''))
   const lat = words.findIndex(word => /^(lat|latitude|y|breite)$/.test(word))
