@@ -7,6 +7,8 @@ function designTokens() {
   addTemplate({ filename: 'tokens.css', getContents: cssVariables, write: true })
 }
 
+const browserTests = ['../tests/unit/app', '../tests/unit/map', '../tests/e2e']
+
 export default defineNuxtConfig({
   modules: ['@nuxtjs/tailwindcss', '@pinia/nuxt', 'nuxt-auth-utils', '@nuxt/eslint', designTokens],
   devtools: { enabled: false },
@@ -41,12 +43,13 @@ export default defineNuxtConfig({
   tailwindcss: { cssPath: false, viewer: false, exposeConfig: false },
   typescript: {
     strict: true,
-    tsConfig: { include: ['../tests/**/*', '../scripts/**/*.ts'], compilerOptions: { allowImportingTsExtensions: true } },
+    // Tests are checked beside what they test: pages and the browser's here, all others with the server below.
+    tsConfig: { include: browserTests.map(folder => `${folder}/**/*`), compilerOptions: { allowImportingTsExtensions: true } },
     sharedTsConfig: { compilerOptions: { allowImportingTsExtensions: true } },
     nodeTsConfig: { compilerOptions: { allowImportingTsExtensions: true } },
   },
   nitro: {
-    typescript: { tsConfig: { compilerOptions: { allowImportingTsExtensions: true } } },
+    typescript: { tsConfig: { include: ['../tests/**/*', '../scripts/**/*.ts'], exclude: browserTests, compilerOptions: { allowImportingTsExtensions: true } } },
     preset: 'node-server',
     compressPublicAssets: { gzip: true, brotli: false },
     routeRules: {
@@ -68,6 +71,8 @@ export default defineNuxtConfig({
       // Migrations, workers, fonts: what the server reads from disk, laid beside it.
       nitro.hooks.hook(nitro.options.dev ? 'dev:reload' : 'compiled', () => bundleRuntime(nitro))
       if (nitro.options.dev) nitro.hooks.hook('compiled', () => bundleRuntime(nitro))
+      // The contracts list types every call; types by route would draw the server's code into the pages' program.
+      nitro.hooks.hook('types:extend', (types) => { types.routes = {} })
     },
   },
 })

@@ -18,7 +18,7 @@ export class ApiProblem extends Error {
 }
 
 export type CallOptions<C> =
-  & ([ParamsOf<C>] extends [never] ? object : { params: ParamsOf<C> })
+  & ([ParamsOf<C>] extends [never] ? object : unknown extends ParamsOf<C> ? object : { params: ParamsOf<C> })
   & { query?: Partial<QueryOf<C>>, body?: [BodyOf<C>] extends [never] ? undefined : Partial<BodyOf<C>>, file?: File | Blob, fileName?: string, signal?: AbortSignal }
 
 export function apiPath(path: string, params: Record<string, unknown> = {}): string {
@@ -31,7 +31,7 @@ export function apiPath(path: string, params: Record<string, unknown> = {}): str
  * `await api('regionRead', { params: { id } })`
  */
 export function useApi() {
-  const fetcher = import.meta.server ? useRequestFetch() : $fetch
+  const fetcher: (path: string, options: object) => Promise<unknown> = import.meta.server ? useRequestFetch() as typeof $fetch : $fetch
   return async function api<K extends ContractId>(id: K, options: CallOptions<(typeof contracts)[K]> = {} as never): Promise<AnswerOf<(typeof contracts)[K]>> {
     const contract = contracts[id] as Contract
     const { params, query, body, file, fileName, signal } = options as { params?: Record<string, unknown>, query?: Record<string, unknown>, body?: unknown, file?: Blob, fileName?: string, signal?: AbortSignal }
@@ -44,7 +44,7 @@ export function useApi() {
     }
     try {
       return await fetcher(apiPath(contract.path, params), {
-        method: contract.method, query, body: sent as Record<string, unknown> | undefined, signal, retry: 0, responseType: 'json',
+        method: contract.method, query, body: sent, signal, retry: 0, responseType: 'json',
       }) as AnswerOf<(typeof contracts)[K]>
     }
     catch (error) {

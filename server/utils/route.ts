@@ -1,5 +1,4 @@
 import { and, eq } from 'drizzle-orm'
-import { clearUserSession, getUserSession, setUserSession } from '#imports'
 import { defineEventHandler, getCookie, getQuery, getRequestHeader, getRequestProtocol, getRouterParams, setResponseHeader, setResponseStatus, type H3Event } from 'h3'
 import type { ZodType } from 'zod'
 import type { AnswerOf, BodyOf, Contract, ParamsOf, QueryOf } from '#shared/api/contract'
