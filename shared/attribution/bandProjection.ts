@@ -12,7 +12,10 @@ import type { ObservedBlock } from './types.ts'
 export type FitBand = 'interannual' | 'annual' | 'all'
 
 /** Columns that belong to no group: constant and trend; then the cosines and sines of one and two cycles a year. */
-export function nuisanceColumns(mjd: ArrayLike<number>): { straight: Float64Array[], seasonal: Float64Array[] } {
+export interface NuisanceColumns { straight: Float64Array[], seasonal: Float64Array[] }
+
+/** The columns that belong to no group, on the epochs of a block. */
+export function nuisanceColumns(mjd: ArrayLike<number>): NuisanceColumns {
   const column = (fn: (t: number) => number): Float64Array => Float64Array.from(mjd, fn)
   const middle = (mjd[0]! + mjd[mjd.length - 1]!) / 2
   const wave = (cycles: number): Float64Array[] => [Math.cos, Math.sin].map(fn => column(t => fn(2 * Math.PI * cycles * julianYearsFromMjd(t))))
@@ -24,9 +27,11 @@ export function nuisanceColumns(mjd: ArrayLike<number>): { straight: Float64Arra
  * `interannual` constant and seasons are out, and the trend too with `trend: 'out'`; for `annual` the four seasonal coordinates beside a
  * constant and trend are what is left.
  */
-export function bandProjection({ mjd }: Pick<ObservedBlock, 'mjd'>, noise: Ar1Noise, stepDays: number, band: FitBand, trend: 'in' | 'out'): Whitening {
+export function bandProjection(
+  { mjd }: Pick<ObservedBlock, 'mjd'>, noise: Ar1Noise, stepDays: number, band: FitBand, trend: 'in' | 'out', nuisance: NuisanceColumns = nuisanceColumns(mjd)
+): Whitening {
   const whiten = ar1Whitening(noise, stepsOf(mjd, stepDays))
-  const { straight, seasonal } = nuisanceColumns(mjd)
+  const { straight, seasonal } = nuisance
   const level = straight.map(whiten)
   if (band === 'annual') {
     const basis = orthonormal(level)
@@ -41,7 +46,9 @@ export function bandProjection({ mjd }: Pick<ObservedBlock, 'mjd'>, noise: Ar1No
 }
 
 /** Noise of a residual of one observable about constant, trend and seasons. */
-export function residualNoise(block: Pick<ObservedBlock, 'mjd'>, residual: Float64Array, stepDays: number, lost = 0): Ar1Noise {
-  const { straight, seasonal } = nuisanceColumns(block.mjd)
+export function residualNoise(
+  block: Pick<ObservedBlock, 'mjd'>, residual: Float64Array, stepDays: number, lost = 0, nuisance: NuisanceColumns = nuisanceColumns(block.mjd)
+): Ar1Noise {
+  const { straight, seasonal } = nuisance
   return estimateAr1(residual, [...straight, ...seasonal], stepsOf(block.mjd, stepDays), lost)
 }

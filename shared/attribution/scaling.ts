@@ -1,7 +1,7 @@
 import { InputError } from '../types/issue.ts'
 import type { Ar1Noise } from './ar1.ts'
-import { bandProjection, residualNoise } from './bandProjection.ts'
-import type { FitBand } from './bandProjection.ts'
+import { bandProjection, nuisanceColumns, residualNoise } from './bandProjection.ts'
+import type { FitBand, NuisanceColumns } from './bandProjection.ts'
 import { NotPositiveError, cholesky, dot, invertCholesky, singularValues, solveCholesky, zeros } from './linearAlgebra.ts'
 import type { Matrix } from './linearAlgebra.ts'
 import { scalingSentences } from './scalingTexts.ts'
@@ -51,8 +51,9 @@ export interface Scaling {
 }
 
 export const DEFAULT_PRIOR = { mean: 1, sigma: 0.5 } as const
-/** Times that noise and factors are estimated in turn. */
-const ROUNDS = 3
+/** Times that noise and factors are estimated in turn, and movement in sigmas that ends it. */
+const ROUNDS = 4
+const SETTLED = 0.05
 
 /**
  * One factor for each group by generalised least squares with normal priors: the most probable f of d = Σ f_g s_g + e, e AR(1) noise of
@@ -70,13 +71,17 @@ export function estimateScaling(data: AttributionData, options: ScalingOptions):
   let noise: Ar1Noise[] = []
   let problem: Problem | null = null
   const known = data.blocks.every(({ quantity }) => options.noise?.[quantity])
+  const nuisance = data.blocks.map(({ mjd }) => nuisanceColumns(mjd))
   for (let round = 0; round < (known ? 1 : ROUNDS); round++) {
-    noise = data.blocks.map((block, b) => options.noise?.[block.quantity] ?? residualNoise(block, residualOf(data, b, factors), data.stepDays, lost))
-    problem = problemOf(data, priors, noise, options.band, trend)
+    noise = data.blocks.map((block, b) => options.noise?.[block.quantity] ?? residualNoise(block, residualOf(data, b, factors), data.stepDays, lost, nuisance[b]))
+    problem = problemOf(data, priors, noise, options.band, trend, nuisance)
     const solved = solve(problem, data.groups.length, scaled)
+    const before = factors
     factors = Float64Array.from(priors, (prior, g) => prior.mean + prior.sigma * solved.factors[g]!)
+    const moved = factors.reduce((most, f, g) => Math.max(most, Math.abs(f - before[g]!) / (priors[g]!.sigma * Math.sqrt(solved.posterior[g]![g]!))), 0)
     // Degrees of freedom that the groups take, an equal part from each observable.
     lost = solved.posterior.slice(0, data.groups.length).reduce((sum, row, g) => sum + 1 - row[g]!, 0) / data.blocks.length
+    if (round > 0 && moved < SETTLED) break
   }
   return conclude(data, options.band, trend, priors, noise, problem!)
 }
@@ -96,15 +101,21 @@ function priorsOf(data: AttributionData, options: ScalingOptions): { mean: numbe
   return priors
 }
 
-function residualOf(data: AttributionData, b: number, factors: Float64Array): Float64Array {
-  return data.blocks[b]!.value.map((v, k) => v - data.groups.reduce((sum, { signatures }, g) => sum + factors[g]! * signatures[b]![k]!, 0))
+/** What a block has beyond the groups times their factors, in its unit. */
+export function residualOf(data: AttributionData, b: number, factors: Float64Array): Float64Array {
+  const rest = Float64Array.from(data.blocks[b]!.value)
+  data.groups.forEach(({ signatures }, g) => {
+    const [signature, factor] = [signatures[b]!, factors[g]!]
+    for (let k = 0; k < rest.length; k++) rest[k] = rest[k]! - factor * signature[k]!
+  })
+  return rest
 }
 
-function problemOf(data: AttributionData, priors: readonly { mean: number, sigma: number }[], noise: readonly Ar1Noise[], band: FitBand, trend: 'in' | 'out'): Problem {
+function problemOf(data: AttributionData, priors: readonly { mean: number, sigma: number }[], noise: readonly Ar1Noise[], band: FitBand, trend: 'in' | 'out', nuisance: readonly NuisanceColumns[]): Problem {
   const means = Float64Array.from(priors, prior => prior.mean)
   return {
     blocks: data.blocks.map((block, b) => {
-      const project = bandProjection(block, noise[b]!, data.stepDays, band, trend)
+      const project = bandProjection(block, noise[b]!, data.stepDays, band, trend, nuisance[b])
       const columns = [
         ...data.groups.map(({ signatures }, g) => project(signatures[b]!.map(v => v * priors[g]!.sigma))),
         ...data.sources.map(({ loadings }) => project(loadings[b]!))

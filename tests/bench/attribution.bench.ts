@@ -1,6 +1,8 @@
 import { readFileSync } from 'node:fs'
 import { gunzipSync } from 'node:zlib'
 import { comparisonStatistics } from '../../shared/attribution/comparisonStatistics.ts'
+import { identifiability } from '../../shared/attribution/identifiability.ts'
+import { seriesSignatures } from '../../shared/attribution/signatures.ts'
 import { estimateScaling } from '../../shared/attribution/scaling.ts'
 import { runChain } from '../../shared/observed/chain.ts'
 import { plainChain } from '../../shared/observed/chainPlain.ts'
@@ -38,6 +40,7 @@ export function run(): Figure[] {
   return [
     { name: 'sixty years of days through a chain of six steps', value: fastest(() => plainChain(runChain(c04, chain, { corrections })), 3), unit: 'ms', note: 'limit 1000 ms' },
     { name: 'scaling of 40 groups by 3 × 600 months, noise estimated', value: fastest(() => estimateScaling(data, { band: 'interannual' })), unit: 'ms', note: 'limit 200 ms' },
+    { name: 'identifiability of 40 groups by 3 × 600 months', value: fastest(() => identifiability(seriesSignatures(data))), unit: 'ms' },
     { name: 'statistics of a comparison over 600 months', value: fastest(() => comparisonStatistics(compared)), unit: 'ms', note: 'limit 50 ms' }
   ]
 }
