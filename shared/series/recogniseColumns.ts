@@ -33,7 +33,7 @@ export interface RecognisedColumns {
 const epochName = /date|epoch|time|mjd|year|month|period|jahr|datum|fecha/i
 const beginName = /start|begin|from|since|von/i
 const endName = /(^|[^a-z])(end|stop|until|to|till|bis|through|last)([^a-z]|$)/i
-const sigmaName = /sigma|σ|±|\+\/-|err|unc|std|s\.?d\b|1s/i
+const sigmaName = /sigma|σ|±|\+\/-|err|unc|std|fehler|unsich|incert|s\.?d\b|1s/i
 const valueName = /mass|gt\b|gigaton|lwe|tws|ewh|water|storage|value|thick|anomal|mm|cm/i
 const otherName = /^(?:lat|lon|lng|id|no|nr|n|row|count|quality|flag|gap|days?|doy)(?:itude|gitude)?$|flag|quality/i
 /** Rows that a guess looks at. */

@@ -26,6 +26,11 @@ describe('columns', () => {
     expect(read.columns[3]).toMatchObject({ name: 'mass_Gt', sample: ['-3', '-4.5'] })
   })
 
+  it('does not take a German column of errors for the values', () => {
+    const read = readMassSeries('Datum;Speicher [mm];Fehler [mm]\n2004-01-15;n/a;4,0\n2004-02-15;1,5;4,0\n2004-03-15;2,5;4,0\n', { areaM2: 1e9 })
+    expect(read.chosen).toMatchObject({ valueColumn: 1, sigmaColumn: 2 })
+  })
+
   it('reads a table without header, of decimal years and blanks, under comments and a byte-order mark', () => {
     const read = readMassSeries('\uFEFF# an invented series\n#\n2004.50   10.5\n2005.50  -11\n')
     expect(read.chosen).toMatchObject({ epochFormat: 'decimal-year', delimiter: ' ', header: false, sigmaColumn: null })
