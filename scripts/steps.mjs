@@ -107,6 +107,35 @@ export async function build() {
   return true
 }
 
+const browsers = ['/usr/bin/chromium', '/usr/bin/chromium-browser', '/usr/bin/google-chrome', '/usr/bin/google-chrome-stable', '/Applications/Google Chrome.app/Contents/MacOS/Google Chrome', '/Applications/Chromium.app/Contents/MacOS/Chromium']
+
+/** Path of a Chromium: CHROMIUM_PATH, a usual place, or one that apt installs where this process may. */
+export async function chromium() {
+  const present = () => [process.env.CHROMIUM_PATH, ...browsers].find(path => path && existsSync(path))
+  if (present()) return present()
+  if (process.platform === 'linux' && process.getuid?.() === 0 && found('apt-get')) {
+    console.log('Installing Chromium through apt.')
+    const env = { DEBIAN_FRONTEND: 'noninteractive' }
+    await run('apt-get', ['update', '-q'], { env, quiet: true })
+    await run('apt-get', ['install', '-y', '-q', '--no-install-recommends', 'chromium'], { env, quiet: true })
+    if (present()) return present()
+  }
+  throw new StepError('The browser tests need Chromium, and none was found. Install it (Debian: apt-get install chromium), or name one: CHROMIUM_PATH=/path/to/chromium npm test')
+}
+
+/** The programs that read a report back in its tests; installed through apt where this process may. */
+export async function poppler() {
+  const missing = () => ['pdftotext', 'pdftoppm', 'pdffonts', 'pdfimages'].filter(program => spawnSync(program, ['-v'], { stdio: 'ignore' }).error)
+  if (!missing().length) return
+  if (process.platform === 'linux' && process.getuid?.() === 0 && found('apt-get')) {
+    console.log('Installing poppler-utils through apt.')
+    const env = { DEBIAN_FRONTEND: 'noninteractive' }
+    await run('apt-get', ['update', '-q'], { env, quiet: true })
+    await run('apt-get', ['install', '-y', '-q', '--no-install-recommends', 'poppler-utils'], { env, quiet: true })
+  }
+  if (missing().length) throw new StepError(`The tests of the PDF report need ${missing().join(', ')}. Install them (Debian: apt-get install poppler-utils) and run npm test again.`)
+}
+
 /** Prints a failure the way people can use it and ends the process. */
 export function fail(error) {
   console.error(error instanceof StepError ? `\n${error.message}` : error)
