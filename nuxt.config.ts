@@ -28,7 +28,6 @@ export default defineNuxtConfig({
     dataDir: '.data',
     // 'auto': the demo is seeded into an empty database on a loopback host; 'off' never.
     demo: 'auto',
-    maxUploadBytes: 32 * 1024 * 1024,
   },
   app: {
     head: {
