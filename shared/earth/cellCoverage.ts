@@ -9,13 +9,16 @@ export interface CellGrid { latEdgesDeg: Float64Array, columns: number }
  * Fraction of every cell that a set of rings covers, row by row from the south, exact for edges straight in longitude and
  * geodetic latitude: each piece of edge inside a cell takes off what lies south of it, in equal area of the sphere.
  * Rings are summed with their sign; overlapping rings count twice.
+ *
+ * @param zoneArea area between the equator and a geodetic latitude (degrees), in any unit; default that of the sphere, sin ψ
  */
-export function cellCoverage(rings: readonly ContourRing[], grid: CellGrid): Float64Array {
+export function cellCoverage(rings: readonly ContourRing[], grid: CellGrid, zoneArea?: (latDeg: number) => number): Float64Array {
   const rows = grid.latEdgesDeg.length - 1
   const { columns } = grid
   const width = 360 / columns
-  const sinEdges = grid.latEdgesDeg.map(lat => Math.sin(geocentricFromGeodeticDeg(lat) * DEGREE))
-  /** Area inside the row of the edge, sr. */
+  const zoneEdges = grid.latEdgesDeg.map(zoneArea ?? (lat => Math.sin(geocentricFromGeodeticDeg(lat) * DEGREE)))
+  const zoneAt = zoneArea ?? sineAt
+  /** Area inside the row of the edge, in the unit of the zones. */
   const area = new Float64Array(rows * columns)
   /** Longitude (rad) by which an edge of this row passes over every row south of it. */
   const over = new Float64Array(rows * columns)
@@ -28,7 +31,7 @@ export function cellCoverage(rings: readonly ContourRing[], grid: CellGrid): Flo
         const row = rowOf(grid.latEdgesDeg, (lat0 + lat1) / 2)
         const column = modulo(Math.floor(((lon0 + lon1) / 2 + 180) / width), columns)
         const dLon = (lon1 - lon0) * DEGREE
-        area[row * columns + column]! -= factor * (meanSine(lat0, lat1) - sinEdges[row]!) * dLon
+        area[row * columns + column]! -= factor * (meanZone(lat0, lat1, zoneAt) - zoneEdges[row]!) * dLon
         over[row * columns + column]! -= factor * dLon
       })
     }
@@ -37,7 +40,7 @@ export function cellCoverage(rings: readonly ContourRing[], grid: CellGrid): Flo
   for (let column = 0; column < columns; column++) {
     let passing = everywhere * width * DEGREE
     for (let row = rows - 1; row >= 0; row--) {
-      const height = sinEdges[row + 1]! - sinEdges[row]!
+      const height = zoneEdges[row + 1]! - zoneEdges[row]!
       const k = row * columns + column
       fraction[k] = (area[k]! + passing * height) / (height * width * DEGREE)
       passing += over[k]!
@@ -81,11 +84,11 @@ export function rowOf(latEdges: Float64Array, lat: number): number {
   return low
 }
 
-/** Mean of sin ψ between two geodetic latitudes, three-point Gauss. */
-function meanSine(lat0: number, lat1: number): number {
+/** Mean of a zone's area between two geodetic latitudes, three-point Gauss. */
+function meanZone(lat0: number, lat1: number, zoneAt: (latDeg: number) => number): number {
   const middle = (lat0 + lat1) / 2
   const reach = (lat1 - lat0) / 2 * Math.sqrt(3 / 5)
-  return (5 * sineAt(middle - reach) + 8 * sineAt(middle) + 5 * sineAt(middle + reach)) / 18
+  return (5 * zoneAt(middle - reach) + 8 * zoneAt(middle) + 5 * zoneAt(middle + reach)) / 18
 }
 
 function sineAt(latDeg: number): number {
