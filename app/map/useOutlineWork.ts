@@ -24,18 +24,24 @@ export function useOutlineWork({ drawing, save, regions, workspace, blank, store
   const active = computed(() => drawing.state.value !== 'idle')
   /** What was given, to be stored as it came unless it is changed. */
   const given = shallowRef<{ draft: Draft, outline: Outline } | null>(null)
+  /** Left from an earlier visit, or just discarded here: can be taken up again. */
   const kept = shallowRef<KeptOutline | null>(null)
+  const discarded = ref(false)
 
   const outline = computed(() => given.value?.draft === drawing.draft.value ? given.value.outline : drawing.outline.value)
   const changed = computed(() => active.value && (region.value === null ? drawing.vertexCount.value > 0 : given.value?.draft !== drawing.draft.value))
   const ready = computed(() => outline.value !== null && drawing.fault.value === null && (drawing.state.value === 'editing' || drawing.canFinish.value))
 
+  const record = (): KeptOutline => ({
+    version: 1, region: region.value, draft: drawing.draft.value, form: region.value ? null : form.value, at: new Date().toISOString(),
+  })
   const begin = (of: RegionItem | null, take: () => void, source: Outline | null): void => {
     save.clear()
     region.value = of && { id: of.id, revision: of.revision, name: of.name }
     if (!of) form.value = blank()
     take()
     given.value = source && { draft: drawing.draft.value, outline: source }
+    kept.value = null
   }
   const close = (): void => {
     drawing.close()
@@ -62,7 +68,7 @@ export function useOutlineWork({ drawing, save, regions, workspace, blank, store
   const keep = (): void => {
     const id = workspace()
     if (!id || !changed.value) return
-    keepOutline(id, { version: 1, region: region.value, draft: drawing.draft.value, form: region.value ? null : form.value, at: new Date().toISOString() })
+    keepOutline(id, record())
   }
   watch([drawing.draft, form], () => {
     clearTimeout(timer)
@@ -71,6 +77,7 @@ export function useOutlineWork({ drawing, save, regions, workspace, blank, store
   onMounted(() => {
     const id = workspace()
     kept.value = id ? keptOutline(id) : null
+    discarded.value = false
     window.addEventListener('pagehide', keep)
   })
   onBeforeUnmount(() => {
@@ -92,7 +99,7 @@ export function useOutlineWork({ drawing, save, regions, workspace, blank, store
   })
 
   return {
-    active, region, form, outline, changed, ready, overlaps, kept,
+    active, region, form, outline, changed, ready, overlaps, kept, discarded,
     draw: () => begin(null, drawing.start, null),
     edit: (item: RegionItem) => begin(item, () => drawing.edit(item.geometry as Outline), item.geometry as Outline),
     bring: (source: Outline, name: string) => {
@@ -109,8 +116,15 @@ export function useOutlineWork({ drawing, save, regions, workspace, blank, store
       drawing.resume(left.draft)
       kept.value = null
     },
+    /** Drops what was left from an earlier visit. */
     forget: close,
-    discard: close,
+    /** Puts the outline away; until the page is left it can be taken up again. */
+    discard: () => {
+      const last = changed.value && drawing.vertexCount.value > 0 ? record() : null
+      close()
+      kept.value = last
+      discarded.value = last !== null
+    },
     store,
   }
 }

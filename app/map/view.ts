@@ -9,6 +9,12 @@ const cameraHeights = 1.5
 /** Part of the smaller side of the map that what is shown may fill. */
 const fill = 0.43
 
+/** The map's size in pixels; one pixel while the page has no room for it, so that nothing divides by zero. */
+function sizeOf(map: Chart): { width: number, height: number } {
+  const { clientWidth, clientHeight } = map.getContainer()
+  return { width: Math.max(1, clientWidth), height: Math.max(1, clientHeight) }
+}
+
 /** Radius of the globe itself in pixels, seen from far away, at a zoom and centre latitude. */
 function globeRadius(zoom: number, latitudeDeg: number): number {
   return tilePixels * 2 ** zoom / (2 * Math.PI * Math.cos(latitudeDeg * Math.PI / 180))
@@ -18,19 +24,23 @@ function globeRadius(zoom: number, latitudeDeg: number): number {
 export function limbRadius(map: Chart): number | null {
   if (map.getProjection()?.type !== 'globe') return null
   const radius = globeRadius(map.getZoom(), map.getCenter().lat)
-  const camera = cameraHeights * map.getContainer().clientHeight
+  const camera = cameraHeights * sizeOf(map).height
   const distance = camera + radius
   return camera * radius / Math.sqrt(distance * distance - radius * radius)
 }
 
-/** Zoom at which the whole globe fits the map, with a margin. */
-export function wholeGlobeZoom(map: Chart): number {
-  const { clientWidth, clientHeight } = map.getContainer()
-  const wanted = Math.min(clientWidth, clientHeight) * 0.465
-  const camera = cameraHeights * clientHeight
+function wholeGlobeZoom(map: Chart): number {
+  const { width, height } = sizeOf(map)
+  const wanted = Math.min(width, height) * 0.465
+  const camera = cameraHeights * height
   // limb = c r / √((c + r)² − r²) solved for r.
   const radius = wanted * (wanted + Math.hypot(wanted, camera)) / camera
   return Math.log2(radius * 2 * Math.PI * Math.cos(map.getCenter().lat * Math.PI / 180) / tilePixels)
+}
+
+/** Zoom at which the whole Earth is in view: the globe with a margin, the flat map from edge to edge. */
+export function wholeZoom(map: Chart): number {
+  return map.getProjection()?.type === 'globe' ? wholeGlobeZoom(map) : Math.log2(sizeOf(map).width / tilePixels)
 }
 
 /** The longitude's copy that is nearest to the middle of the map. */
@@ -43,7 +53,7 @@ function isHidden(map: Chart, place: Position): boolean {
   if (map.getProjection()?.type !== 'globe') return false
   const { lng, lat } = map.getCenter()
   const radius = globeRadius(map.getZoom(), lat)
-  const edgeDeg = Math.acos(radius / (radius + cameraHeights * map.getContainer().clientHeight)) * 180 / Math.PI
+  const edgeDeg = Math.acos(radius / (radius + cameraHeights * sizeOf(map).height)) * 180 / Math.PI
   return arcDeg([lng, lat], place) > edgeDeg
 }
 
@@ -59,8 +69,8 @@ export function toScreen(map: Chart, place: Position): { x: number, y: number } 
 export function toPlace(map: Chart, point: { x: number, y: number }): Position | null {
   const radius = limbRadius(map)
   if (radius !== null) {
-    const { clientWidth, clientHeight } = map.getContainer()
-    if (Math.hypot(point.x - clientWidth / 2, point.y - clientHeight / 2) > radius - 1) return null
+    const { width, height } = sizeOf(map)
+    if (Math.hypot(point.x - width / 2, point.y - height / 2) > radius - 1) return null
   }
   const { lng, lat } = map.unproject([point.x, point.y])
   return [lng - 360 * Math.floor((lng + 180) / 360), Math.max(-90, Math.min(90, lat))]
@@ -80,10 +90,11 @@ export function viewOf(map: Chart, outlines: readonly Outline[]): { center: Posi
   const latitude = Math.atan2(sum[2]!, Math.hypot(sum[0]!, sum[1]!)) * 180 / Math.PI
   const center: Position = [Math.atan2(sum[1]!, sum[0]!) * 180 / Math.PI, Math.max(-80, Math.min(80, latitude))]
   const reach = Math.max(1, ...places.map(place => arcDeg(center, place)))
-  const { clientWidth, clientHeight } = map.getContainer()
-  const whole = wholeGlobeZoom(map) + Math.log2(Math.cos(center[1] * Math.PI / 180) / Math.cos(map.getCenter().lat * Math.PI / 180))
+  const { width, height } = sizeOf(map)
+  const globe = map.getProjection()?.type === 'globe'
+  const whole = wholeZoom(map) + (globe ? Math.log2(Math.cos(center[1] * Math.PI / 180) / Math.cos(map.getCenter().lat * Math.PI / 180)) : 0)
   if (reach > 60) return { center, zoom: whole }
-  const radius = fill * Math.min(clientWidth, clientHeight) / Math.sin(reach * Math.PI / 180)
+  const radius = fill * Math.min(width, height) / Math.sin(reach * Math.PI / 180)
   const zoom = Math.log2(radius * 2 * Math.PI * Math.cos(center[1] * Math.PI / 180) / tilePixels)
   return { center, zoom: Math.min(6.5, Math.max(whole, zoom - 0.6)) }
 }

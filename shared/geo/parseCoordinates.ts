@@ -18,11 +18,12 @@ export function parseCoordinates(text: string, options: { order?: CoordinateOrde
   const ring: Position[] = []
   for (const { row, line } of lines) {
     const read = readLine(line, order)
-    if (typeof read === 'string') issues.push({ row, value: line.slice(0, 60), code: 'coordinate', message: `Row ${row}: ${read}` })
+    if (typeof read === 'string') issues.push({ row, value: line.slice(0, 60), code: 'coordinate', message: read })
     else ring.push(read)
   }
   if (issues.length > 0) {
-    throw new InputError(issues.length === 1 ? issues[0]!.message : `${issues.length} rows do not read as coordinates.`, issues.slice(0, 50))
+    const [first] = issues
+    throw new InputError(issues.length === 1 ? `Row ${first!.row}: ${first!.message}` : `${issues.length} rows do not read as coordinates.`, issues.slice(0, 50))
   }
   const [first, last] = [ring[0], ring.at(-1)]
   if (first && last && ring.length > 1 && first[0] === last[0] && first[1] === last[1]) ring.pop()
@@ -33,7 +34,6 @@ export function parseCoordinates(text: string, options: { order?: CoordinateOrde
   return { ring: [...ring, ring[0]!], order }
 }
 
-/** What a first line like `latitude, longitude` says about the order; null where it is not a header. */
 /**
  * One place as people write it: `51.5, −0.12`, `51°30′N 0°07′W`; longitude folded to at most 180°. Latitude comes first where no letter says
  * which is which. Throws InputError with the reason.
@@ -47,6 +47,7 @@ export function parsePlace(text: string): Position {
   return [lon > 180 ? lon - 360 : lon < -180 ? lon + 360 : lon, lat]
 }
 
+/** What a first line like `latitude, longitude` says about the order; null where it is not a header. */
 function orderOfHeader(line: string): CoordinateOrder | null {
   const words = line.toLowerCase().split(/[\s,;]+/).map(word => word.replace(/[^a-z]/g, ''))
   const lat = words.findIndex(word => /^(lat|latitude|y|breite)$/.test(word))
@@ -56,15 +57,15 @@ function orderOfHeader(line: string): CoordinateOrder | null {
 
 function readLine(line: string, order: CoordinateOrder): Position | string {
   const pair = splitPair(line)
-  if (!pair) return 'two coordinates are wanted, like “51.5, −0.12” or “51°30′N 0°07′W”.'
+  if (!pair) return 'Two coordinates are wanted, like “51.5, −0.12” or “51°30′N 0°07′W”.'
   const axes = assign(pair, order)
-  if (!axes) return 'both coordinates carry a letter of the same kind.'
+  if (!axes) return 'Both coordinates carry a letter of the same kind.'
   const { lat, lon } = axes
   if (Math.abs(lat) > 90) {
     const swapped = Math.abs(lon) <= 90 && pair.every(angle => angle.axis === null)
-    return `latitude ${String(lat).replace('-', '\u2212')}° is outside −90° to 90°.${swapped ? ' Is the order longitude, latitude?' : ''}`
+    return `Latitude ${String(lat).replace('-', '\u2212')}° is outside −90° to 90°.${swapped ? ' Is the order longitude, latitude?' : ''}`
   }
-  if (Math.abs(lon) > 360) return `longitude ${String(lon).replace('-', '\u2212')}° is more than a whole turn.`
+  if (Math.abs(lon) > 360) return `Longitude ${String(lon).replace('-', '\u2212')}° is more than a whole turn.`
   return [lon, lat]
 }
 

@@ -52,15 +52,26 @@ function joined(places: readonly Position[]): Position[] {
 
 /** Straight edges cut into steps of a degree, so that the globe does not shorten them; dense ones stay as they are. */
 function withDenseSteps(positions: readonly Position[]): Position[] {
-  const path: Position[] = [positions[0]!]
-  for (const [lon, lat] of positions.slice(1)) {
+  const { lonDeg, latDeg } = pathOf(positions)
+  const path: Position[] = [[lonDeg[0]!, latDeg[0]!]]
+  for (let k = 1; k < lonDeg.length; k++) {
     const [fromLon, fromLat] = path.at(-1)!
-    const raw = lon - fromLon
-    const step = Math.abs(raw) <= 180 || Math.abs(raw) === 360 ? raw : raw - 360 * Math.round(raw / 360)
-    const pieces = Math.max(1, Math.ceil(Math.max(Math.abs(step), Math.abs(lat - fromLat)) - 1e-9))
-    for (let k = 1; k <= pieces; k++) path.push([fromLon + step * k / pieces, fromLat + (lat - fromLat) * k / pieces])
+    const [dLon, dLat] = [lonDeg[k]! - fromLon, latDeg[k]! - fromLat]
+    const pieces = Math.max(1, Math.ceil(Math.max(Math.abs(dLon), Math.abs(dLat)) - 1e-9))
+    for (let p = 1; p <= pieces; p++) path.push([fromLon + dLon * p / pieces, fromLat + dLat * p / pieces])
   }
   return path
+}
+
+/** Longitudes that run on from place to place, the short way unless an edge is a full turn. */
+function pathOf(positions: readonly Position[]): { lonDeg: number[], latDeg: number[] } {
+  const lonDeg = [positions[0]![0]]
+  for (let k = 1; k < positions.length; k++) {
+    const raw = positions[k]![0] - positions[k - 1]![0]
+    const step = Math.abs(raw) <= 180 || Math.abs(raw) === 360 ? raw : raw - 360 * Math.round(raw / 360)
+    lonDeg.push(lonDeg[k - 1]! + step)
+  }
+  return { lonDeg, latDeg: positions.map(([, lat]) => lat) }
 }
 
 function handleFeatures({ draft, chosen }: Shown): Feature[] {

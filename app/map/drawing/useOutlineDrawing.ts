@@ -13,7 +13,7 @@ export type DrawingState = 'idle' | 'drawing' | 'editing'
 
 /**
  * Drawing and editing an outline on a map, by mouse, touch or keyboard, on the globe and flat. `onUpdate` is called with the draft and
- * the outline it makes whenever either changes, while a vertex is dragged too. `onCancel` when Escape gives the whole up.
+ * the outline it makes whenever either changes, while a vertex is dragged too. `onCancel` when Escape gives up an outline that holds no work.
  */
 export function useOutlineDrawing(
   map: Readonly<Ref<Chart | null>>,
@@ -51,11 +51,13 @@ export function useOutlineDrawing(
     set(finishRing(draft.value))
     pointer.value = chosen.value = null
   }
+  /** One thing at a time, each of which can be undone: a drag, a choice, the ring under way. Gives the whole up only while nothing is done. */
   const escape = (): void => {
     if (underway.value) underway.value = null
     else if (chosen.value) chosen.value = null
-    else if (draft.value.open && draft.value.rings.length > 1) set(finishRing({ ...draft.value, rings: [...draft.value.rings.slice(0, -1), []] }))
-    else options.onCancel?.()
+    else if (draft.value.open && (draft.value.rings.at(-1)?.length ?? 0) > 0) set(beginRing({ ...draft.value, rings: draft.value.rings.slice(0, -1) }))
+    else if (draft.value.open && draft.value.rings.length > 1) set(finishRing(draft.value))
+    else if (history.value.past.length === 0 || vertexCount(draft.value) === 0) options.onCancel?.()
   }
   const remove = (): void => {
     if (draft.value.open) set(dropLast(draft.value))

@@ -72,9 +72,10 @@ describe('parseCoordinates', () => {
   it('lists every bad row with its number and reason', () => {
     const error = refused('40, -10\nforty, ten\n\n100, 20\n40N 41N\n12, 400\n1 2 3')
     expect(error.issues.map(issue => issue.row)).toEqual([2, 4, 5, 6, 7])
-    expect(error.issues[1]!.message).toBe('Row 4: latitude 100° is outside −90° to 90°. Is the order longitude, latitude?')
+    expect(error.issues[1]!.message).toBe('Latitude 100° is outside −90° to 90°. Is the order longitude, latitude?')
     expect(error.issues[2]!.message).toContain('letter of the same kind')
     expect(error.issues[3]!.message).toContain('more than a whole turn')
+    expect(refused('1, 2\n3, x\n4, 5').message).toMatch(/^Row 2: Two coordinates are wanted/)
     expect(error.message).toBe('5 rows do not read as coordinates.')
   })
 

@@ -4,6 +4,7 @@ import { checkOutline, limits, readOutline, readOutlineFile, readOutlines, requi
 import type { Position } from '../../../shared/types/domain.ts'
 import { InputError, type Issue } from '../../../shared/types/issue.ts'
 import { box } from './geodesicArea.ts'
+import { cpuMilliseconds } from '../../support/cpuTime.ts'
 
 const polygon = (...coordinates: unknown[]): unknown => ({ type: 'Polygon', coordinates })
 const feature = (geometry: unknown, properties: unknown = {}): unknown => ({ type: 'Feature', properties, geometry })
@@ -79,11 +80,11 @@ describe('readOutline', () => {
 
   it('refuses a million vertices with 413 before any deep work', () => {
     const ring = Array.from({ length: 1_000_001 }, (_, k): Position => [k % 2, k])
-    const start = performance.now()
-    const error = refused(polygon(ring))
-    expect(error.status).toBe(413)
-    expect(codes(error.issues)).toEqual(['too-many-vertices'])
-    expect(performance.now() - start).toBeLessThan(500)
+    expect(cpuMilliseconds(() => {
+      const error = refused(polygon(ring))
+      expect(error.status).toBe(413)
+      expect(codes(error.issues)).toEqual(['too-many-vertices'])
+    })).toBeLessThan(500)
     expect(refused(`{"type":"Polygon","coordinates":[[${'[0,0],'.repeat(1_500_000)}[0,0]]]}`).status).toBe(413)
     expect(codes(checkOutline(polygon(ring)))).toEqual(['too-many-vertices'])
   })
@@ -191,17 +192,13 @@ describe('checkOutline', () => {
       const radius = 20 + 3 * Math.sin(500 * angle)
       return [radius * Math.cos(angle), radius * Math.sin(angle)]
     })
-    const start = performance.now()
-    expect(checkOutline(polygon([...ring, ring[0]]))).toEqual([])
-    expect(performance.now() - start).toBeLessThan(5000)
+    expect(cpuMilliseconds(() => expect(checkOutline(polygon([...ring, ring[0]]))).toEqual([]))).toBeLessThan(5000)
   })
 
   it('gives up on a tangle rather than hold the server', () => {
     const comb = Array.from({ length: 90_000 }, (_, k): Position => [-60 + k * 0.001 + (k % 2 ? 30 : 0), k % 2 ? 30 : -60])
     const ring = [...comb, [70, 40], [70, -80], [-61, -80], comb[0]]
-    const start = performance.now()
-    expect(codes(checkOutline(polygon(ring)))).toEqual(['too-intricate'])
-    expect(performance.now() - start).toBeLessThan(6000)
+    expect(cpuMilliseconds(() => expect(codes(checkOutline(polygon(ring)))).toEqual(['too-intricate']))).toBeLessThan(6000)
   })
 
   it('throws from requireOutline what it finds, in one sentence', () => {
