@@ -6,7 +6,7 @@ import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
 import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
-  agency, edition, geometry, jobView, limits, listOf, massColumns, me, name, observedData, observedSummary, overlap, page, perGt, prose,
+  agency, edition, geometry, jobView, limits, listOf, massColumns, massConversion, me, name, observedData, observedSummary, overlap, page, perGt, prose,
   region, regionKind, regionTotal, revision, role, runSummary, scenario, scenarioDraft, sha256, trendSummary, ulid, versionSummary,
 } from './schemas.ts'
 
@@ -157,7 +157,7 @@ export const contracts = {
   seriesCreate: contract({
     id: 'seriesCreate', method: 'POST', path: '/api/v1/regions/{id}/series', action: 'region.write', summary: 'Store a new version of a region’s mass series', params: byId, bodyType: 'multipart',
     body: versionFacts.extend({
-      columns: massColumns, leaveOutBadRows: z.boolean().default(false),
+      columns: massColumns, conversion: massConversion.nullable().default(null), leaveOutBadRows: z.boolean().default(false),
       sharedRates: z.array(z.object({ source: name, sigmaGtPerYear: z.number().min(0) })).max(20).default([]),
     }),
     answer: versionSummary, status: 201, maxBytes: limits.originalBytes,
@@ -244,6 +244,10 @@ export const contracts = {
   regionSeaLevel: contract({
     id: 'regionSeaLevel', method: 'GET', path: '/api/v1/regions/{id}/sea-level', action: 'region.read', summary: 'Where the sea rises and falls for 100 Gt lost by a region', params: byId,
     query: seaLevelQuery, answer: seaLevelAnswer,
+  }),
+  regionSeaLevelCsv: contract({
+    id: 'regionSeaLevelCsv', method: 'GET', path: '/api/v1/regions/{id}/sea-level.csv', action: 'region.read', summary: 'The same as a grid in CSV', params: byId,
+    query: seaLevelQuery, answer: bytes, answerType: 'text/csv',
   }),
 
   // Publication

@@ -28,7 +28,7 @@ export interface SeaLevelSentence {
 }
 
 /** Most regions that the sentence names. */
-const most = 3
+const most = 2
 
 /** What the map says, in one sentence made of its own figures. */
 export function seaLevelSentence({ subject, facts, unit, sigma, only }: SeaLevelSentence): string {
@@ -43,8 +43,8 @@ export function seaLevelSentence({ subject, facts, unit, sigma, only }: SeaLevel
   const top = rises ? highest : lowest
   const error = sigma !== null && sigma > 0
   const mid = `to ${verb} by ${formatMeasured(Math.abs(mean), sigma, { signed: false, significant: 3, unit }).text} on average${error ? ' (1σ)' : ''}`
-  const beside = against.slice(0, most).map(({ name, reachKm }) => `about ${formatNumber(Math.max(100, Math.round(reachKm / 100) * 100))}${hardSpace}km from ${name === only ? 'it' : name}`)
-  const turn = beside.length ? `, to ${opposite} as far as ${listed(beside)}` : ''
+  const beside = against.slice(0, most).map(({ name, reachKm }) => `${formatNumber(Math.max(100, Math.round(reachKm / 100) * 100))}${hardSpace}km from ${name === only ? 'it' : name}`)
+  const turn = beside.length ? `, to ${opposite} as far as about ${listed(beside)}` : ''
   return `${subject} the sea is calculated ${mid}${turn}, and to ${verb} most, by ${size(top.value)}, ${near(top)}.`
 }
 

@@ -163,6 +163,10 @@ const steps: Step[] = [
   { route: 'jobCancel', case: 'of another', rule: 'othersRow', make: () => ({ params: { id: shared.jobId } }) },
   { route: 'runRead', rule: 'science', make: () => ({ params: { id: shared.runId } }) },
   { route: 'runComparison', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { observed: shared.observed } }) },
+  { route: 'runSeaLevel', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { step: 5 } }) },
+  { route: 'runSeaLevelCsv', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { step: 5 } }) },
+  { route: 'regionSeaLevel', rule: 'science', make: () => ({ params: { id: shared.liquid }, query: { step: 5 } }) },
+  { route: 'regionSeaLevelCsv', rule: 'science', make: () => ({ params: { id: shared.liquid }, query: { step: 5 } }) },
   { route: 'runFile', rule: 'export', make: () => ({ params: { id: shared.runId, file: 'budget.csv' } }) },
 
   { route: 'editionList', rule: 'members', make: () => ({ params: workspace() }) },

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { comparisonStatistics, comparisonTrends } from '../../../shared/attribution/comparisonStatistics.ts'
 import { bestLag, correlationOf, lagOne } from '../../../shared/attribution/correlation.ts'
-import { bandVariance } from '../../../shared/attribution/spectra.ts'
+import { bandVariance, periodogramOf } from '../../../shared/attribution/spectra.ts'
 import { ar1Noise, monthMiddles, normals } from './series.ts'
 
 const mjd = monthMiddles(360)
@@ -11,11 +11,13 @@ const times = (k: number, x: number[]): number[] => x.map(v => k * v)
 
 describe('bands', () => {
   it('keep the variance of a wave in its own band', () => {
-    const variance = (x: number[], low: number, high: number): number => bandVariance([x], low / 12, high / 12)
+    const variance = (x: number[], low: number, high: number): number => bandVariance(periodogramOf([x]), low / 12, high / 12)
     expect(variance(wave(12), 0.74, 1.35)).toBeCloseTo(0.5, 2)
     expect(variance(wave(12), 1 / 8, 0.74)).toBeLessThan(1e-4)
     expect(variance(wave(40), 1 / 8, 0.74)).toBeCloseTo(0.5, 2)
     expect(variance(wave(180), 0, 1 / 8)).toBeGreaterThan(0.4)
+    // All of it is somewhere.
+    expect(variance(wave(7.3), 0, 6.1)).toBeCloseTo(0.5, 2)
     // Straight lines are taken off first.
     expect(variance(mjd.map((_, i) => i), 0, 1 / 8)).toBeLessThan(1e-12)
   })
