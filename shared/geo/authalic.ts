@@ -3,8 +3,8 @@ import { zoneAreaM2 } from '../earth/latitude.ts'
 import type { RingPath } from '../earth/rings.ts'
 
 // Six-point Gauss–Legendre rule on [0, 1]: 1e-13 relative over a quarter of a meridian.
-const nodes = [0.033_765_242_898_423_99, 0.169_395_306_766_867_74, 0.380_690_406_958_401_55]
-const weights = [0.085_662_246_189_585_17, 0.180_380_786_524_069_3, 0.233_956_967_286_345_52]
+const nodes = [0.033_765_242_898_424, 0.169_395_306_766_867_7, 0.380_690_406_958_401_5]
+const weights = [0.085_662_246_189_585_2, 0.180_380_786_524_069_3, 0.233_956_967_286_345_5]
 
 /**
  * Area between the equator and an edge that is straight in longitude and latitude, m² on the WGS 84 ellipsoid, signed by the

@@ -1,8 +1,8 @@
 /** The first place where a text stops being JSON (RFC 8259): 1-based line and column, and what stands there. */
 export interface JsonFault { line: number, column: number, found: string }
 
-const scalar = /-?(?:0|[1-9]\d*)(?:\.\d+)?(?:[eE][+-]?\d+)?|true|false|null|"(?:[^"\\\u0000-\u001F]|\\(?:["\\/bfnrt]|u[0-9a-fA-F]{4}))*"/y
-const text = /"(?:[^"\\\u0000-\u001F]|\\(?:["\\/bfnrt]|u[0-9a-fA-F]{4}))*"/y
+const plain = /-?(?:0|[1-9]\d*)(?:\.\d+)?(?:[eE][+-]?\d+)?|true|false|null/y
+const quoted = /"(?:[^"\\]|\\(?:["\\/bfnrt]|u[0-9a-fA-F]{4}))*"/y
 const space = /[ \t\n\r]*/y
 
 /** Null where the text is JSON. Browsers and Node word `JSON.parse` errors differently, often without a place; this is the same everywhere. */
@@ -24,6 +24,18 @@ function faultOffset(source: string): number | null {
     at = pattern.lastIndex
     return true
   }
+  /** A string; line ends, tabs and other control characters must be escaped in one. */
+  const text = (): boolean => {
+    const start = at
+    if (!match(quoted)) return false
+    for (let k = start; k < at; k++) {
+      if (source.charCodeAt(k) < 32) {
+        at = k
+        return false
+      }
+    }
+    return true
+  }
   const sign = (character: string): boolean => {
     match(space)
     if (source[at] !== character) return false
@@ -32,7 +44,7 @@ function faultOffset(source: string): number | null {
   }
   const key = (): boolean => {
     match(space)
-    return match(text) && sign(':')
+    return text() && sign(':')
   }
   // The open brackets; a loop and not recursion, so that deep nesting cannot exhaust the stack.
   const open: string[] = []
@@ -51,7 +63,7 @@ function faultOffset(source: string): number | null {
         continue
       }
     }
-    else if (!match(scalar)) {
+    else if (!match(plain) && !text()) {
       return at
     }
     while (open.length > 0 && sign(open.at(-1)!)) open.pop()

@@ -58,6 +58,7 @@ describe('readOutline', () => {
   it('says where a text stops being JSON', () => {
     expect(refused('{"type": "Polygon",\n "coordinates": [[[0, 0] [1, 1]]]}').message).toContain('Line 2, column 26: “[1, 1]]]}” was not expected there.')
     expect(refused('{"type": "Polygon"').message).toContain('the end of the text')
+    expect(refused('{"type": "Poly\ngon"}').message).toContain('Line 1, column 15')
     expect(refused('  ').issues).toEqual([expect.objectContaining({ code: 'empty' })])
   })
 
