@@ -14,18 +14,25 @@ const PHI_RANGE = [-0.5, 0.995] as const
 export function ar1Whitening({ sigma, phi }: Ar1Noise, steps: ArrayLike<number>): Whitening {
   if (!(sigma > 0) || !(Math.abs(phi) < 1)) throw new RangeError(`sigma must be positive and phi between −1 and 1, got ${sigma} and ${phi}`)
   const n = steps.length
-  const carried = Float64Array.from(steps, s => phi ** s)
-  const scale = carried.map(c => 1 / (sigma * Math.sqrt(1 - c * c)))
+  const carried = new Float64Array(n)
+  const scale = new Float64Array(n)
+  for (let k = 0; k < n; k++) {
+    carried[k] = phi ** steps[k]!
+    scale[k] = 1 / (sigma * Math.sqrt(1 - carried[k]! ** 2))
+  }
   return (x) => {
     const out = new Float64Array(n)
-    for (let k = 0; k < n; k++) out[k] = k === 0 ? x[0]! / sigma : (x[k]! - carried[k]! * x[k - 1]!) * scale[k]!
+    out[0] = x[0]! / sigma
+    for (let k = 1; k < n; k++) out[k] = (x[k]! - carried[k]! * x[k - 1]!) * scale[k]!
     return out
   }
 }
 
 /** Whole steps between epochs that lie on a regular grid, 1 for the first; at least 1. */
 export function stepsOf(mjd: ArrayLike<number>, stepDays: number): Float64Array {
-  return Float64Array.from({ length: mjd.length }, (_, k) => k === 0 ? 1 : Math.max(1, Math.round((mjd[k]! - mjd[k - 1]!) / stepDays)))
+  const steps = new Float64Array(mjd.length).fill(1)
+  for (let k = 1; k < steps.length; k++) steps[k] = Math.max(1, Math.round((mjd[k]! - mjd[k - 1]!) / stepDays))
+  return steps
 }
 
 /**
@@ -82,21 +89,29 @@ export function estimateAr1(value: Float64Array, columns: readonly Float64Array[
 function laggedProducts(columns: readonly Float64Array[], steps: ArrayLike<number>): { whitened: (phi: number) => Matrix, logCovariance: (phi: number) => number } {
   const size = columns.length
   const first = zeros(size)
-  const byStep = new Map<number, { count: number, here: Matrix, crossed: Matrix, before: Matrix }>()
+  const epochs = new Map<number, number[]>()
   for (let k = 1; k < steps.length; k++) {
-    const step = steps[k]!
-    if (!byStep.has(step)) byStep.set(step, { count: 0, here: zeros(size), crossed: zeros(size), before: zeros(size) })
-    byStep.get(step)!.count++
+    const known = epochs.get(steps[k]!)
+    if (known) known.push(k)
+    else epochs.set(steps[k]!, [k])
   }
+  const byStep = [...epochs].map(([step, list]) => ({ step, list: Int32Array.from(list), here: zeros(size), crossed: zeros(size), before: zeros(size) }))
   for (let i = 0; i < size; i++) {
     for (let j = 0; j <= i; j++) {
       const [a, b] = [columns[i]!, columns[j]!]
       first[i]![j] = a[0]! * b[0]!
-      for (let k = 1; k < a.length; k++) {
-        const { here, crossed, before } = byStep.get(steps[k]!)!
-        here[i]![j] = here[i]![j]! + a[k]! * b[k]!
-        crossed[i]![j] = crossed[i]![j]! + a[k]! * b[k - 1]! + a[k - 1]! * b[k]!
-        before[i]![j] = before[i]![j]! + a[k - 1]! * b[k - 1]!
+      for (const { list, here, crossed, before } of byStep) {
+        let [p, q, r] = [0, 0, 0]
+        for (let m = 0; m < list.length; m++) {
+          const k = list[m]!
+          const [x0, x1, y0, y1] = [a[k - 1]!, a[k]!, b[k - 1]!, b[k]!]
+          p += x1 * y1
+          q += x1 * y0 + x0 * y1
+          r += x0 * y0
+        }
+        here[i]![j] = p
+        crossed[i]![j] = q
+        before[i]![j] = r
       }
     }
   }
@@ -104,7 +119,7 @@ function laggedProducts(columns: readonly Float64Array[], steps: ArrayLike<numbe
     whitened: phi => first.map((row, i) => row.map((value, j) => {
       if (j > i) return 0
       let sum = value
-      for (const [step, { here, crossed, before }] of byStep) {
+      for (const { step, here, crossed, before } of byStep) {
         const c = phi ** step
         sum += (here[i]![j]! - c * crossed[i]![j]! + c * c * before[i]![j]!) / (1 - c * c)
       }
@@ -112,7 +127,7 @@ function laggedProducts(columns: readonly Float64Array[], steps: ArrayLike<numbe
     })),
     logCovariance: (phi) => {
       let sum = 0
-      for (const [step, { count }] of byStep) sum += count * Math.log(1 - phi ** (2 * step))
+      for (const { step, list } of byStep) sum += list.length * Math.log(1 - phi ** (2 * step))
       return sum
     }
   }

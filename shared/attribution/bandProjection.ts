@@ -16,7 +16,11 @@ export interface NuisanceColumns { straight: Float64Array[], seasonal: Float64Ar
 
 /** The columns that belong to no group, on the epochs of a block. */
 export function nuisanceColumns(mjd: ArrayLike<number>): NuisanceColumns {
-  const column = (fn: (t: number) => number): Float64Array => Float64Array.from(mjd, fn)
+  const column = (fn: (t: number) => number): Float64Array => {
+    const out = new Float64Array(mjd.length)
+    for (let k = 0; k < out.length; k++) out[k] = fn(mjd[k]!)
+    return out
+  }
   const middle = (mjd[0]! + mjd[mjd.length - 1]!) / 2
   const wave = (cycles: number): Float64Array[] => [Math.cos, Math.sin].map(fn => column(t => fn(2 * Math.PI * cycles * julianYearsFromMjd(t))))
   return { straight: [column(() => 1), column(t => (t - middle) / JULIAN_YEAR_DAYS)], seasonal: [...wave(1), ...wave(2)] }

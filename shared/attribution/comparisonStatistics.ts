@@ -4,8 +4,8 @@ import { trendNoise } from '../earth/time/trendNoise.ts'
 import type { TrendNoiseReport } from '../earth/time/trendNoise.ts'
 import { bestLag, correlationOf } from './correlation.ts'
 import type { Correlation, Lag } from './correlation.ts'
-import { bandCoherence, bandVariance, coherenceOf, crossSpectrum } from './spectra.ts'
-import type { CrossSpectrum } from './spectra.ts'
+import { bandCoherence, bandVariance, coherenceOf, crossSpectrum, periodogramOf } from './spectra.ts'
+import type { CrossSpectrum, Periodogram } from './spectra.ts'
 
 /** Monthly values of one quantity, at the middles of calendar months; null where there is none. */
 export interface ComparedSeries { mjd: ArrayLike<number>, observed: ArrayLike<number | null>, model: ArrayLike<number | null> }
@@ -68,6 +68,11 @@ export function comparisonStatistics(series: ComparedSeries, span: { fromMjd: nu
   const variance = { observed: varianceOf(observed), model: varianceOf(model), residual: varianceOf(residual) }
   const { stretches, bridged } = stretchesOf(index, observed, model)
   const spectrum = spectrumFor(stretches)
+  const highest = bands.annual[1] / 12
+  const periodograms = {
+    observed: periodogramOf(stretches.map(s => s.x), highest), model: periodogramOf(stretches.map(s => s.y), highest),
+    residual: periodogramOf(stretches.map(s => s.x.map((v, i) => v - s.y[i]!)), highest)
+  }
   const prepared = prepare(mjd, observed, model)
   const correlation = prepared && correlationOf(prepared.observed, prepared.model)
   const lagMonths = prepared && onGrid(index, prepared.observed, prepared.model, (a, b) => bestLag(a, b, Math.min(MOST_LAG, Math.floor(mjd.length / 4))))
@@ -78,7 +83,7 @@ export function comparisonStatistics(series: ComparedSeries, span: { fromMjd: nu
     bridged,
     rms: { observed: Math.sqrt(variance.observed), model: Math.sqrt(variance.model), residual: Math.sqrt(variance.residual) },
     varianceExplained: variance.observed > 0 ? 1 - variance.residual / variance.observed : null,
-    bands: bandNames.map(band => bandStatistics(band, stretches, spectrum)),
+    bands: bandNames.map(band => bandStatistics(band, stretches, spectrum, periodograms)),
     spectrum: spectrum && {
       cyclesPerYear: Array.from(spectrum.frequency, f => 12 * f), coherence: Array.from(coherenceOf(spectrum)), segments: spectrum.segments, segmentMonths: segmentLength(stretches)
     },
@@ -152,11 +157,10 @@ function spectrumFor(stretches: readonly Stretch[]): CrossSpectrum | null {
   return stretches.length > 0 ? crossSpectrum(stretches, segmentLength(stretches), 'linear') : null
 }
 
-function bandStatistics(band: BandName, stretches: readonly Stretch[], spectrum: CrossSpectrum | null): BandStatistics {
+function bandStatistics(band: BandName, stretches: readonly Stretch[], spectrum: CrossSpectrum | null, periodograms: Record<'observed' | 'model' | 'residual', Periodogram>): BandStatistics {
   const [low, high] = bands[band].map(f => f / 12) as [number, number]
-  const variance = (pick: (s: Stretch) => number[]): number => bandVariance(stretches.map(pick), low, high)
-  const varianceObserved = variance(s => s.x)
-  const varianceResidual = variance(s => s.x.map((v, i) => v - s.y[i]!))
+  const varianceObserved = bandVariance(periodograms.observed, low, high)
+  const varianceResidual = bandVariance(periodograms.residual, low, high)
   const years = Math.max(0, ...stretches.map(({ x }) => x.length)) / 12
   const coherence = spectrum && bandCoherence(spectrum, low, high)
   const resolved = varianceObserved > 0 && (band !== 'decadal' || years >= 16)
@@ -166,7 +170,7 @@ function bandStatistics(band: BandName, stretches: readonly Stretch[], spectrum:
         ? band === 'decadal' ? `${Math.floor(years)} years hold too few decadal swings.` : 'The record is too short for this band.'
         : null
   return {
-    band, varianceObserved, varianceModel: variance(s => s.y), varianceResidual,
+    band, varianceObserved, varianceModel: bandVariance(periodograms.model, low, high), varianceResidual,
     varianceExplained: resolved ? 1 - varianceResidual / varianceObserved : null,
     coherence: resolved && coherence ? coherence.value : null,
     coherenceThreshold95: resolved && coherence ? coherence.threshold95 : null,

@@ -89,7 +89,7 @@ export interface SingularValues {
  */
 export function singularValues(columns: readonly ArrayLike<number>[]): SingularValues {
   const n = columns.length
-  const a = n > 0 && columns[0]!.length > 2 * n ? triangular(columns) : columns.map(column => Float64Array.from(column))
+  const a = n > 0 && columns[0]!.length > 2 * n ? triangular(columns) : columns.map(column => new Float64Array(column))
   const v = zeros(n)
   for (let i = 0; i < n; i++) v[i]![i] = 1
   for (let sweep = 0; sweep < 60; sweep++) {
@@ -117,7 +117,7 @@ function triangular(columns: readonly ArrayLike<number>[]): Float64Array[] {
   const units: Float64Array[] = []
   return columns.map((column, j) => {
     const r = new Float64Array(columns.length)
-    const rest = Float64Array.from(column)
+    const rest = new Float64Array(column)
     for (let round = 0; round < 2; round++) {
       units.forEach((unit, i) => {
         const share = dot(rest, unit)
@@ -161,7 +161,7 @@ export function orthonormal(columns: readonly Float64Array[]): Float64Array[] {
 
 /** What is left of a column outside the span of an orthonormal basis. */
 export function withoutSpan(column: Float64Array, basis: readonly Float64Array[]): Float64Array {
-  const rest = Float64Array.from(column)
+  const rest = new Float64Array(column)
   for (let round = 0; round < 2; round++) {
     for (const unit of basis) {
       const share = dot(rest, unit)

@@ -12,7 +12,7 @@ export type Whitening = (x: ArrayLike<number>) => Float64Array
  */
 export function lowRankWhitening(loadings: readonly Float64Array[]): Whitening {
   const active = loadings.filter(loading => loading.some(v => v !== 0))
-  if (active.length === 0) return x => Float64Array.from(x)
+  if (active.length === 0) return x => new Float64Array(x)
   const { values, vectors } = singularValues(active)
   const left: { unit: Float64Array, damping: number }[] = []
   values.forEach((s, k) => {
@@ -25,7 +25,7 @@ export function lowRankWhitening(loadings: readonly Float64Array[]): Whitening {
     left.push({ unit, damping: 1 - 1 / Math.sqrt(1 + s * s) })
   })
   return (x) => {
-    const out = Float64Array.from(x)
+    const out = new Float64Array(x)
     for (const { unit, damping } of left) {
       const share = damping * dot(x, unit)
       for (let i = 0; i < out.length; i++) out[i] = out[i]! - share * unit[i]!

@@ -65,7 +65,7 @@ const SETTLED = 0.05
 export function estimateScaling(data: AttributionData, options: ScalingOptions): Scaling {
   const priors = priorsOf(data, options)
   const trend = options.trend ?? 'in'
-  const scaled = data.groups.length + data.sources.length
+  const unknowns = data.groups.length + data.sources.length
   let factors = Float64Array.from(priors, prior => prior.mean)
   let lost = 0
   let noise: Ar1Noise[] = []
@@ -75,7 +75,7 @@ export function estimateScaling(data: AttributionData, options: ScalingOptions):
   for (let round = 0; round < (known ? 1 : ROUNDS); round++) {
     noise = data.blocks.map((block, b) => options.noise?.[block.quantity] ?? residualNoise(block, residualOf(data, b, factors), data.stepDays, lost, nuisance[b]))
     problem = problemOf(data, priors, noise, options.band, trend, nuisance)
-    const solved = solve(problem, data.groups.length, scaled)
+    const solved = solve(problem, data.groups.length, unknowns)
     const before = factors
     factors = Float64Array.from(priors, (prior, g) => prior.mean + prior.sigma * solved.factors[g]!)
     const moved = factors.reduce((most, f, g) => Math.max(most, Math.abs(f - before[g]!) / (priors[g]!.sigma * Math.sqrt(solved.posterior[g]![g]!))), 0)
@@ -103,7 +103,7 @@ function priorsOf(data: AttributionData, options: ScalingOptions): { mean: numbe
 
 /** What a block has beyond the groups times their factors, in its unit. */
 export function residualOf(data: AttributionData, b: number, factors: Float64Array): Float64Array {
-  const rest = Float64Array.from(data.blocks[b]!.value)
+  const rest = data.blocks[b]!.value.slice()
   data.groups.forEach(({ signatures }, g) => {
     const [signature, factor] = [signatures[b]!, factors[g]!]
     for (let k = 0; k < rest.length; k++) rest[k] = rest[k]! - factor * signature[k]!
@@ -117,7 +117,7 @@ function problemOf(data: AttributionData, priors: readonly { mean: number, sigma
     blocks: data.blocks.map((block, b) => {
       const project = bandProjection(block, noise[b]!, data.stepDays, band, trend, nuisance[b])
       const columns = [
-        ...data.groups.map(({ signatures }, g) => project(signatures[b]!.map(v => v * priors[g]!.sigma))),
+        ...data.groups.map(({ signatures }, g) => scaled(project(signatures[b]!), priors[g]!.sigma)),
         ...data.sources.map(({ loadings }) => project(loadings[b]!))
       ]
       const y = project(residualOf(data, b, means))
@@ -131,6 +131,11 @@ function problemOf(data: AttributionData, priors: readonly { mean: number, sigma
       return { quantity: block.quantity, matrix, right: Float64Array.from(columns, column => dot(column, y)), square: dot(y, y), values: y.length }
     })
   }
+}
+
+function scaled(x: Float64Array, factor: number): Float64Array {
+  for (let i = 0; i < x.length; i++) x[i] = factor * x[i]!
+  return x
 }
 
 interface Solved { factors: Float64Array, posterior: Matrix }

@@ -79,23 +79,23 @@ export function bandCoherence(spectrum: CrossSpectrum, low: number, high: number
   return { value: (re * re + im * im) / (x * y), independent, threshold95: 1 - 0.05 ** (1 / (independent - 1)) }
 }
 
-/** Variance of a series in a band of frequencies, in the unit of the series squared, by the Hann-tapered periodogram of its detrended stretches. */
-export function bandVariance(stretches: readonly ArrayLike<number>[], low: number, high: number): number {
-  let total = 0
-  let count = 0
-  for (const x of stretches) {
+/** Variance by frequency: how much of the variance of some stretches stands at each of their frequencies, cycles per step. */
+export type Periodogram = readonly { frequency: number, variance: number }[]
+
+/** Hann-tapered periodogram of stretches without their straight lines, up to a frequency; its sum is their variance. */
+export function periodogramOf(stretches: readonly ArrayLike<number>[], highest = 0.5): Periodogram {
+  const count = stretches.reduce((sum, x) => sum + x.length, 0)
+  return stretches.flatMap((x) => {
     const n = x.length
-    const { re, im } = transformer(n)(tapered(x, 0, n, 'linear'))
-    let sum = 0
-    for (let k = 1; k < re.length; k++) {
-      const f = k / n
-      if (f >= low && f < high) sum += (2 * k === n ? 1 : 2) * (re[k]! ** 2 + im[k]! ** 2)
-    }
+    const { re, im } = transformer(n, Math.min(Math.floor(n / 2), Math.floor(highest * n)))(tapered(x, 0, n, 'linear'))
     // Mean square of the Hann window is 3/8.
-    total += sum / (n * 3 / 8)
-    count += n
-  }
-  return count > 0 ? total / count : 0
+    return Array.from(re, (a, k) => ({ frequency: k / n, variance: k === 0 ? 0 : (2 * k === n ? 1 : 2) * (a * a + im[k]! ** 2) / (n * count * 3 / 8) }))
+  })
+}
+
+/** Variance in a band of frequencies, low included and high not, in the unit of the series squared. */
+export function bandVariance(periodogram: Periodogram, low: number, high: number): number {
+  return periodogram.reduce((sum, { frequency, variance }) => frequency >= low && frequency < high ? sum + variance : sum, 0)
 }
 
 function tapered(x: ArrayLike<number>, start: number, length: number, detrend: Detrend): Float64Array {
@@ -114,12 +114,12 @@ function tapered(x: ArrayLike<number>, start: number, length: number, detrend: D
   return Float64Array.from({ length }, (_, i) => (0.5 - 0.5 * Math.cos(2 * Math.PI * i / length)) * (x[start + i]! - mean - slope * (i - middle)))
 }
 
-/** Discrete Fourier transform of real series of one length, the half from 0 to the Nyquist frequency; any length, n²/2 operations. */
-function transformer(n: number): (x: Float64Array) => { re: Float64Array, im: Float64Array } {
+/** Discrete Fourier transform of real series of one length, from 0 to the last of n/2 frequencies asked for; any length. */
+function transformer(n: number, last = Math.floor(n / 2)): (x: Float64Array) => { re: Float64Array, im: Float64Array } {
   const cosines = Float64Array.from({ length: n }, (_, i) => Math.cos(2 * Math.PI * i / n))
   const sines = Float64Array.from({ length: n }, (_, i) => Math.sin(2 * Math.PI * i / n))
   return (x) => {
-    const bins = Math.floor(n / 2) + 1
+    const bins = last + 1
     const re = new Float64Array(bins)
     const im = new Float64Array(bins)
     for (let k = 0; k < bins; k++) {

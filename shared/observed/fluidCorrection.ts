@@ -24,7 +24,10 @@ export function correctionValues({ series, fields }: FluidCorrection, step: Pick
   const gross = coefficientSets['gross-2007']
   const massFactor = unit * (rigid ? quantity === 'lod' ? gross.aZ : gross.aXY : 1)
   const motionFactor = unit * (rigid ? quantity === 'lod' ? AXIAL_ROTATIONAL_FACTOR : ROTATIONAL_FACTOR : 1)
-  return Float64Array.from(series.mjd, (_, i) => (step.mass ? massFactor * series.mass[name][i]! : 0) + (step.motion ? motionFactor * series.motion[name][i]! : 0))
+  const values = new Float64Array(series.mjd.length)
+  const [mass, motion] = [series.mass[name], series.motion[name]]
+  for (let i = 0; i < values.length; i++) values[i] = (step.mass ? massFactor * mass[i]! : 0) + (step.motion ? motionFactor * motion[i]! : 0)
+  return values
 }
 
 /**
@@ -32,7 +35,8 @@ export function correctionValues({ series, fields }: FluidCorrection, step: Pick
  * straight line. NaN outside the series and across its gaps: nothing is carried on.
  */
 export function onEpochs(series: Pick<AngularMomentumSeries, 'mjd' | 'stepDays'>, value: Float64Array, epochs: ArrayLike<number>, widthDays: number): Float64Array {
-  const { epochs: t, values } = present(series.mjd, value)
+  const whole = value.every(v => !Number.isNaN(v))
+  const { epochs: t, values } = whole ? { epochs: series.mjd, values: value } : present(series.mjd, value)
   const longest = LONGEST_GAP_STEPS * series.stepDays
   const averaged = series.stepDays < 0.75 * widthDays
   const half = averaged ? widthDays / 2 : 0
