@@ -14,24 +14,37 @@ import type { CorrectionKind, Material, Parameter, Recipe, RecipeStep, Replayed,
  * @throws InputError where rates have no periods, or periods with gaps or overlaps
  */
 export function replayRecipe(recipe: Recipe, table: SeriesTable): Replayed {
+  const done = carryOutRecipe(recipe, table)
+  const steps = recipe.steps.map((step, i): StepDone => {
+    const on = isOn(step)
+    const sentence = sentenceOf(step, done.lost[i]!)
+    return { kind: step.kind, on, sentence: on ? sentence : `Switched off: ${sentence}`, numbers: numbersOf(step) }
+  })
+  const { lost: _, ...series } = done
+  return { ...series, steps }
+}
+
+/** As `replayRecipe`, without the sentences; `lost` counts the epochs that each step left out. */
+export function carryOutRecipe(recipe: Recipe, table: SeriesTable): Omit<Replayed, 'steps'> & { lost: number[] } {
   let state: Running = { mjd: [...table.mjd], massGt: [...table.value], sigmaGt: table.sigma && [...table.sigma], walkGt2: null, factors: [] }
-  const steps: StepDone[] = []
   const leftOut: Replayed['leftOut'] = []
-  for (const step of recipe.steps) {
-    const on = 'on' in step ? step.on : true
-    const before = state.mjd.length
-    if (on) {
-      if (step.kind === 'subtract-series') {
-        const { leftOut: missed, ...rest } = subtractSeries(state, step)
-        state = rest
-        leftOut.push(...missed)
-      } else state = carryOut(state, step, table)
+  const lost = recipe.steps.map((step) => {
+    if (!isOn(step)) return 0
+    if (step.kind !== 'subtract-series') {
+      state = carryOut(state, step, table)
+      return 0
     }
-    const sentence = sentenceOf(step, before - state.mjd.length)
-    steps.push({ kind: step.kind, on, sentence: on ? sentence : `Switched off: ${sentence}`, numbers: numbersOf(step) })
-  }
+    const { leftOut: missed, ...rest } = subtractSeries(state, step)
+    state = rest
+    leftOut.push(...missed)
+    return missed.length
+  })
   // + 0 turns −0 into 0, which JSON and people write the same.
-  return { ...state, massGt: state.massGt.map(m => m + 0), steps, leftOut }
+  return { ...state, massGt: state.massGt.map(m => m + 0), leftOut, lost }
+}
+
+function isOn(step: RecipeStep): boolean {
+  return 'on' in step ? step.on : true
 }
 
 function carryOut(state: Running, step: Exclude<RecipeStep, { kind: 'subtract-series' }>, table: SeriesTable): Running {
