@@ -10,9 +10,13 @@ const stepDeg = 1
 
 /** The outline must have passed `checkOutline`. */
 export function displayShape(outline: Outline): DisplayShape {
-  const cut = cutAtAntimeridian(outline)
-  const fill: Outline = { type: 'MultiPolygon', coordinates: polygonsOf(cut).map(rings => rings.map(dense)) }
-  return { fill, lines: fill.coordinates.flat().flatMap(withoutSeams) }
+  const fill = displayFill(cutAtAntimeridian(outline))
+  return { fill, lines: polygonsOf(fill).flat().flatMap(withoutSeams) }
+}
+
+/** The fill alone, of an outline that is cut at the antimeridian already. */
+export function displayFill(cut: Outline): Outline {
+  return { type: 'MultiPolygon', coordinates: polygonsOf(cut).map(rings => rings.map(dense)) }
 }
 
 function dense(ring: readonly Position[]): Position[] {

@@ -1,22 +1,23 @@
 import type { Feature, FeatureCollection, Geometry } from 'geojson'
 import { greatCircle } from '#shared/geo/greatCircle'
 import type { Outline, Position } from '#shared/types/domain'
-import { displayShape } from '../displayShape'
+import { displayFill } from '../displayShape'
 import { collection } from '../regionSources'
-import type { Draft, VertexPlace } from './draft'
+import { vertexCount, type Draft, type VertexPlace } from './draft'
 import { edgeMiddles, ringLine, type DraftFault } from './draftShape'
 
 interface Shown { active: boolean, draft: Draft, chosen: VertexPlace | null, pointer: Position | null, outline: Outline | null, fault: DraftFault | null }
 
-/** More handles than this are not drawn as middles too: the map would be all circles. */
+/** With more vertices than this the middles are left out, and with many more all handles: the map would be all circles. */
 const mostMiddles = 400
+export const mostHandles = 4000
 
 /** The draft's fill, lines and handles as sources of the map. */
 export function draftFeatures(shown: Shown): Record<'draft-fill' | 'draft-lines' | 'draft-handles', FeatureCollection> {
   if (!shown.active) return { 'draft-fill': collection([]), 'draft-lines': collection([]), 'draft-handles': collection([]) }
   const { outline, fault } = shown
   return {
-    'draft-fill': collection(outline && !fault ? [feature({}, displayShape(outline).fill)] : []),
+    'draft-fill': collection(outline && !fault ? [feature({}, displayFill(outline))] : []),
     'draft-lines': collection(lineFeatures(shown)),
     'draft-handles': collection(handleFeatures(shown))
   }
@@ -75,6 +76,7 @@ function pathOf(positions: readonly Position[]): { lonDeg: number[], latDeg: num
 }
 
 function handleFeatures({ draft, chosen }: Shown): Feature[] {
+  if (vertexCount(draft) > mostHandles) return []
   const middles = edgeMiddles(draft)
   const shown = draft.open || middles.length > mostMiddles ? [] : middles
   return [

@@ -1,7 +1,8 @@
 import type { Map as Chart } from 'maplibre-gl'
 import type { Position } from '#shared/types/domain'
 import { toScreen } from '../view'
-import type { Draft, VertexPlace } from './draft'
+import { vertexCount, type Draft, type VertexPlace } from './draft'
+import { mostHandles } from './draftFeatures'
 import { edgeMiddles } from './draftShape'
 
 /** A handle of the draft under a point of the screen. */
@@ -9,6 +10,7 @@ export type Handle = { kind: 'vertex', at: VertexPlace, place: Position } | { ki
 
 /** The nearest vertex within `reach` pixels, or else the nearest middle of an edge; null where there is neither. */
 export function handleAt(map: Chart, draft: Draft, point: { x: number, y: number }, reach: number): Handle | null {
+  if (vertexCount(draft) > mostHandles) return null
   let best: Handle | null = null
   let least = reach
   const look = (handle: Handle): void => {

@@ -29,7 +29,7 @@ export function useOutlineDrawing(
   const draft = computed(() => underway.value ?? history.value.present)
   const state = computed<DrawingState>(() => !active.value ? 'idle' : draft.value.open ? 'drawing' : 'editing')
   const outline = computed(() => draftOutline(draft.value))
-  const fault = computed(() => faultOf(draft.value, outline.value))
+  const fault = computed(() => faultOf(draft.value, outline.value, underway.value !== null))
 
   const set = (next: Draft): void => {
     underway.value = null
