@@ -19,7 +19,8 @@ export function useScenarioSave({ id, editor, revision: first, reload }: SaveOpt
       const stored = await api('scenarioChange', { params: { id }, body: { revision: revision.value, ...sent } })
       revision.value = stored.revision
       editor.markSaved(sent)
-      await reload()
+      // Runs and overlaps of the saved state come when they come; a run need not wait for them.
+      void reload()
       return true
     }
     catch (error) {

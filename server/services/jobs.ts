@@ -3,9 +3,11 @@ import { dirname, join } from 'node:path'
 import { eq, inArray } from 'drizzle-orm'
 import Piscina from 'piscina'
 import type { Principal } from '#shared/permissions'
+import { InputError } from '#shared/types/issue'
 import type { RunInput, RunResult } from '#shared/types/run'
 import { schema } from '../database/client'
 import { Problem, problemBody, type ProblemBody } from '../utils/problem'
+import type { RunAnswer } from '../workers/run'
 import { appendLog, authorise, newId } from './change'
 import type { Context } from './context'
 import { canonicalJson, sha256Hex } from './hash'
@@ -58,7 +60,7 @@ export class Jobs {
 
   /** A run that is waited for, as at first start. Fails where the job fails. */
   async runNow(principal: Principal, workspaceId: string, job: Omit<RunJobInput, 'actor'>): Promise<string> {
-    const result = await this.pool.run({ input: job.input, fieldsPath: this.fieldsPath }) as RunResult
+    const result = resultOf(await this.pool.run({ input: job.input, fieldsPath: this.fieldsPath }) as RunAnswer)
     return storeRun(this.context, workspaceId, { ...job, actor: { id: principal.userId, name: principal.name } }, result)
   }
 
@@ -105,7 +107,7 @@ export class Jobs {
     try {
       const job = JSON.parse(this.row(id).input) as RunJobInput
       this.set(id, { state: 'running', progress: 0.1 })
-      const result = await this.pool.run({ input: job.input, fieldsPath: this.fieldsPath }, { signal: abort.signal }) as RunResult
+      const result = resultOf(await this.pool.run({ input: job.input, fieldsPath: this.fieldsPath }, { signal: abort.signal }) as RunAnswer)
       if (this.row(id).state === 'cancelled') return
       this.set(id, { progress: 0.9 })
       const runId = storeRun(this.context, this.row(id).workspaceId, job, result)
@@ -113,8 +115,8 @@ export class Jobs {
     }
     catch (error) {
       if (this.row(id).state === 'cancelled') return
-      this.set(id, { state: 'failed', problem: JSON.stringify(problemBody(revive(error))), finishedAt: this.context.now() })
-      if (problemBody(revive(error)).status === 500) console.error('[counterpoise] job failed:', error)
+      this.set(id, { state: 'failed', problem: JSON.stringify(problemBody(error)), finishedAt: this.context.now() })
+      if (problemBody(error).status === 500) console.error('[counterpoise] job failed:', error)
     }
     finally {
       this.aborts.delete(id)
@@ -122,11 +124,9 @@ export class Jobs {
   }
 }
 
-/** Errors lose their class on the way out of a worker; their name and issues stay. */
-function revive(error: unknown): unknown {
-  const e = error as { name?: string, message?: string, issues?: unknown, status?: number }
-  if (Array.isArray(e?.issues)) return new Problem(e.status ?? 422, 'invalid', e.message ?? '', e.issues as Problem['issues'])
-  return error
+function resultOf(answer: RunAnswer): RunResult {
+  if ('fault' in answer) throw new InputError(answer.fault.message, answer.fault.issues, answer.fault.status)
+  return answer.result
 }
 
 /** Writes an immutable run: input and result in canonical JSON with the hash of each. */
