@@ -33,7 +33,7 @@ export function cutRings(rings: readonly BoundedRing[]): Outline {
   }
   // Two rings round the same pole bound a zone: the pole itself is outside, and their closings cancel.
   for (const [pole, odd] of poleClosings) if (odd) chains.push({ points: [[-180, pole], [180, pole]], closed: false })
-  return assemble(joinChains(chains).filter(ring => distinct(ring) >= 3 && ringAreaM2(ringPath(ring)) > leastAreaM2))
+  return assemble(joinChains(chains).filter(ring => encloses(ring) && ringAreaM2(ringPath(ring)) > leastAreaM2))
 }
 
 function chainsOf(ring: RingPath): Chain[] {
@@ -71,8 +71,12 @@ function chainsOf(ring: RingPath): Chain[] {
   return chains.filter(chain => !chain.points.every(([x]) => Math.abs(x) === 180 && x === chain.points[0]![0]))
 }
 
-function distinct(ring: readonly Position[]): number {
-  return new Set(ring.map(position => position.join())).size
+/** Whether a ring has three different places. */
+function encloses(ring: readonly Position[]): boolean {
+  const first = ring[0]!
+  const differs = (p: Position, q: Position): boolean => p[0] !== q[0] || p[1] !== q[1]
+  const second = ring.find(place => differs(place, first))
+  return second !== undefined && ring.some(place => differs(place, first) && differs(place, second))
 }
 
 function addPoint(points: Position[], point: Position): void {
@@ -123,6 +127,7 @@ function joinChains(chains: readonly Chain[]): Position[][] {
 
 /** Rings into polygons by how deep each lies inside the others. */
 function assemble(rings: readonly Position[][]): Outline {
+  if (rings.length === 1) return { type: 'Polygon', coordinates: [turned(rings[0]!, true)] }
   const lines = rings.map((ring): BoundedRing => ({ ...ringPath(ring), pole: null }))
   const inside = lines.map((line, k) => {
     const [x, y] = interiorPoint(line)

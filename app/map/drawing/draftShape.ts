@@ -23,11 +23,7 @@ export function draftOutline(draft: Draft): Outline | null {
   const rings = draft.rings.filter(ring => ring.length >= 3)
   if (rings.length === 0) return null
   try {
-    const bounded = rings.map((ring): BoundedRing => {
-      const positions = ringLine(draft, ring).positions.map(rounded)
-      return contourOf({ type: 'Polygon', coordinates: [positions] }).rings[0]!
-    })
-    const outline = cutRings(bounded)
+    const outline = cutRings(rings.map(ring => bounded(ringLine(draft, ring).positions.map(rounded))))
     const stored = outline.type === 'Polygon'
       ? { type: outline.type, coordinates: outline.coordinates.map(ring => ring.map(rounded)) }
       : { type: outline.type, coordinates: outline.coordinates.map(polygon => polygon.map(ring => ring.map(rounded))) }
@@ -37,6 +33,12 @@ export function draftOutline(draft: Draft): Outline | null {
     if (error instanceof InputError) return null
     throw error
   }
+}
+
+/** The whole contour is asked only for the pole that a ring goes round. */
+function bounded(positions: Position[]): BoundedRing {
+  const path = ringPath(positions)
+  return path.winding === 0 ? { ...path, pole: null } : contourOf({ type: 'Polygon', coordinates: [positions] }).rings[0]!
 }
 
 /** Why the draft cannot be stored, and the lines on the map that are wrong. */
