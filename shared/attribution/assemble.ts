@@ -2,6 +2,7 @@ import { JULIAN_YEAR_DAYS } from '../earth/time/epochs.ts'
 import { medianStep } from '../earth/time/monthlyMeans.ts'
 import { InputError } from '../types/issue.ts'
 import type { BackgroundRow, RunInput, RunResult } from '../types/run.ts'
+import { netRegions } from './netRegions.ts'
 import type { AttributionData, Group, ObservedBlock, RotationQuantity, SourceLoading } from './types.ts'
 import { rotationQuantities } from './types.ts'
 
@@ -28,7 +29,7 @@ export const LEAST_ATTRIBUTION_MONTHS = 24
  * @throws InputError when nothing is left, or for a group with an unknown region
  */
 export function assembleAttribution(input: RunInput, result: RunResult, observed: ObservedMonths, options: AssembleOptions = {}): AttributionData {
-  const active = result.regions.filter(region => region.scale !== 0)
+  const active = netRegions(result).filter(region => region.scale !== 0)
   const groups = groupsOf(active.map(({ key, name }) => ({ key, name })), options.groups ?? [])
   const usable = result.epochsMjd.map((t, j) => active.every(region => region.massGt[j] !== null)
     && (!options.span || (t >= options.span.fromMjd && t <= options.span.toMjd)))

@@ -4,6 +4,7 @@ import { closureOf } from './closure.ts'
 import type { Closure } from './closure.ts'
 import { Causes, combine, correlationOfLoaded, covarianceOfLoaded, exactly, sigmaOf } from './loaded.ts'
 import type { Loaded } from './loaded.ts'
+import { netRegions } from './netRegions.ts'
 import { rotationQuantities } from './types.ts'
 import type { RotationQuantity } from './types.ts'
 
@@ -56,7 +57,7 @@ export interface LoadedBudget { rows: LoadedRow[], model: LoadedRow, observed: L
  */
 export function loadedBudget(input: RunInput, result: RunResult, observed: ObservedRates): LoadedBudget {
   const causes = new Causes()
-  const active = result.regions.filter(region => region.scale !== 0)
+  const active = netRegions(result).filter(region => region.scale !== 0)
   const entered = [...input.background.map(row => ({ row, kind: 'background' as const })), ...(input.restOfWorld ? [{ row: input.restOfWorld, kind: 'rest' as const }] : [])]
   const series = new Map(input.regions.map(region => [region.key, region.series]))
   const named = new Set<string>()

@@ -5,6 +5,7 @@ import { driftOfRow, loadedBudget } from './budget.ts'
 import type { LoadedBudget, LoadedRow, ObservedRates, Rate } from './budget.ts'
 import { covarianceOfLoaded, sigmaOf } from './loaded.ts'
 import type { Loaded } from './loaded.ts'
+import { netRegions } from './netRegions.ts'
 
 export interface ClosingMass {
   key: string
@@ -52,7 +53,7 @@ export function closingResidual(input: RunInput, result: RunResult, observed: Ob
   }
   return {
     reason: null,
-    regions: result.regions.filter(region => region.scale !== 0).map(region => closeWith(
+    regions: netRegions(result).filter(region => region.scale !== 0).map(region => closeWith(
       budget, budget.rows.find(row => row.key === region.key)!, { chi1: region.perGt.chi1Mas, chi2: region.perGt.chi2Mas, lod: region.perGt.lodMicroseconds }
     ))
   }
