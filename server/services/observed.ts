@@ -15,9 +15,9 @@ import { keepOriginal, rememberOriginal, uploadText } from './originals'
 import { pageOf } from './paging'
 import { floats, fromFloats, versionsOf, versionView } from './seriesStore'
 
-interface ObservedRecipe { format: ObservedSeries['format'], predictedRows: number, emptyRows: number, rowsRead: number, pole: boolean, lod: boolean, excitation?: boolean, understood: string[], leftOut: Issue[], leftOutCount: number, csv?: unknown }
+interface ObservedRecipe { format: ObservedSeries['format'], predictedRows: number, emptyRows: number, rowsRead: number, pole: boolean, lod: boolean, excitation?: boolean, ut1?: boolean, from?: ObservedSeries['from'], understood: string[], leftOut: Issue[], leftOutCount: number, csv?: unknown }
 const columns = ['xMas', 'yMas', 'lodMs', 'sigmaXMas', 'sigmaYMas', 'sigmaLodMs'] as const
-/** Behind the others, where a file holds excitation in place of the pole. */
+/** Behind the others, where a file holds excitation in place of the pole; UT1 − TAI comes last, where it is there. */
 const excitationColumns = ['chi1Mas', 'chi2Mas'] as const
 
 export async function createObserved(context: Context, principal: Principal | null, workspaceId: string, upload: Upload, body: BodyOf<typeof contracts.observedCreate>) {
@@ -29,10 +29,11 @@ export async function createObserved(context: Context, principal: Principal | nu
   const id = newId()
   const versionId = newId()
   const excitation = parsed.chi1Mas && parsed.chi2Mas ? [parsed.chi1Mas, parsed.chi2Mas] : []
-  const value = joined([...columns.map(name => parsed[name]), ...excitation])
+  const ut1 = parsed.ut1MinusTaiMs ? [parsed.ut1MinusTaiMs] : []
+  const value = joined([...columns.map(name => parsed[name]), ...excitation, ...ut1])
   const recipe: ObservedRecipe = {
     format: parsed.format, predictedRows: parsed.predicted.reduce((sum, flag) => sum + flag, 0), emptyRows: parsed.emptyRows, rowsRead: parsed.rowsRead,
-    pole: parsed.xMas.some(Number.isFinite) && parsed.yMas.some(Number.isFinite), lod: parsed.lodMs.some(Number.isFinite), excitation: excitation.length > 0,
+    pole: parsed.xMas.some(Number.isFinite) && parsed.yMas.some(Number.isFinite), lod: parsed.lodMs.some(Number.isFinite), excitation: excitation.length > 0, ut1: ut1.length > 0, ...(parsed.from ? { from: parsed.from } : {}),
     understood: parsed.understood, leftOut: parsed.issues.slice(0, 1000), leftOutCount: parsed.issues.length, ...(body.csv ? { csv: body.csv } : {}),
   }
   await keepOriginal(context, upload)
@@ -86,10 +87,11 @@ export function loadObserved(context: Context, id: string): ObservedSeries {
   const column = (i: number) => all.subarray(i * mjd.length, (i + 1) * mjd.length)
   const [xMas, yMas, lodMs, sigmaXMas, sigmaYMas, sigmaLodMs] = columns.map((_, i) => column(i)) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array, Float64Array]
   const [chi1Mas, chi2Mas] = recipe.excitation ? excitationColumns.map((_, i) => column(columns.length + i)) : []
+  const ut1MinusTaiMs = recipe.ut1 ? column(columns.length + (recipe.excitation ? excitationColumns.length : 0)) : null
   return {
     format: recipe.format, mjd, xMas, yMas, lodMs, sigmaXMas, sigmaYMas, sigmaLodMs,
     predicted: new Uint8Array(data.flags ?? new Uint8Array(mjd.length)), emptyRows: recipe.emptyRows, rowsRead: recipe.rowsRead,
-    ...(chi1Mas && chi2Mas ? { chi1Mas, chi2Mas } : {}),
+    ...(chi1Mas && chi2Mas ? { chi1Mas, chi2Mas } : {}), ...(ut1MinusTaiMs ? { ut1MinusTaiMs } : {}), ...(recipe.from ? { from: recipe.from } : {}),
   }
 }
 

@@ -1,6 +1,7 @@
 import { z } from 'zod'
 import { epochFormats } from '../series/epochColumn.ts'
 import { oceanModes } from '../types/domain.ts'
+import { chainAnswer, chainQuery } from './chainSchemas.ts'
 import { contract, type Contract } from './contract.ts'
 import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
 import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
@@ -191,6 +192,11 @@ export const contracts = {
   observedRestore: contract({
     id: 'observedRestore', method: 'POST', path: '/api/v1/observed/{id}/restore', action: 'observed.write', summary: 'Take an observed series out of the bin', params: byId,
     body: z.object({ revision }), answer: changed,
+  }),
+
+  observedChain: contract({
+    id: 'observedChain', method: 'GET', path: '/api/v1/observed/{id}/chain', action: 'observed.read', summary: 'An observed series reduced step by step by a chain: before, removed and after of each step; stores nothing', params: byId,
+    query: chainQuery, answer: chainAnswer,
   }),
 
   // Scenarios, runs, jobs

@@ -137,6 +137,7 @@ const steps: Step[] = [
   { route: 'observedList', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'observedCreate', rule: 'leadOnly', make: () => ({ params: workspace(), body: { ...seriesFacts }, file: { name: 'eop.csv', content: orientationCsv(40) } }) },
   { route: 'observedRead', rule: 'science', make: () => ({ params: { id: shared.observed } }) },
+  { route: 'observedChain', rule: 'science', make: () => ({ params: { id: shared.observed }, query: { points: 50 } }) },
   { route: 'observedRemove', rule: 'leadOnly', make: async () => ({ params: { id: (await makeObserved(lead, place, orientationCsv(40))).id }, query: { revision: 1 } }) },
   {
     route: 'observedRestore', rule: 'leadOnly',
