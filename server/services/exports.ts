@@ -2,7 +2,7 @@ import { eq } from 'drizzle-orm'
 import Papa from 'papaparse'
 import { isoDateFromMjd } from '#shared/earth/time/epochs'
 import type { Measured } from '#shared/types/domain'
-import type { BudgetRow, Comparison, RunResult } from '#shared/types/run'
+import type { BudgetRow, Comparison, DerivedRates, RunRegionResult, RunResult } from '#shared/types/run'
 import { schema } from '../database/client'
 import { nameOfUser } from './change'
 import type { Context } from './context'
@@ -47,10 +47,23 @@ const head = (result: RunResult) => [
   `# Span ${isoDateFromMjd(result.span.fromMjd)} to ${isoDateFromMjd(result.span.toMjd)}. Calculated, not observed. One-sigma errors.`,
 ].join('\n')
 
+/** Model uncertainty as remarks: it belongs to the sum and is part of no sigma. */
+function modelLines(result: RunResult): string {
+  return (result.modelUncertainty ?? []).map(line =>
+    `# Model uncertainty, not in any sigma: ${line.name}: LOD ${line.lodMicrosecondsPerYear} microseconds per year, chi1 ${line.chi1MasPerYear} mas per year, chi2 ${line.chi2MasPerYear} mas per year\n`).join('')
+}
+
 function budgetCsv(result: RunResult): string {
   const rows: BudgetRow[] = [...result.regions, result.total, ...result.background, result.restOfWorld]
   const cells = (name: string, m: Measured | null) => ({ [name]: m?.value ?? '', [`sigma_${name}`]: m?.sigma ?? '' })
-  return `${head(result)}\n${Papa.unparse(rows.map(row => ({
+  const derivedCells = (derived: DerivedRates | undefined) => ({
+    ...cells('delta_c21_per_year', derived?.deltaC21PerYear ?? null),
+    ...cells('delta_s21_per_year', derived?.deltaS21PerYear ?? null),
+    ...cells('geocentre_x_mm_per_year', derived?.geocentreMmPerYear?.x ?? null),
+    ...cells('geocentre_y_mm_per_year', derived?.geocentreMmPerYear?.y ?? null),
+    ...cells('geocentre_z_mm_per_year', derived?.geocentreMmPerYear?.z ?? null),
+  })
+  return `${head(result)}\n${modelLines(result)}${Papa.unparse(rows.map(row => ({
     row: row.key, name: row.name,
     ...cells('mass_Gt_per_year', row.massGtPerYear),
     ...cells('lod_microseconds_per_year', row.lodMicrosecondsPerYear),
@@ -61,6 +74,7 @@ function budgetCsv(result: RunResult): string {
     direction_deg_east: row.directionDegEast?.value ?? '', sigma_direction_deg: row.directionDegEast?.sigma ?? '',
     ...cells('barystatic_mm_per_year', row.barystaticMmPerYear),
     ...cells('delta_j2_per_year', row.deltaJ2PerYear),
+    ...derivedCells((row as Partial<RunRegionResult>).derived),
     share_of_model_lod: row.shareOfModelLod ?? '', share_of_model_pole: row.shareOfModelPole ?? '',
   })), { newline: '\n', escapeFormulae: true })}\n`
 }

@@ -26,6 +26,8 @@ export function sourcesOf(input: RunInput): RegionSource[] {
   return input.regions.map(r => ({
     key: r.key, name: r.name, kind: r.kind, agency: r.agency, outlineSha256: r.outlineSha256, seriesVersion: r.seriesVersion,
     seriesSha256: r.seriesSha256, source: r.source, geometry: r.geometry,
+    ...(r.fractionToOcean === undefined ? {} : { fractionToOcean: r.fractionToOcean, restTo: r.restTo ?? null }),
+    ...(r.groundedFraction === undefined ? {} : { groundedFraction: r.groundedFraction }),
   }))
 }
 

@@ -20,6 +20,9 @@ export const runResult = z.looseObject({
   span: z.object({ fromMjd: z.number(), toMjd: z.number() }), epochsMjd: z.array(z.number()),
   regions: z.array(budgetRow), total: budgetRow, background: z.array(budgetRow), restOfWorld: budgetRow,
   overlaps: z.array(z.looseObject({})), warnings: z.array(warning),
+  modelUncertainty: z.array(z.object({
+    id: z.string(), name: z.string(), text: z.string(), chi1MasPerYear: z.number(), chi2MasPerYear: z.number(), lodMicrosecondsPerYear: z.number(),
+  })).optional(),
 }).meta({ id: 'RunResult' }) as unknown as ZodType<RunResult>
 
 const quantity = z.looseObject({
@@ -34,6 +37,8 @@ export const comparison = z.looseObject({
 const regionSource = z.object({
   key: z.string(), name: z.string(), kind: z.string(), agency: z.string(), outlineSha256: sha256, seriesVersion: z.int(),
   seriesSha256: sha256, source: z.string(), geometry: z.object({ type: z.enum(['Polygon', 'MultiPolygon']), coordinates: z.array(z.unknown()) }),
+  /** Where its water goes, where not all of it counts and reaches the sea; restTo is the key of another source. */
+  fractionToOcean: z.number().optional(), restTo: z.string().nullable().optional(), groundedFraction: z.number().optional(),
 })
 export type RegionSource = z.output<typeof regionSource>
 

@@ -22,7 +22,7 @@ const perYear = (measured: Measured, unit: string, signed = false) =>
   formatMeasured(measured.value, measured.sigma, { signed, unit: `${unit} per year` }).text
 
 function subjectOf(result: RunResult): string {
-  const counting = result.regions.filter(region => region.scale !== 0)
+  const counting = result.regions.filter(region => region.scale !== 0 && !region.keptFrom)
   const named = counting.length === 1 ? ` (${counting[0]!.name})` : ''
   return `Reported mass change in ${counted(counting.length, 'region')}${named}`
 }

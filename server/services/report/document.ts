@@ -5,6 +5,7 @@ import { findingSentence, remainderSentences } from '#shared/text/finding'
 import { settingsLine } from '#shared/text/method'
 import { reportBudget } from './budget'
 import { reportBeam, reportChart, reportDrift, reportMap } from './figures'
+import { derivedBlocks, modelUncertaintyBlocks } from './physics'
 import { cautionBlocks, comparisonBlocks, methodBlocks, overlapBlocks, recordBlocks, runningFoot, runningHead, sourceBlocks } from './sections'
 import { caution, figure, page, paragraph, sectionHead, size, together } from './style'
 import type { Block, ReportData } from './types'
@@ -33,6 +34,8 @@ export function reportDocument(data: ReportData): Block {
     together(sectionHead('Excitation of the pole towards 90° E, χ₂', overTime), figure(reportChart(data, 'chi2'))),
 
     ...comparisonBlocks(data),
+    ...derivedBlocks(data),
+    ...modelUncertaintyBlocks(data),
     ...methodBlocks(data),
     ...sourceBlocks(data),
     ...cautionBlocks(data),

@@ -3,6 +3,7 @@ import { print } from '#shared/design/tokens'
 import { cautions, cautionsFor } from '#shared/text/cautions'
 import { constantRows } from '#shared/text/constants'
 import { methodSections, settingsLine } from '#shared/text/method'
+import { waterWaySentences } from '#shared/text/waterWay'
 import { listed } from '#shared/text/words'
 import { caution, page, paragraph, sectionHead, size, textTable, together } from './style'
 import type { ComparisonQuantity } from '#shared/types/run'
@@ -78,11 +79,13 @@ function checksum(sha256: string): Block {
 
 export function sourceBlocks({ result, sources, observed }: ReportData): Block[] {
   const byKey = new Map(result.regions.map(region => [region.key, region]))
+  const nameOf = (key: string) => sources.find(source => source.key === key)?.name ?? key
   const rows = sources.map((source) => {
     const region = byKey.get(source.key)
+    const way = waterWaySentences(source, nameOf).join(' ')
     return [
       { text: [source.name, { text: `\n${kinds[source.kind]}, ${source.agency}${region ? `\n${formatArea(region.areaKm2)}` : ''}`, color: print.soft }] },
-      { text: [source.source || 'not stated', { text: `\nversion ${source.seriesVersion}${region ? `, ${region.epochsUsed} epochs, ${formatShare(region.coverage).replace('+', '')} of the span` : ''}`, color: print.soft }] },
+      { text: [source.source || 'not stated', { text: `\nversion ${source.seriesVersion}${region ? `, ${region.epochsUsed} epochs, ${formatShare(region.coverage).replace('+', '')} of the span` : ''}${way ? `\n${way}` : ''}`, color: print.soft }] },
       checksum(source.seriesSha256),
       checksum(source.outlineSha256),
     ]

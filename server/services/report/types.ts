@@ -12,6 +12,10 @@ export interface ReportSource {
   seriesSha256: string
   source: string
   geometry: Outline
+  /** Where its water goes, where not all of it counts and reaches the sea; `restTo` is the key of another source. */
+  fractionToOcean?: number
+  restTo?: string | null
+  groundedFraction?: number
 }
 
 /** Everything that a report is made of; the same data make the same bytes. */

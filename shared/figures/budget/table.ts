@@ -125,8 +125,11 @@ export function budgetTable(result: RunResult, comparison: Comparison | null = n
   const decimals = decimalsOf(result.total)
   const raw = (kind: BudgetRowKind, row: BudgetRow, note: string | null = null): RawRow => ({ key: `${kind}-${row.key}`, kind, name: row.name, note, raw: rawOf(row, decimals) })
   const rows: RawRow[] = [
-    ...[...result.regions].sort((a, b) => size(b) - size(a))
-      .map(region => raw('region', region, region.scale === 0 ? 'switched off' : region.scale === 1 ? null : `mass × ${region.scale}`)),
+    ...result.regions.filter(region => !region.keptFrom).sort((a, b) => size(b) - size(a)).flatMap(region => [
+      raw('region', region, region.scale === 0 ? 'switched off' : region.scale === 1 ? null : `mass × ${region.scale}`),
+      // What does not reach the sea stands below the region that it comes from.
+      ...result.regions.filter(({ keptFrom }) => keptFrom === region.key).map(kept => raw('region', kept, region.scale === 0 ? 'switched off' : 'the part of the row above that does not reach the sea')),
+    ]),
     raw('model', { ...result.total, name: 'Model', shareOfModelLod: shareOfItself(result.total.lodMicrosecondsPerYear), shareOfModelPole: shareOfItself(result.total.driftCmPerYear) }),
     ...result.background.map(row => raw('background', row, 'background')),
     ...(result.background.length ? [] : [{ key: 'background', kind: 'background' as const, name: 'Background', note: 'not entered', raw: budgetColumns.map(() => none) }]),

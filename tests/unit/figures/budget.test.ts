@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { aligned } from '../../../shared/figures/budget/aligned.ts'
 import { budgetColumns, budgetTable } from '../../../shared/figures/budget/table.ts'
-import { sampleComparison, sampleRun } from './sampleRun.ts'
+import { sampleComparison, sampleRun, withPhysics } from './sampleRun.ts'
 
 const plain = (text: string) => text.replace(/[\u00a0\u202f]/g, ' ')
 
@@ -21,6 +21,15 @@ describe('budgetTable', () => {
     const { value, sigma } = rows.find(row => row.name === name)!.cells[budgetColumns.findIndex(({ id }) => id === column)]!
     return plain(`${value.text} ${sigma.text}`).trim()
   }
+
+  it('sets what a region keeps on land right below it', () => {
+    const rows = budgetTable(withPhysics())
+    expect(rows.map(({ name }) => name).slice(0, 3)).toEqual(['Northern ice dome', 'Kept on land: Northern ice dome to Southern ice margin', 'Southern ice margin'])
+    expect(rows[1]!.note).toBe('the part of the row above that does not reach the sea')
+    expect(rows[0]!.note).toBeNull()
+    expect(cell(rows, rows[1]!.name, 'mass')).toBe('+107.0 ± 7.5')
+    expect(rows.filter(({ kind }) => kind === 'region')).toHaveLength(7)
+  })
 
   it('holds regions by size, the model, the background and the rest of the world', () => {
     const rows = budgetTable(run)

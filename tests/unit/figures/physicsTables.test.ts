@@ -1,26 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { dataUncertaintyRow, derivedMissing, derivedTable, modelUncertaintyTable, uncertaintyColumns } from '../../../shared/figures/budget/physicsTables.ts'
 import { waterWaySentences } from '../../../shared/text/waterWay.ts'
-import { sampleRun } from './sampleRun.ts'
-import type { RunResult } from '../../../shared/types/run.ts'
-
-const m = (value: number, sigma: number) => ({ value, sigmaWhite: sigma / 2, sigma })
-
-function withPhysics(): RunResult {
-  const run = sampleRun()
-  return {
-    ...run,
-    total: {
-      ...run.total,
-      barystaticMmPerYear: m(1.181, 0.074), deltaJ2PerYear: m(4.53e-11, 2.8e-12),
-      derived: { deltaC21PerYear: m(-7.1e-12, 4e-13), deltaS21PerYear: m(4.2e-12, 1.1e-12), geocentreMmPerYear: { x: m(-0.08, 0.01), y: m(0.05, 0.02), z: m(-0.31, 0.03) } },
-    },
-    modelUncertainty: [
-      { id: 'coefficients', name: 'Coefficient set', text: 'Largest difference.', chi1MasPerYear: 0.003, chi2MasPerYear: 0.004, lodMicrosecondsPerYear: 0.0512 },
-      { id: 'frequency', name: 'Frequency dependence', text: 'Two per cent.', chi1MasPerYear: 0.0346, chi2MasPerYear: 0.02, lodMicrosecondsPerYear: 0 },
-    ],
-  }
-}
+import { withPhysics } from './sampleRun.ts'
 
 describe('derived quantities', () => {
   it('are seven rows with their errors and units', () => {

@@ -7,6 +7,7 @@ import { reportPdf } from '../../../server/services/report/reportPdf'
 import { cautions } from '../../../shared/text/cautions'
 import { findingSentence } from '../../../shared/text/finding'
 import { hostileRegions } from '../figures/hostile'
+import { withPhysics } from '../figures/sampleRun'
 import { sampleReport } from './sampleReport'
 import type { ReportData } from '../../../server/services/report/types'
 
@@ -124,6 +125,20 @@ describe('a report of other accounts', () => {
     expect(text).not.toMatch(/Invented data|Comparison with observation|Residual/)
     expect(text).toContain('one region (Northern ice dome)')
     expect(pages.length).toBeGreaterThanOrEqual(4)
+  }, 60_000)
+
+  it('holds derived quantities, the model’s own lines beside the data, and where water goes', async () => {
+    const data = sampleReport()
+    data.result = withPhysics(data.result)
+    data.sources[0] = { ...data.sources[0]!, fractionToOcean: 0.5, restTo: 'r2', groundedFraction: 0.9 }
+    const { text } = await printed(data)
+    for (const part of [
+      'Derived quantities', '+1.181 ± 0.074', '−0.710 ± 0.040', 'centre of mass relative to the centre of figure (CM − CF)',
+      'Model uncertainty', 'Coefficient set', 'Two per cent.', '0.051', 'Data, one sigma', 'added neither to one another nor to the ± of the data',
+      'Kept on land: Northern ice dome to Southern ice margin', '50 % reaches the sea, the rest goes to Southern ice margin.', '90 % of the ice is grounded above flotation',
+    ]) expect(text).toContain(part)
+    // The budget's own errors stay what they are without the lines.
+    expect(text).toContain('+9.63 ± 0.60')
   }, 60_000)
 
   it('lists overlaps before the sum and keeps every row of a long budget', async () => {

@@ -3,7 +3,7 @@ import { cautions, cautionsFor } from '../../../shared/text/cautions.ts'
 import { findingSentence, remainderSentences } from '../../../shared/text/finding.ts'
 import { methodSections, settingsLine } from '../../../shared/text/method.ts'
 import { counted, listed } from '../../../shared/text/words.ts'
-import { emptyRow, sampleComparison, sampleRun, sixRegions } from '../figures/sampleRun.ts'
+import { emptyRow, sampleComparison, sampleRun, sixRegions, withPhysics } from '../figures/sampleRun.ts'
 
 /** Spaces of any width as plain ones, so that a sentence can be read here. */
 const plain = (text: string) => text.replace(/[\u00a0\u202f]/g, ' ')
@@ -18,6 +18,9 @@ describe('findingSentence', () => {
   it('shortens the day for mass that moves inwards and names a single region', () => {
     expect(say([{ name: 'High Weir', mass: 40, lod: -1.2, chi1: -0.4, chi2: -0.3 }]))
       .toMatch(/^Reported mass change in one region \(High Weir\), 2004–2024, is calculated to shorten the day by 1\.20 ± 0\.12 µs per year \(1σ\) and to move the pole .* W\.$/)
+  })
+  it('counts regions and not the water that they keep on land', () => {
+    expect(plain(findingSentence(withPhysics()))).toMatch(/^Reported mass change in six regions/)
   })
   it('claims nothing within two sigma', () => {
     const text = say([{ name: 'A', mass: 1, lod: 0.1, chi1: 0.01, chi2: 0, sigma: 0.8 }])
