@@ -1,11 +1,18 @@
-import { previewOf, type ColumnChoices, type Preview, type Refusal } from '~/series/preview'
+import { previewOf, type ColumnChoices, type Preview, type PreviewSetting, type Refusal } from '~/series/preview'
 import type { PreviewAnswer, PreviewTask } from '~/series/previewWorker'
+import type { TableSource } from '#shared/series/table'
 
 /** Texts longer than this are read beside the page, in a worker. */
 const longText = 200_000
 
-/** Reads a text whenever it or a choice changes; answers to a text that has changed meanwhile are dropped. */
-export function useSeriesPreview(text: Ref<string>, choices: Ref<ColumnChoices>, areaM2: Ref<number>) {
+/** Characters of a table, near enough to tell a large one. */
+function sizeOf(source: TableSource): number {
+  return typeof source === 'string' ? source.length : source.cells.length * (source.cells[0]?.length ?? 1) * 8
+}
+const isEmpty = (source: TableSource) => typeof source === 'string' ? source.trim() === '' : source.cells.length === 0
+
+/** Reads a table whenever it, a choice or the setting changes; answers to what has changed meanwhile are dropped. */
+export function useSeriesPreview(source: Ref<TableSource>, choices: Ref<ColumnChoices>, areaM2: Ref<number>, setting: Ref<PreviewSetting>) {
   const preview = shallowRef<Preview | Refusal | null>(null)
   const busy = ref(false)
   let ticket = 0
@@ -19,7 +26,7 @@ export function useSeriesPreview(text: Ref<string>, choices: Ref<ColumnChoices>,
       if (event.data.ticket === ticket) take(event.data.preview)
     }
     worker.onerror = () => {
-      preview.value = { state: 'refused', message: 'The file could not be read in this browser. Cut it into parts.', issues: [], columns: [] }
+      preview.value = { state: 'refused', message: 'The file could not be read in this browser. Cut it into parts.', issues: [], columns: [], chosen: null }
       busy.value = false
     }
     return worker
@@ -32,18 +39,18 @@ export function useSeriesPreview(text: Ref<string>, choices: Ref<ColumnChoices>,
 
   function read() {
     const mine = ++ticket
-    if (text.value.trim() === '') return take(null)
-    const task: PreviewTask = { ticket: mine, text: text.value, choices: JSON.parse(JSON.stringify(choices.value)) as ColumnChoices, areaM2: areaM2.value }
-    if (text.value.length > longText) workerOf().postMessage(task)
-    else take(previewOf(task.text, task.choices, task.areaM2))
+    if (isEmpty(source.value)) return take(null)
+    const task: PreviewTask = { ticket: mine, source: toRaw(source.value), areaM2: areaM2.value, choices: JSON.parse(JSON.stringify(choices.value)) as ColumnChoices, setting: setting.value }
+    if (sizeOf(task.source) > longText) workerOf().postMessage(task)
+    else take(previewOf(task.source, task.choices, task.areaM2, task.setting))
   }
 
   if (import.meta.client) {
-    watch([text, choices, areaM2], () => {
-      busy.value = text.value.trim() !== ''
+    watch([source, choices, areaM2, setting], () => {
+      busy.value = !isEmpty(source.value)
       clearTimeout(timer)
-      timer = setTimeout(read, text.value.length > 20_000 ? 250 : 60)
-    }, { deep: true, immediate: true })
+      timer = setTimeout(read, sizeOf(source.value) > 20_000 ? 250 : 60)
+    }, { immediate: true })
     onScopeDispose(() => {
       clearTimeout(timer)
       worker?.terminate()

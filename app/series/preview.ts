@@ -1,11 +1,24 @@
 import { fitTrend } from '#shared/earth/time/trend'
+import type { OtherSeries } from '#shared/series/agreement'
+import { checkSeries, type Mark } from '#shared/series/checks'
 import { readMassSeries, type MassSeriesOptions, type MassSeriesReading, type MassSeriesRow } from '#shared/series/readMassSeries'
-import { readTable } from '#shared/series/table'
+import type { Recipe, StepDone } from '#shared/series/recipe'
+import { readTable, type TableSource } from '#shared/series/table'
 import { InputError, type Issue } from '#shared/types/issue'
+import { wideColumns } from './wide'
 
 /** What somebody set by hand; what is left out is recognised. */
 export type ColumnChoices = Pick<MassSeriesOptions,
-  'epochColumn' | 'valueColumn' | 'sigmaColumn' | 'epochFormat' | 'unit' | 'withdrawalPositive' | 'delimiter' | 'decimalComma' | 'header' | 'missingValues'>
+  'epochColumn' | 'endColumn' | 'endDayIncluded' | 'valueColumn' | 'sigmaColumn' | 'epochFormat' | 'unit' | 'withdrawalPositive' | 'delimiter' | 'decimalComma' | 'header' | 'missingValues' | 'edits' | 'leaveOut'>
+/** What a reading needs beside the table and the choices. */
+export interface PreviewSetting {
+  /** Name of the region, which a wide table may have as a column. */
+  regionName?: string
+  /** The way to gigatonnes where it is not that of a plain unit. */
+  recipe?: Recipe | null
+  /** What the series is held against: the version before it. */
+  other?: OtherSeries | null
+}
 
 export interface FileColumn { index: number, name: string, sample: string[] }
 export interface PreviewRow { row: number, epochText: string, valueText: string, sigma: number | null, mjd: number, massGt: number, sigmaGt: number | null }
@@ -24,28 +37,42 @@ export interface Preview {
   massGt: Float64Array
   sigmaGt: Float64Array | null
   steps: string[]
+  /** Steps of the conversion with their numbers. */
+  stepsDone: StepDone[]
+  /** What checks found; nothing is changed for it. */
+  marks: Mark[]
+  leftOut: MassSeriesReading['leftOut']
+  edited: MassSeriesReading['edited']
+  /** Names of the columns of values, where there are several side by side. */
+  sideBySide: string[]
   rowsRead: number
   /** Trend of the mass, Gt per year; null for fewer than three epochs. */
   trend: { value: number, sigmaWhite: number, sigma: number } | null
 }
 
 /** The text cannot be read as it stands: why, and its columns where there is a table at all. */
-export interface Refusal { state: 'refused', message: string, issues: Issue[], columns: FileColumn[] }
+export interface Refusal { state: 'refused', message: string, issues: Issue[], columns: FileColumn[], chosen: MassSeriesReading['chosen'] | null }
 
 const ends = 4
 
-/** Reads a text as the server will, and keeps what a person needs to see of it. Pure, so that a worker can do it. */
-export function previewOf(text: string, choices: ColumnChoices, areaM2: number): Preview | Refusal {
+/** Reads a table as the server will, and keeps what a person needs to see of it. Pure, so that a worker can do it. */
+export function previewOf(source: TableSource, given: ColumnChoices, areaM2: number, { regionName = '', recipe = null, other = null }: PreviewSetting = {}): Preview | Refusal {
+  const wide = wideColumns(source, given, regionName)
+  const choices: ColumnChoices = { ...given, ...wide.choices }
   let reading: MassSeriesReading
   try {
-    reading = readMassSeries(text, { ...choices, areaM2 })
+    reading = readMassSeries(source, { ...choices, areaM2, recipe })
   }
   catch (error) {
     if (!(error instanceof InputError)) throw error
-    return { state: 'refused', message: error.message, issues: error.issues, columns: columnsOf(text, choices) }
+    return { state: 'refused', message: error.message, issues: error.issues, columns: columnsOf(source, choices), chosen: recipe ? chosenOf(source, choices) : null }
   }
   const { rows, mjd, massGt, sigmaGt } = reading
-  const at = (row: MassSeriesRow, i: number): PreviewRow => ({ row: row.row, epochText: row.epochText, valueText: row.valueText, sigma: row.sigma, mjd: row.mjd, massGt: massGt[i]!, sigmaGt: sigmaGt?.[i] ?? null })
+  // Summed rates have one epoch more than rows: each row's sum stands at its end.
+  const extra = mjd.length - rows.length
+  const at = (row: MassSeriesRow, i: number): PreviewRow => ({
+    row: row.row, epochText: row.epochText, valueText: row.valueText, sigma: row.sigma, mjd: mjd[i + extra]!, massGt: massGt[i + extra]!, sigmaGt: sigmaGt?.[i + extra] ?? null,
+  })
   const cut = rows.length <= 2 * ends ? rows.length : ends
   return {
     state: 'read',
@@ -59,8 +86,24 @@ export function previewOf(text: string, choices: ColumnChoices, areaM2: number):
     massGt: Float64Array.from(massGt),
     sigmaGt: sigmaGt && Float64Array.from(sigmaGt),
     steps: reading.conversion.steps,
+    stepsDone: reading.replayed.steps,
+    marks: checkSeries({ mjd, massGt, sigmaGt, rows: mjd.map((_, i) => rows[Math.max(0, i - extra)]!.row), areaM2, others: other ? [other] : [] }),
+    leftOut: reading.leftOut,
+    edited: reading.edited,
+    sideBySide: wide.names.length > 1 ? wide.names : [],
     rowsRead: reading.rowsRead,
     trend: trendOf(mjd, massGt, sigmaGt),
+  }
+}
+
+/** The columns as they are understood where the conversion alone fails. */
+function chosenOf(source: TableSource, choices: ColumnChoices): MassSeriesReading['chosen'] | null {
+  try {
+    return readMassSeries(source, { ...choices, unit: 'Gt' }).chosen
+  }
+  catch (error) {
+    if (error instanceof InputError) return null
+    throw error
   }
 }
 
@@ -76,9 +119,9 @@ function trendOf(mjd: number[], value: number[], sigma: number[] | null): Previe
 }
 
 /** Columns of a table whose meaning was not recognised, so that it can be said by hand. */
-function columnsOf(text: string, { delimiter, decimalComma, header }: ColumnChoices): FileColumn[] {
+function columnsOf(source: TableSource, { delimiter, decimalComma, header }: ColumnChoices): FileColumn[] {
   try {
-    const table = readTable(text, { delimiter, decimalComma, header })
+    const table = readTable(source, { delimiter, decimalComma, header })
     return Array.from({ length: table.width }, (_, index) => ({
       index, name: table.header?.[index]?.trim() || `column ${index + 1}`, sample: table.rows.slice(0, 3).map(row => (row.cells[index] ?? '').trim().slice(0, 40)),
     }))
@@ -91,6 +134,9 @@ function columnsOf(text: string, { delimiter, decimalComma, header }: ColumnChoi
 
 /** The choices that the server is to read with: every one that the preview used. */
 export function columnsToSend({ chosen }: Preview) {
-  const { epochColumn, valueColumn, sigmaColumn, epochFormat, unit, withdrawalPositive, delimiter, decimalComma, header, missingValues } = chosen
-  return { epochColumn, valueColumn, sigmaColumn, epochFormat, unit, withdrawalPositive, delimiter, decimalComma, header, ...(missingValues.length ? { missingValues } : {}) }
+  const { epochColumn, endColumn, endDayIncluded, valueColumn, sigmaColumn, epochFormat, unit, withdrawalPositive, delimiter, decimalComma, header, missingValues, edits, leaveOut } = chosen
+  return {
+    epochColumn, endColumn, endDayIncluded, valueColumn, sigmaColumn, epochFormat, unit, withdrawalPositive, delimiter, decimalComma, header,
+    ...(missingValues.length ? { missingValues } : {}), ...(edits.length ? { edits } : {}), ...(leaveOut.length ? { leaveOut } : {}),
+  }
 }

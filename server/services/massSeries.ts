@@ -2,6 +2,7 @@ import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import type { Principal } from '#shared/permissions'
 import { readMassSeries, type MassSeriesOptions } from '#shared/series/readMassSeries'
+import { systematicRates, type SystematicRate } from '#shared/series/uncertainty'
 import { InputError } from '#shared/types/issue'
 import { eq } from 'drizzle-orm'
 import { schema, type Reader } from '../database/client'
@@ -22,7 +23,10 @@ export async function createSeriesVersion(context: Context, principal: Principal
   const actor = authorise(principal, 'region.write', { workspaceId: region.workspaceId, kind: region.kind })
   const outline = latestOutline(context, regionId)
   const { sigmaColumn, ...columns } = body.columns
-  const options = { ...columns, ...(sigmaColumn === undefined ? {} : { sigmaColumn }), areaM2: outline.areaM2 } as MassSeriesOptions
+  const recipeAsked = body.conversion && await recipeFor(body.conversion, outline.areaM2, columns.withdrawalPositive)
+  const options = {
+    ...columns, ...(sigmaColumn === undefined ? {} : { sigmaColumn }), areaM2: outline.areaM2, ...(recipeAsked ? { recipe: recipeAsked } : {}),
+  } as MassSeriesOptions
   const read = readMassSeries(await uploadText(upload), options)
   if (read.issues.length && !body.leaveOutBadRows) {
     throw new InputError(`${read.issues.length} of ${read.rowsRead} rows cannot be used. Nothing was stored.`, read.issues)
@@ -30,10 +34,11 @@ export async function createSeriesVersion(context: Context, principal: Principal
   if (read.mjd.length === 0) throw new InputError('No row of this file can be used. Nothing was stored.', read.issues)
 
   const values = { mjd: read.mjd, massGt: read.massGt, sigmaGt: read.sigmaGt }
-  const shared = [...body.sharedRates].sort((a, b) => a.source.localeCompare(b.source))
+  // Errors of the conversion that all epochs share are errors of the trend, by name like those that were entered.
+  const shared = sumBySource([...body.sharedRates, ...systematicRates(read.replayed, region.name)])
   const dataSha256 = sha256Hex(canonicalJson({ ...values, sharedRates: shared }))
   const recipe = {
-    options: { ...options, ...read.chosen }, steps: read.conversion.steps, outlineSha256: outline.sha256,
+    options: { ...options, ...read.chosen }, steps: read.conversion.steps, stepsDone: read.replayed.steps, conversion: body.conversion, outlineSha256: outline.sha256,
     rowsRead: read.rowsRead, rowsStored: read.mjd.length, leftOut: read.issues.slice(0, 1000), leftOutCount: read.issues.length, notices: read.notices,
   }
   await keepOriginal(context, upload)
@@ -60,6 +65,19 @@ export async function createSeriesVersion(context: Context, principal: Principal
     return { result: undefined, after: { region: regionId, n, dataSha256, originalSha256: upload.sha256, rowsStored: read.mjd.length, rowsLeftOut: read.issues.length, reason: body.reason } }
   })
   return versionView(context, versionRow(context, versionId))
+}
+
+/** The parser of units is loaded when the first unit is asked for. */
+async function recipeFor(choice: NonNullable<NewSeries['conversion']>, areaM2: number, withdrawalPositive?: boolean) {
+  const { recipeOfChoice } = await import('#shared/series/conversionChoice')
+  return recipeOfChoice(choice, areaM2, withdrawalPositive)
+}
+
+/** Systematic rates in order of their names; the same source twice is one error, and adds up with its sign. */
+function sumBySource(rates: readonly SystematicRate[]): SystematicRate[] {
+  const sums = new Map<string, number>()
+  for (const { source, sigmaGtPerYear } of rates) sums.set(source, (sums.get(source) ?? 0) + sigmaGtPerYear)
+  return [...sums].map(([source, sigmaGtPerYear]) => ({ source, sigmaGtPerYear })).sort((a, b) => a.source.localeCompare(b.source))
 }
 
 function errorSourceId(context: Context, tx: Reader, workspaceId: string, name: string): string {

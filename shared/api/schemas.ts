@@ -1,5 +1,7 @@
 import { z } from 'zod'
 import { epochFormats } from '../series/epochColumn.ts'
+import { quantities } from '../series/quantityKinds.ts'
+import { correctionKinds, materials } from '../series/recipe.ts'
 import { coefficientSetIds, coreChoices, oceanModes, regionKinds, roles } from '../types/domain.ts'
 
 /** Limits guard the server against bodies that cannot be meant; each says what it guards. */
@@ -91,11 +93,31 @@ export const perGt = z.object({
 export const massColumns = z.object({
   epochColumn: z.int().min(0).optional(), valueColumn: z.int().min(0).optional(), sigmaColumn: z.int().min(0).nullable().optional(),
   epochFormat: z.enum(epochFormats).optional(),
+  /** Where each row's period ends, for rates and balances; null: rows have no end though a column looks like one. */
+  endColumn: z.int().min(0).nullable().optional(), endDayIncluded: z.boolean().optional(),
+  /** Gigatonnes and heights of water; every other quantity and unit goes into `conversion`. */
   unit: z.enum(['Gt', 'mm-we', 'cm-we']).optional(),
   withdrawalPositive: z.boolean().optional(), delimiter: z.string().max(1).optional(), decimalComma: z.boolean().optional(),
   header: z.boolean().optional(),
   /** Marks of a missing value besides the usual ones; a mark is a cell, not a text. */
   missingValues: z.array(z.string().trim().min(1).max(20)).max(10).optional(),
+})
+
+/** A number of a conversion; its error is the same at every epoch. The same `source` in two series is the same error. */
+const parameter = z.object({ value: finite, sigma: finite.min(0).default(0), source: name.nullable().default(null) })
+/** How the values of a file become gigatonnes. What is missing for the quantity is answered with an issue for each. */
+export const massConversion = z.object({
+  quantity: z.enum(quantities),
+  /** As people write it: km³, 10⁶ m³, acre-feet, m w.e. per year. */
+  unit: z.string().trim().min(1).max(60),
+  /** kg/m³, for volumes and ice thickness. */
+  density: parameter.extend({ material: z.enum(materials) }).nullable().optional(),
+  /** For groundwater heads. */
+  storage: parameter.extend({ coefficient: z.enum(['specific-yield', 'storativity']) }).nullable().optional(),
+  /** One-sigma of the outline's area. */
+  area: z.object({ sigmaKm2: finite.min(0), source: name.nullable().default(null) }).nullable().optional(),
+  /** Rates that are taken off, Gt per year, gain positive; `on: false` keeps a step without carrying it out. */
+  corrections: z.array(z.object({ on: z.boolean().default(true), what: z.enum(correctionKinds), name, gtPerYear: parameter })).max(20).optional(),
 })
 
 export const measuredPlain = z.object({ value: finite, sigma: finite.min(0) })
