@@ -4,6 +4,7 @@ import { DEGREE } from '../constants.ts'
 import { covarianceOfFunctionals } from './covariance.ts'
 import type { Covariance } from './covariance.ts'
 import { seededNormals } from './monteCarloNormals.ts'
+import type { Normals } from './monteCarloNormals.ts'
 
 /** One region's series in a Monte Carlo: its fitted trend, how the trend draws on the epochs, and their errors. */
 export interface MonteCarloSeries {
@@ -66,25 +67,15 @@ function* memberSteps({ series, members, seed }: MonteCarloInput): Steps<MonteCa
   const names = [...new Set(series.flatMap(s => s.covariance.factors.map(f => f.source)))]
   const ready = series.map(s => prepare(s, names))
   const normals = seededNormals(seed)
-  const shared = new Float64Array(names.length)
-  const own = ready.map(r => new Float64Array(r.epochs.length))
-  const rates = series.map(() => new Float64Array(members))
-  const totals: Record<RateName, Float64Array> = { massGt: new Float64Array(members), chi1Mas: new Float64Array(members), chi2Mas: new Float64Array(members), lodMicroseconds: new Float64Array(members) }
-  for (let m = 0; m < members; m++) {
-    if (m > 0 && m % CHUNK === 0) yield 0.95 * m / members
-    normals(shared)
-    for (let k = 0; k < series.length; k++) {
-      const z = own[k]!
-      const { epochs, sources } = ready[k]!
-      normals(z)
-      let rate = series[k]!.rate
-      for (let i = 0; i < z.length; i++) rate += epochs[i]! * z[i]!
-      for (const { at, effect } of sources) rate += effect * shared[at]!
-      rates[k]![m] = rate
-      const { perGt } = series[k]!
-      for (const name of rateNames) totals[name][m] = totals[name][m]! + perGt[name] * rate
-    }
+  const drawn: Drawn = {
+    rates: series.map(() => new Float64Array(members)),
+    totals: { massGt: new Float64Array(members), chi1Mas: new Float64Array(members), chi2Mas: new Float64Array(members), lodMicroseconds: new Float64Array(members) }
   }
+  for (let from = 0; from < members; from += CHUNK) {
+    if (from > 0) yield 0.95 * from / members
+    drawMembers(series, ready, normals, new Float64Array(names.length), drawn, from, Math.min(members, from + CHUNK))
+  }
+  const { rates, totals } = drawn
   yield 0.95
   return {
     members,
@@ -94,6 +85,33 @@ function* memberSteps({ series, members, seed }: MonteCarloInput): Steps<MonteCa
     series: series.map(({ key, perGt }, k) => ({ key, massGt: distribution(rates[k]!.map(rate => rate * perGt.massGt)) })),
     linear: linearSigmas(series)
   }
+}
+
+/** Trends of the members, Gt per year by series, and totals of each rate. */
+interface Drawn { rates: Float64Array[], totals: Record<RateName, Float64Array> }
+
+function drawMembers(series: readonly MonteCarloSeries[], ready: readonly Ready[], normals: Normals, shared: Float64Array, { rates, totals }: Drawn, from: number, to: number): void {
+  // One stretch of memory for all series: it stays in the nearest cache.
+  const scratch = new Float64Array(ready.reduce((most, r) => Math.max(most, r.epochs.length), 0))
+  const own = ready.map(r => scratch.subarray(0, r.epochs.length))
+  for (let m = from; m < to; m++) {
+    normals(shared)
+    for (let k = 0; k < series.length; k++) {
+      const z = own[k]!
+      normals(z)
+      let rate = series[k]!.rate + dot(ready[k]!.epochs, z)
+      for (const { at, effect } of ready[k]!.sources) rate += effect * shared[at]!
+      rates[k]![m] = rate
+      const { perGt } = series[k]!
+      for (const name of rateNames) totals[name][m] = totals[name][m]! + perGt[name] * rate
+    }
+  }
+}
+
+function dot(x: Float64Array, y: Float64Array): number {
+  let sum = 0
+  for (let i = 0; i < x.length; i++) sum += x[i]! * y[i]!
+  return sum
 }
 
 function check(series: readonly MonteCarloSeries[], members: number): void {

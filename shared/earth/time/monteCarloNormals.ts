@@ -16,19 +16,15 @@ const AREA = 9.91256303526217e-3
  */
 export function seededNormals(seed: number): Normals {
   if (!Number.isInteger(seed) || seed < 0 || seed > 2 ** 32 - 1) throw new RangeError(`seed must be a whole number from 0 to 4294967295, got ${seed}`)
-  const { width, height, sure } = layers()
-  // State of sfc32 from here to there; `fill` keeps it in variables of its own, which is what makes it quick.
+  const { scale, height, sure } = layers()
   const state = Int32Array.of(0, seed, 0x9E3779B9, 1)
+  const uniform = (): number => (nextWord(state) >>> 0) / 2 ** 32 + 2 ** -33
   const fill = (out: Float64Array): void => {
-    let [a, b, c, counter] = [state[0]!, state[1]!, state[2]!, state[3]!]
-    const uniform = (): number => {
-      const sum = (a + b + counter) | 0
-      counter = (counter + 1) | 0
-      a = b ^ (b >>> 9)
-      b = (c + (c << 3)) | 0
-      c = (((c << 21) | (c >>> 11)) + sum) | 0
-      return ((sum >>> 0) + 0.5) / 2 ** 32
-    }
+    // The quick way keeps the state in variables of its own; every hundredth number or so goes the slow way, through the array.
+    let a = state[0]!
+    let b = state[1]!
+    let c = state[2]!
+    let counter = state[3]!
     for (let i = 0; i < out.length;) {
       const word = (a + b + counter) | 0
       counter = (counter + 1) | 0
@@ -36,11 +32,22 @@ export function seededNormals(seed: number): Normals {
       b = (c + (c << 3)) | 0
       c = (((c << 21) | (c >>> 11)) + word) | 0
       const layer = word & (LAYERS - 1)
-      const u = (word >> 7) / 2 ** 24
-      const x = u * width[layer]!
-      if (Math.abs(u) < sure[layer]!) out[i++] = x
-      else if (layer === 0) out[i++] = (u < 0 ? -1 : 1) * tail(uniform)
+      const place = word >> 7
+      const x = place * scale[layer]!
+      if ((place < 0 ? -place : place) < sure[layer]!) {
+        out[i++] = x
+        continue
+      }
+      state[0] = a
+      state[1] = b
+      state[2] = c
+      state[3] = counter
+      if (layer === 0) out[i++] = (place < 0 ? -1 : 1) * tail(uniform)
       else if (height[layer]! + uniform() * (height[layer + 1]! - height[layer]!) < Math.exp(-x * x / 2)) out[i++] = x
+      a = state[0]!
+      b = state[1]!
+      c = state[2]!
+      counter = state[3]!
     }
     state[0] = a
     state[1] = b
@@ -52,8 +59,21 @@ export function seededNormals(seed: number): Normals {
   return fill
 }
 
-/** Widths of the layers and heights of the curve at them, and the part of each layer that lies under the curve for certain. */
-function layers(): { width: Float64Array, height: Float64Array, sure: Float64Array } {
+/** One word of sfc32, 32 bits. */
+function nextWord(state: Int32Array): number {
+  const word = (state[0]! + state[1]! + state[3]!) | 0
+  state[3] = state[3]! + 1
+  state[0] = state[1]! ^ (state[1]! >>> 9)
+  state[1] = state[2]! + (state[2]! << 3)
+  state[2] = ((state[2]! << 21) | (state[2]! >>> 11)) + word
+  return word
+}
+
+/** Places of a layer: 2²⁴ on each side. */
+const PLACES = 2 ** 24
+
+/** Distance of the places of each layer, heights of the curve at the layers, and the places below which a layer lies under the curve for certain. */
+function layers(): { scale: Float64Array, height: Float64Array, sure: Int32Array } {
   const width = new Float64Array(LAYERS + 1)
   const height = new Float64Array(LAYERS + 1)
   width[0] = AREA / Math.exp(-TAIL * TAIL / 2)
@@ -64,7 +84,7 @@ function layers(): { width: Float64Array, height: Float64Array, sure: Float64Arr
     width[i] = Math.sqrt(-2 * Math.log(height[i]!))
   }
   height[LAYERS] = 1
-  return { width, height, sure: Float64Array.from({ length: LAYERS }, (_, i) => width[i + 1]! / width[i]!) }
+  return { scale: width.map(w => w / PLACES), height, sure: Int32Array.from({ length: LAYERS }, (_, i) => width[i + 1]! / width[i]! * PLACES) }
 }
 
 /** A number beyond the last layer. */
