@@ -90,12 +90,16 @@ export function runFault(draft: ScenarioDraft): string | null {
   return null
 }
 
+const regionFields: Record<string, string> = {
+  versionId: 'series', series: 'series', scale: 'factor', fractionToOcean: 'to the sea', restTo: 'where the rest goes', groundedFraction: 'grounded part',
+}
+
 /** Where in the draft a fault lies, in words. */
 export function placeOfIssue(issue: Issue, draft: ScenarioDraft, nameOf: (regionId: string) => string): string {
   const [, part, index, field] = /^(?:draft\/)?(\w+)(?:\/(\w+))?(?:\/(\w+))?/.exec(issue.path ?? '') ?? []
   if (part === 'regions' && index !== undefined) {
     const region = draft.regions[Number(index)]
-    return [region ? nameOf(region.regionId) : 'a region', field === 'versionId' || field === 'series' ? 'series' : field === 'scale' ? 'factor' : ''].filter(Boolean).join(', ')
+    return [region ? nameOf(region.regionId) : 'a region', regionFields[field ?? ''] ?? ''].filter(Boolean).join(', ')
   }
   if (part === 'background' && index !== undefined) return draft.background[Number(index)]?.name || 'a background row'
   if (part === 'settings') return index === 'fromMjd' || index === 'toMjd' ? 'span' : 'settings'
