@@ -1,5 +1,6 @@
 import type { Measured } from '../../types/domain.ts'
 import { formatNumber } from '../../format/numbers.ts'
+import { JULIAN_YEAR_DAYS } from './epochs.ts'
 import { weightedLeastSquares } from './leastSquares.ts'
 import { medianStep } from './monthlyMeans.ts'
 import { fitByLikelihood, fitUnder } from './noiseModels.ts'
@@ -91,9 +92,15 @@ export function fitAr1ByCorrelation(series: TimeSeriesInput, options: TrendOptio
   return { names, coefficients: fit.coefficients, sigma: fit.sigma, r1 }
 }
 
+/** Usual step, days; a twelfth of a year for calendar months, whose median of 30 to 31 days would run away from them over decades. */
+function gridStep(mjd: ArrayLike<number>): number {
+  const step = medianStep(mjd)
+  return step >= 28 && step <= 31.5 ? JULIAN_YEAR_DAYS / 12 : step
+}
+
 /** The fit on a regular grid; null where the epochs do not lie on one. */
 function gridProblem(series: TimeSeriesInput, options: TrendOptions): GridProblem | null {
-  const step = medianStep(series.mjd)
+  const step = gridStep(series.mjd)
   const first = series.mjd[0]!
   const slots = Array.from(series.mjd, t => Math.round((t - first) / step))
   const count = slots.at(-1)! + 1
