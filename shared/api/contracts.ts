@@ -1,13 +1,14 @@
 import { z } from 'zod'
 import { epochFormats } from '../series/epochColumn.ts'
 import { oceanModes } from '../types/domain.ts'
+import { attributionAnswer, attributionQuery } from './attributionSchemas.ts'
 import { chainAnswer, chainQuery } from './chainSchemas.ts'
 import { contract, type Contract } from './contract.ts'
 import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
 import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
-  agency, edition, geometry, jobView, limits, listOf, massColumns, massConversion, me, name, observedData, observedSummary, overlap, page, perGt, prose,
+  agency, edition, geometry, jobView, limits, listOf, markDecisions, massColumns, massConversion, me, name, observedData, observedSummary, overlap, page, perGt, prose,
   region, regionKind, regionTotal, revision, role, runSummary, scenario, scenarioDraft, sha256, trendSummary, ulid, versionSummary,
 } from './schemas.ts'
 
@@ -158,7 +159,7 @@ export const contracts = {
   seriesCreate: contract({
     id: 'seriesCreate', method: 'POST', path: '/api/v1/regions/{id}/series', action: 'region.write', summary: 'Store a new version of a region’s mass series', params: byId, bodyType: 'multipart',
     body: versionFacts.extend({
-      columns: massColumns, conversion: massConversion.nullable().default(null), leaveOutBadRows: z.boolean().default(false),
+      columns: massColumns, conversion: massConversion.nullable().default(null), decisions: markDecisions.default([]), leaveOutBadRows: z.boolean().default(false),
       sharedRates: z.array(z.object({ source: name, sigmaGtPerYear: z.number().min(0) })).max(20).default([]),
     }),
     answer: versionSummary, status: 201, maxBytes: limits.originalBytes,
@@ -232,6 +233,11 @@ export const contracts = {
   runComparison: contract({
     id: 'runComparison', method: 'GET', path: '/api/v1/runs/{id}/comparison', action: 'run.read', summary: 'A run beside an observed series', params: byId,
     query: z.object({ observed: ulid, zonalTides: z.enum(['none', 'all']).default('none') }), answer: comparison,
+  }),
+  runAttribution: contract({
+    id: 'runAttribution', method: 'GET', path: '/api/v1/runs/{id}/attribution', action: 'run.read',
+    summary: 'A run attributed to a reduced observed series: bands, trends under three noise models, budget with correlations, factors, what can be told apart; stores nothing', params: byId,
+    query: attributionQuery, answer: attributionAnswer,
   }),
   runFile: contract({
     id: 'runFile', method: 'GET', path: '/api/v1/runs/{id}/files/{file}', action: 'report.export', summary: 'Report and data of a run: report.pdf, budget.csv, series.csv, regions.geojson, run.json',

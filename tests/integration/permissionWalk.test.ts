@@ -164,6 +164,7 @@ const steps: Step[] = [
   { route: 'jobCancel', case: 'of another', rule: 'othersRow', make: () => ({ params: { id: shared.jobId } }) },
   { route: 'runRead', rule: 'science', make: () => ({ params: { id: shared.runId } }) },
   { route: 'runComparison', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { observed: shared.observed } }) },
+  { route: 'runAttribution', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { observed: shared.observed } }) },
   { route: 'runSeaLevel', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { step: 5 } }) },
   { route: 'runSeaLevelCsv', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { step: 5 } }) },
   { route: 'regionSeaLevel', rule: 'science', make: () => ({ params: { id: shared.liquid }, query: { step: 5 } }) },

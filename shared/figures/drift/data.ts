@@ -10,7 +10,7 @@ export interface DriftVector {
 }
 
 export interface DriftItem extends DriftVector {
-  /** Gt per year; its sign chooses loss or gain. */
+  /** Gt per year; its sign chooses loss or gain, 0 stands for background. */
   mass: number
 }
 

@@ -47,7 +47,7 @@ export function driftFigure(given: DriftData, options: DriftOptions): Figure {
     drawArrow(canvas, origin, tipOf(data.observed), { stroke: palette.observed, width: 1.5, dashes: '5 3' })
   }
   for (const leg of legs) {
-    drawArrow(canvas, view.at(leg.from), view.at(leg.to), { stroke: leg.mass > 0 ? palette.gain : palette.loss, width: 1.75, open: leg.mass > 0 })
+    drawArrow(canvas, view.at(leg.from), view.at(leg.to), { stroke: legColour(leg, palette), width: 1.75, open: leg.mass > 0 })
   }
   drawArrow(canvas, origin, tipOf(data.total), { stroke: palette.model, width: 2.5 })
   canvas.add('circle', { cx: origin[0], cy: origin[1], r: 2.5, fill: palette.ink })
@@ -164,6 +164,11 @@ function drawEllipse(canvas: Canvas, view: DriftView, centre: DriftData['total']
 
 interface ArrowStyle { stroke: string, width: number, dashes?: string, open?: boolean }
 
+/** Warm for mass lost, cool for mass gained, soft for what has no mass: background. */
+function legColour({ mass }: Leg, palette: Canvas['palette']): string {
+  return mass > 0 ? palette.gain : mass < 0 ? palette.loss : palette.soft
+}
+
 /** A vector; the head is open for mass gained. */
 function drawArrow(canvas: Canvas, from: Point, to: Point, { stroke, width, dashes, open }: ArrowStyle): void {
   const [dx, dy] = [to[0] - from[0], to[1] - from[1]]
@@ -182,8 +187,9 @@ function drawArrow(canvas: Canvas, from: Point, to: Point, { stroke, width, dash
 function drawKey(canvas: Canvas, legs: readonly Leg[], observed: boolean, top: number, width: number): number {
   const { palette } = canvas
   const entries: { text: string, style: ArrowStyle }[] = [
-    ...(legs.some(leg => leg.mass <= 0) ? [{ text: 'mass lost', style: { stroke: palette.loss, width: 1.75 } }] : []),
+    ...(legs.some(leg => leg.mass < 0) ? [{ text: 'mass lost', style: { stroke: palette.loss, width: 1.75 } }] : []),
     ...(legs.some(leg => leg.mass > 0) ? [{ text: 'mass gained', style: { stroke: palette.gain, width: 1.75, open: true } }] : []),
+    ...(legs.some(leg => leg.mass === 0) ? [{ text: 'background', style: { stroke: palette.soft, width: 1.75 } }] : []),
     { text: 'model', style: { stroke: palette.model, width: 2.5 } },
     ...(observed ? [{ text: 'observed', style: { stroke: palette.observed, width: 1.5, dashes: '5 3' } }] : []),
   ]
@@ -203,7 +209,7 @@ function drawList(canvas: Canvas, unnamed: readonly NamedVector[], top: number, 
   const { palette } = canvas
   unnamed.forEach(({ text, leg, fill }, i) => {
     const base = top + 16 + i * 20
-    const colour = leg ? leg.mass > 0 ? palette.gain : palette.loss : fill
+    const colour = leg ? legColour(leg, palette) : fill
     drawArrow(canvas, [2, base - 4], [20, base - 4], { stroke: colour, width: 1.75, open: leg !== undefined && leg.mass > 0 })
     const figure = leg?.figure ?? ''
     canvas.text(shortened(leg?.name ?? text, width - 40 - textWidth(figure, 12), 12), 26, base)
