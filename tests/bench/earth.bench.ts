@@ -9,23 +9,14 @@ import { seaLevelEquation } from '../../shared/earth/seaLevelEquation.ts'
 import { sensitivityOf, functionals } from '../../shared/earth/sensitivity.ts'
 import { splitFieldFile, unpackFields, type SensitivityFields } from '../../shared/earth/sensitivityField.ts'
 import { sha256Hex } from '../../shared/earth/sha256.ts'
-import type { Outline, PhysicsSettings, Position } from '../../shared/types/domain.ts'
+import type { Outline, PhysicsSettings } from '../../shared/types/domain.ts'
 import { fastest, type Figure } from './measure.ts'
+import { wavyOutline } from './outlines.ts'
 
 const settings: PhysicsSettings = { ocean: 'fingerprint', coefficients: 'gross-2007', core: 'decoupled' }
 const fieldsPath = 'public/earth/fields.bin'
 const regions = 500
 const months = 600
-
-/** A wavy outline of a given radius round a place. */
-function wavyOutline(vertices: number, lon = 20, lat = 30, radiusDeg = 10): Outline {
-  const ring: Position[] = Array.from({ length: vertices }, (_, i) => {
-    const angle = 2 * Math.PI * i / vertices
-    const radius = radiusDeg * (1 + 0.1 * Math.sin(7 * angle))
-    return [lon + radius * Math.cos(angle), lat + radius * Math.sin(angle)]
-  })
-  return { type: 'Polygon', coordinates: [[...ring, ring[0]!]] }
-}
 
 /** Milliseconds of one call, the best of five rounds of many. */
 function each(calls: number, fn: () => unknown): number {

@@ -2,25 +2,15 @@ import { loadEarthModel } from '../../shared/earth/earthModel.ts'
 import { computeRun } from '../../shared/earth/time/run.ts'
 import { fitTrend } from '../../shared/earth/time/trend.ts'
 import { trendNoise } from '../../shared/earth/time/trendNoise.ts'
-import type { Polygon } from '../../shared/types/domain.ts'
 import { region, runInput } from '../unit/time/runFixtures.ts'
 import { fastest, type Figure } from './measure.ts'
-
-/** A wavy ring of 200 vertices about a centre. */
-function ring(lon: number, lat: number): Polygon {
-  const coordinates = Array.from({ length: 200 }, (_, i) => {
-    const angle = 2 * Math.PI * i / 200
-    const radius = 2 + 0.5 * Math.cos(7 * angle)
-    return [lon + radius * Math.cos(angle), lat + radius * Math.sin(angle)] as [number, number]
-  })
-  return { type: 'Polygon', coordinates: [[...coordinates, coordinates[0]!]] }
-}
+import { wavyOutline } from './outlines.ts'
 
 /** Runs and fits. */
 export function run(): Figure[] {
   const model = loadEarthModel()
   const mjd = Array.from({ length: 300 }, (_, i) => 50000 + i * 30.4375)
-  const regions = Array.from({ length: 200 }, (_, i) => region(`r${i}`, ring(-170 + 17 * (i % 20), -60 + 12 * Math.floor(i / 20)), 0, {
+  const regions = Array.from({ length: 200 }, (_, i) => region(`r${i}`, wavyOutline(200, -170 + 17 * (i % 20), -60 + 12 * Math.floor(i / 20), 2), 0, {
     series: { mjd, massGt: mjd.map((t, k) => -t / 100 + Math.sin(k * (i + 1))), sigmaGt: mjd.map(() => 2), sharedRates: [{ source: `gia ${i % 5}`, sigmaGtPerYear: 1 }] }
   }))
   const input = runInput(regions)
