@@ -33,6 +33,8 @@ export default defineNuxtConfig({
     head: {
       htmlAttrs: { lang: 'en' },
       titleTemplate: '%s · Counterpoise',
+      // Schemas may not compile themselves on a page: the policy forbids it, and the attempt alone is reported.
+      script: [{ innerHTML: 'globalThis.__zod_globalConfig={jitless:true}' }],
       link: [{ rel: 'icon', type: 'image/svg+xml', href: '/icon.svg' }],
       meta: [{ name: 'viewport', content: 'width=device-width, initial-scale=1' }],
     },

@@ -1,6 +1,11 @@
 import { contracts, type ContractId } from '#shared/api/contracts'
 import type { AnswerOf } from '#shared/api/contract'
 
+declare module 'vitest' {
+  /** What serverSetup.ts hands to every test file. */
+  export interface ProvidedContext { url: string, dataDir: string }
+}
+
 export interface Answer<T = unknown> { status: number, headers: Headers, text: string, json: T }
 export interface ProblemJson { type: string, title: string, status: number, code: string, detail: string, issues?: { path?: string, row?: number, column?: string, code: string, message: string }[] }
 

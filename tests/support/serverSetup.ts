@@ -1,9 +1,6 @@
 import type { TestProject } from 'vitest/node'
+import './client'
 import { startServer } from './server'
-
-declare module 'vitest' {
-  export interface ProvidedContext { url: string, dataDir: string }
-}
 
 /** One built server with the demo for all files of a project; a failure that it logged fails the project. */
 export default async function setup(project: TestProject) {
