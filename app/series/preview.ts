@@ -41,6 +41,8 @@ export interface Preview {
   stepsDone: StepDone[]
   /** What checks found; nothing is changed for it. */
   marks: Mark[]
+  /** Cells of the value in the rows that a mark is about. */
+  cells: Record<number, string>
   leftOut: MassSeriesReading['leftOut']
   edited: MassSeriesReading['edited']
   /** Names of the columns of values, where there are several side by side. */
@@ -74,6 +76,9 @@ export function previewOf(source: TableSource, given: ColumnChoices, areaM2: num
     row: row.row, epochText: row.epochText, valueText: row.valueText, sigma: row.sigma, mjd: mjd[i + extra]!, massGt: massGt[i + extra]!, sigmaGt: sigmaGt?.[i + extra] ?? null,
   })
   const cut = rows.length <= 2 * ends ? rows.length : ends
+  const rowOf = mjd.map((_, i) => rows[Math.max(0, i - extra)]?.row ?? 0)
+  const marks = checkSeries({ mjd, massGt, sigmaGt, rows: rowOf, areaM2, others: other ? [other] : [] })
+  const marked = new Set(marks.flatMap(mark => mark.rows))
   return {
     state: 'read',
     columns: reading.columns.map(({ index, name, sample }) => ({ index, name, sample })),
@@ -87,7 +92,8 @@ export function previewOf(source: TableSource, given: ColumnChoices, areaM2: num
     sigmaGt: sigmaGt && Float64Array.from(sigmaGt),
     steps: reading.conversion.steps,
     stepsDone: reading.replayed.steps,
-    marks: checkSeries({ mjd, massGt, sigmaGt, rows: mjd.map((_, i) => rows[Math.max(0, i - extra)]!.row), areaM2, others: other ? [other] : [] }),
+marks,
+    cells: Object.fromEntries(rows.filter(row => marked.has(row.row)).map(row => [row.row, row.valueText])),
     leftOut: reading.leftOut,
     edited: reading.edited,
     sideBySide: wide.names.length > 1 ? wide.names : [],

@@ -1,3 +1,5 @@
+import type { MarkDecision } from '#shared/series/checks'
+import { decisionsOfDraft } from './marks'
 import { fieldsOfDraft, type ConversionFields } from './conversionFields'
 import type { ColumnChoices } from './preview'
 
@@ -11,7 +13,7 @@ export interface SeriesFacts {
   sharedRates: SharedRateField[]
 }
 /** What somebody has entered so far. */
-export interface SeriesDraft { text: string, fileName: string | null, choices: ColumnChoices, conversion: ConversionFields | null, facts: SeriesFacts }
+export interface SeriesDraft { text: string, fileName: string | null, choices: ColumnChoices, conversion: ConversionFields | null, decisions: MarkDecision[], facts: SeriesFacts }
 
 /** Browsers hold some five million characters for a tab; a longer text is left out and has to be chosen again. */
 export const longestDraftText = 1_500_000
@@ -36,7 +38,7 @@ export function readDraft(kept: string | null): SeriesDraft | null {
   if (!isText(value?.text) || typeof value.choices !== 'object' || value.choices === null || !facts) return null
   if (![facts.name, facts.reason, facts.source, facts.licence, facts.independence].every(isText) || !Array.isArray(facts.sharedRates)) return null
   return {
-    text: value.text, fileName: isText(value.fileName) ? value.fileName : null, choices: value.choices, conversion: fieldsOfDraft(value.conversion),
+    text: value.text, fileName: isText(value.fileName) ? value.fileName : null, choices: value.choices, conversion: fieldsOfDraft(value.conversion), decisions: decisionsOfDraft(value.decisions),
     facts: { ...facts, sharedRates: facts.sharedRates.filter(rate => isText(rate?.source) && isText(rate?.sigma)) },
   }
 }

@@ -77,7 +77,7 @@ async function seedAccount(context: Context, workspaceId: string, agencies: read
     const csv = demoSeriesCsv(demo, 1000 + i)
     await createSeriesVersion(context, who, region.id, await asUpload(context, csv, `${demo.name.toLowerCase().replaceAll(' ', '-')}.csv`), {
       name: demo.name, reason: 'First version', source: noteOfInvention, licence: 'CC BY 4.0', independence: 'Invented; independent of gravimetry and of the pole.',
-      columns: {}, conversion: null, leaveOutBadRows: false, sharedRates: demo.sharedRates,
+      columns: {}, conversion: null, decisions: [], leaveOutBadRows: false, sharedRates: demo.sharedRates,
     })
     choices.push({ regionId: region.id, versionId: versionsOf(context, seriesOfRegion(context, region.id)!.id)[0]!.id, scale: 1 })
   }

@@ -13,6 +13,7 @@ import type { Context } from './context'
 import { canonicalJson, sha256Hex } from './hash'
 import { keepOriginal, readOriginal, rememberOriginal, uploadText } from './originals'
 import { latestOutline, regionRow, seriesOfRegion } from './regions'
+import { checksOf } from './seriesChecks'
 import { floats, massSeries, nextVersion, versionRow, versionView } from './seriesStore'
 
 type NewSeries = BodyOf<typeof contracts.seriesCreate>
@@ -39,6 +40,7 @@ export async function createSeriesVersion(context: Context, principal: Principal
   const dataSha256 = sha256Hex(canonicalJson({ ...values, sharedRates: shared }))
   const recipe = {
     options: { ...options, ...read.chosen }, steps: read.conversion.steps, stepsDone: read.replayed.steps, conversion: body.conversion, outlineSha256: outline.sha256,
+    checks: checksOf(context, regionId, read, outline.areaM2, body.decisions), edited: read.edited, leftOutOnPurpose: read.leftOut,
     rowsRead: read.rowsRead, rowsStored: read.mjd.length, leftOut: read.issues.slice(0, 1000), leftOutCount: read.issues.length, notices: read.notices,
   }
   await keepOriginal(context, upload)
@@ -62,7 +64,7 @@ export async function createSeriesVersion(context: Context, principal: Principal
     for (const { source, sigmaGtPerYear } of shared) {
       tx.insert(schema.seriesError).values({ versionId, sourceId: errorSourceId(context, tx, region.workspaceId, source), sigmaGtPerYear }).run()
     }
-    return { result: undefined, after: { region: regionId, n, dataSha256, originalSha256: upload.sha256, rowsStored: read.mjd.length, rowsLeftOut: read.issues.length, reason: body.reason } }
+    return { result: undefined, after: { region: regionId, n, dataSha256, originalSha256: upload.sha256, rowsStored: read.mjd.length, rowsLeftOut: read.issues.length + read.leftOut.length, cellsCorrected: read.edited.length, reason: body.reason } }
   })
   return versionView(context, versionRow(context, versionId))
 }

@@ -101,7 +101,12 @@ export const massColumns = z.object({
   header: z.boolean().optional(),
   /** Marks of a missing value besides the usual ones; a mark is a cell, not a text. */
   missingValues: z.array(z.string().trim().min(1).max(20)).max(10).optional(),
+  /** Cells put right by hand and rows left out on purpose, by their line in the file, which itself stays as it is. */
+  edits: z.array(z.object({ row: z.int().min(1), column: z.int().min(0).max(10_000), text: z.string().trim().max(200) })).max(2000).optional(),
+  leaveOut: z.array(z.object({ row: z.int().min(1), reason: z.string().trim().max(400) })).max(5000).optional(),
 })
+/** Decisions on what the checks of a series found, by the finding's id. */
+export const markDecisions = z.array(z.object({ id: z.string().min(1).max(300), choice: z.enum(['accepted', 'corrected']), note: z.string().trim().max(800) })).max(5000)
 
 /** A number of a conversion; its error is the same at every epoch. The same `source` in two series is the same error. */
 const parameter = z.object({ value: finite, sigma: finite.min(0).default(0), source: name.nullable().default(null) })

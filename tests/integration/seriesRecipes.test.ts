@@ -72,3 +72,49 @@ describe('a conversion', () => {
     expect(await latest()).toBe(before)
   })
 })
+
+describe('rows corrected by hand', () => {
+  const table = 'date,mass (Gt)\n2010-01-15,1\n2010-02-30,2\n2010-03-15,x\n2010-04-15,4\n'
+
+  it('are read as corrected or left out with their reason, and the original stays', async () => {
+    const version = await hydrologist.get('seriesCreate', send(table, { columns: { edits: [{ row: 3, column: 0, text: '2010-02-28' }], leaveOut: [{ row: 4, reason: 'instrument out of order' }] } }))
+    const { massGt, recipe } = await hydrologist.get('seriesVersionRead', { params: { id: version.id } })
+    expect(massGt).toEqual([1, 2, 4])
+    expect(recipe.edited).toEqual([{ row: 3, column: 0, text: '2010-02-28', was: '2010-02-30' }])
+    expect(recipe.leftOutOnPurpose).toMatchObject([{ row: 4, reason: 'instrument out of order' }])
+    expect(recipe).toMatchObject({ leftOutCount: 0, rowsRead: 4, rowsStored: 3 })
+    const response = await fetch(`${url}/api/v1/series-versions/${version.id}/original`, { headers: { cookie: hydrologist.cookie } })
+    expect(await response.text()).toBe(table)
+  })
+
+  it('must be in the file', async () => {
+    const problem = await hydrologist.refused('seriesCreate', 422, send(table, { columns: { leaveOut: [{ row: 99, reason: '' }] } }))
+    expect(problem.issues).toMatchObject([{ row: 99, code: 'no-such-row' }])
+  })
+})
+
+describe('checks of a version', () => {
+  const rows = Array.from({ length: 36 }, (_, i) => `${2010 + Math.floor(i / 12)}-${String(i % 12 + 1).padStart(2, '0')}-15,${i === 18 ? 90 : (((i * 7) % 11 - 5) / 10).toFixed(2)}`)
+  const table = `date,mass (Gt)\n${rows.join('\n')}\n`
+  interface Checks { found: number, open: number, marks: { id: string, kind: string, state: string, note?: string, rows: number[] }[], corrected: { id: string }[] }
+
+  it('are kept with what was found, open until somebody decides', async () => {
+    const checks = (await store(table, {})).recipe.checks as Checks
+    const outlier = checks.marks.find(mark => mark.kind === 'outlier')!
+    expect(outlier).toMatchObject({ state: 'open', rows: [20] })
+    const again = (await store(table, { decisions: [{ id: outlier.id, choice: 'accepted', note: 'a flood' }] })).recipe.checks as Checks
+    expect(again.marks.find(mark => mark.id === outlier.id)).toMatchObject({ state: 'accepted', note: 'a flood' })
+    expect(again.open).toBe(again.found - 1)
+  })
+
+  it('count a finding that is gone as corrected, never one that still stands', async () => {
+    const first = (await store(table, {})).recipe.checks as Checks
+    const id = first.marks.find(mark => mark.kind === 'outlier')!.id
+    const decisions = [{ id, choice: 'corrected', note: 'row 20' }]
+    const standing = (await store(table, { decisions })).recipe.checks as Checks
+    expect(standing.corrected).toEqual([])
+    expect(standing.marks.find(mark => mark.id === id)).toMatchObject({ state: 'open' })
+    const corrected = (await store(table, { decisions, columns: { edits: [{ row: 20, column: 1, text: '0.9' }] } })).recipe.checks as Checks
+    expect(corrected.corrected).toEqual([{ id, note: 'row 20' }])
+  })
+})

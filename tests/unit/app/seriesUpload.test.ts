@@ -69,7 +69,7 @@ describe('bad rows', () => {
 
 describe('draft', () => {
   const draft: SeriesDraft = {
-    text, fileName: 'wells.csv', choices: { unit: 'mm-we', sigmaColumn: null }, conversion: null,
+    text, fileName: 'wells.csv', choices: { unit: 'mm-we', sigmaColumn: null }, conversion: null, decisions: [],
     facts: { name: 'Plain', reason: 'Recalibrated', source: 'Wells', licence: '', independence: '', sharedRates: [{ source: 'tilt', sigma: '0,5' }] },
   }
 
