@@ -7,7 +7,7 @@ export type MapProjection = 'globe' | 'flat'
 
 export const lossHatch = 'hatch-loss'
 /** Sources that the page fills. */
-export const sourceIds = ['region-fills', 'region-lines', 'region-labels', 'draft-fill', 'draft-lines', 'draft-handles'] as const
+export const sourceIds = ['overlay-lines', 'region-fills', 'region-lines', 'region-labels', 'draft-fill', 'draft-lines', 'draft-handles'] as const
 export type SourceId = typeof sourceIds[number]
 
 /** The whole style: shipped tiles, graticule, regions and the outline being drawn. No glyphs: labels come from local Noto Sans. */
@@ -26,7 +26,7 @@ export function mapStyle(palette: Palette, projection: MapProjection, origin: st
 
 /** Layers from the ground up. A change of theme sets their paint anew. */
 export function mapLayers(palette: Palette): LayerSpecification[] {
-  return [...groundLayers(palette), ...regionLayers(palette), ...draftLayers(palette)]
+  return [...groundLayers(palette), ...overlayLayers(palette), ...regionLayers(palette), ...draftLayers(palette)]
 }
 
 function groundLayers(palette: Palette): LayerSpecification[] {
@@ -38,6 +38,33 @@ function groundLayers(palette: Palette): LayerSpecification[] {
       'paint': { 'line-color': palette.soft, 'line-width': 0.5, 'line-opacity': 0.6 }
     },
     { id: 'graticule', type: 'line', source: 'graticule', paint: { 'line-color': palette.soft, 'line-width': 0.5, 'line-opacity': 0.3 } }
+  ]
+}
+
+/** Lines of equal effect: solid above zero, dashed below, heavy at zero. Their labels give way to those of the regions. */
+function overlayLayers(palette: Palette): LayerSpecification[] {
+  const line = (id: string, sign: number, paint: object): LayerSpecification => ({
+    id, type: 'line', source: 'overlay-lines', filter: ['==', ['get', 'sign'], sign], layout: { 'line-join': 'round' },
+    paint: { 'line-color': palette.ink, ...paint }
+  })
+  return [
+    line('overlay-above', 1, { 'line-width': 0.9, 'line-opacity': 0.7 }),
+    line('overlay-below', -1, { 'line-width': 0.9, 'line-opacity': 0.7, 'line-dasharray': [5, 3] }),
+    line('overlay-zero', 0, { 'line-width': 2, 'line-opacity': 0.85 }),
+    {
+      id: 'overlay-label', type: 'symbol', source: 'overlay-lines',
+      layout: {
+        'symbol-placement': 'line',
+        'symbol-spacing': 420,
+        'text-field': ['get', 'text'],
+        'text-font': ['Noto Sans'],
+        'text-size': 11.5,
+        'text-padding': 6,
+        'text-rotation-alignment': 'viewport',
+        'text-pitch-alignment': 'viewport'
+      },
+      paint: { 'text-color': palette.ink, 'text-halo-color': palette.sea, 'text-halo-width': 1.8 }
+    }
   ]
 }
 

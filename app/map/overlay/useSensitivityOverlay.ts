@@ -1,0 +1,110 @@
+import { computed, onScopeDispose, ref, shallowRef, watch, type Ref } from 'vue'
+import type { GeoJSONSource, Map as Chart } from 'maplibre-gl'
+import type { EarthModel } from '#shared/earth/earthModel'
+import { responseAtPlace } from '#shared/earth/pointResponse'
+import type { Position } from '#shared/types/domain'
+import { toPlace } from '../view'
+import { effectOf, overlayOf, type Overlay } from './overlay'
+import { mapSettings, sensitivityGrid, type SensitivityGrid } from './sensitivityGrid'
+import { lineFeatures, sensitivityLines } from './sensitivityLines'
+
+interface Setting {
+  chart: Readonly<Ref<Chart | null>>
+  model: Readonly<Ref<EarthModel | null>>
+  /** Place of the keyboard cursor of drawing; it goes before the pointer. */
+  cursor: Readonly<Ref<Position | null>>
+}
+
+/**
+ * Lines of equal effect of a gigatonne on the map, chosen in the address (`overlay`, `towards`), and the effect under the pointer, under
+ * the cursor of drawing, or in the middle of the map while it has the keyboard.
+ */
+export function useSensitivityOverlay({ chart, model, cursor }: Setting) {
+  const route = useRoute()
+  const router = useRouter()
+  const grid = shallowRef<SensitivityGrid | null>(null)
+  /** While the longitude is turned, ahead of the address. */
+  const turned = ref<number | null>(null)
+  const overlay = computed<Overlay | null>(() => {
+    const chosen = overlayOf(route.query.overlay, route.query.towards)
+    return chosen?.kind === 'pole' && turned.value !== null ? { ...chosen, towardsDeg: turned.value } : chosen
+  })
+  const wanted = computed(() => overlay.value !== null && model.value !== null)
+
+  watch([wanted, model], async () => {
+    if (!wanted.value || !import.meta.client) return
+    const of = model.value!
+    grid.value = null
+    const made = await sensitivityGrid(of, () => new Promise(resolve => setTimeout(resolve)))
+    if (model.value === of) grid.value = made
+  }, { immediate: true })
+
+  const lines = computed(() => overlay.value && grid.value ? sensitivityLines(grid.value, overlay.value) : null)
+  // One drawing a frame while the longitude is turned.
+  let frame = 0
+  const draw = () => {
+    frame = 0
+    const source = chart.value?.getSource('overlay-lines') as GeoJSONSource | undefined
+    source?.setData(lineFeatures(lines.value?.middle ?? []))
+  }
+  watch([lines, chart], () => {
+    if (chart.value) frame ||= requestAnimationFrame(draw)
+  }, { immediate: import.meta.client })
+
+  const pointer = shallowRef<Position | null>(null)
+  const middle = shallowRef<Position | null>(null)
+  const place = computed(() => cursor.value ?? pointer.value ?? middle.value)
+  const effect = computed(() => {
+    if (!overlay.value || !model.value || !place.value) return null
+    return effectOf(overlay.value, responseAtPlace(place.value[0], place.value[1], model.value, mapSettings(model.value)))
+  })
+  watch(chart, (map, _, onCleanup) => {
+    if (!map) return
+    const canvas = map.getCanvas()
+    const centre = () => {
+      const { lng, lat } = map.getCenter()
+      middle.value = canvas.matches(':focus-visible') ? [lng - 360 * Math.floor((lng + 180) / 360), lat] : null
+    }
+    const move = (event: { point: { x: number, y: number } }) => { pointer.value = toPlace(map, event.point) }
+    const leave = () => { pointer.value = null }
+    map.on('mousemove', move)
+    map.on('mouseout', leave)
+    map.on('move', centre)
+    canvas.addEventListener('focus', centre)
+    canvas.addEventListener('blur', centre)
+    canvas.addEventListener('keydown', leave)
+    onCleanup(() => {
+      canvas.removeEventListener('focus', centre)
+      canvas.removeEventListener('blur', centre)
+      canvas.removeEventListener('keydown', leave)
+    })
+  }, { immediate: true })
+
+  const go = (query: { overlay?: string, towards?: string }) => router.replace({ query: { ...route.query, ...query } })
+  let later: ReturnType<typeof setTimeout> | undefined
+  onScopeDispose(() => {
+    clearTimeout(later)
+    cancelAnimationFrame(frame)
+  })
+
+  return {
+    overlay, lines, place, effect,
+    /** The middle of the map is what the keyboard reads. */
+    byKeys: computed(() => overlay.value !== null && !cursor.value && !pointer.value && middle.value !== null),
+    ocean: computed(() => model.value ? mapSettings(model.value).ocean : null),
+    choose: (kind: Overlay['kind'] | null) => {
+      turned.value = null
+      return go({ overlay: kind ?? undefined, towards: undefined })
+    },
+    turn: (degrees: number) => {
+      turned.value = degrees
+      clearTimeout(later)
+      later = setTimeout(async () => {
+        await go({ towards: String(degrees) })
+        if (turned.value === degrees) turned.value = null
+      }, 250)
+    },
+  }
+}
+
+export type SensitivityOverlay = ReturnType<typeof useSensitivityOverlay>
