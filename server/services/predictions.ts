@@ -1,8 +1,9 @@
 import { contourOf } from '#shared/earth/contour'
+import { derivedOf } from '#shared/earth/derived'
 import { responseOf } from '#shared/earth/response'
 import { fitTrend } from '#shared/earth/time/trend'
 import { POLE_MM_PER_MAS } from '#shared/earth/constants'
-import type { Measured, Outline, PhysicsSettings } from '#shared/types/domain'
+import type { Measured, OceanMode, Outline, PhysicsSettings } from '#shared/types/domain'
 import type { MassSeries } from '#shared/types/run'
 import type { Context } from './context'
 
@@ -16,6 +17,17 @@ export function perGigatonne(context: Context, geometry: Outline, settings: Phys
   return { chi1Mas, chi2Mas, chi3, lodMicroseconds, barystaticMm, deltaJ2 }
 }
 export type PerGt = ReturnType<typeof perGigatonne>
+
+/** Effect of a gigatonne with what derives from it, in each fingerprint mode; in the default mode where the Earth model holds no fields. */
+export function effectsByOcean(context: Context, geometry: Outline) {
+  const contour = contourOf(geometry)
+  const modes: OceanMode[] = context.earth.fields ? ['fingerprint', 'fingerprint-rotation'] : [context.earth.defaultOcean]
+  return modes.map((ocean) => {
+    const { chi1Mas, chi2Mas, chi3, lodMicroseconds, barystaticMm, deltaJ2 } = responseOf(contour, context.earth, { ...defaultSettings(context), ocean })
+    const { deltaC21, deltaS21, geocentreMm } = derivedOf(contour, context.earth, ocean)
+    return { ocean, chi1Mas, chi2Mas, chi3, lodMicroseconds, barystaticMm, deltaJ2, deltaC21, deltaS21, geocentreMm }
+  })
+}
 
 const times = (m: Measured, factor: number): Measured => ({ value: m.value * factor, sigmaWhite: m.sigmaWhite * Math.abs(factor), sigma: m.sigma * Math.abs(factor) })
 

@@ -13,7 +13,7 @@ import type { Context } from './context'
 import { canonicalJson, sha256Hex } from './hash'
 import { pageOf } from './paging'
 import { requireAgency } from './people'
-import { defaultSettings, perGigatonne, trendOf, trendView, type PerGt } from './predictions'
+import { defaultSettings, effectsByOcean, perGigatonne, trendOf, trendView, type PerGt } from './predictions'
 import { massSeries, versionRow, versionsOf, versionView } from './seriesStore'
 
 export type RegionRow = typeof schema.region.$inferSelect
@@ -121,6 +121,7 @@ export function readRegion(context: Context, principal: Principal | null, id: st
     ...view,
     perGt: derivedOfRegion(context, outline, view.series?.latest.id ?? null).perGt,
     settings: { ...defaultSettings(context) },
+    effects: effectsByOcean(context, outline.geometry),
     outlines: outlinesOf(context, id).map(o => ({ n: o.n, areaKm2: o.areaM2 / 1e6, sha256: o.sha256, createdAt: o.createdAt, createdBy: nameOfUser(context, o.createdBy) })),
     versions: series ? versionsOf(context, series.id).map(v => versionView(context, v)) : [],
     overlaps: overlaps.map(o => ({ ...o, name: names.get(o.id) ?? '' })),

@@ -23,9 +23,9 @@ export function derivedTable({ total }: RunResult): DerivedTableRow[] {
     ...row('j2', 'ΔJ₂', total.deltaJ2PerYear, '10⁻¹¹/yr', 1e11),
     ...row('c21', 'ΔC₂₁', total.derived?.deltaC21PerYear, '10⁻¹¹/yr', 1e11),
     ...row('s21', 'ΔS₂₁', total.derived?.deltaS21PerYear, '10⁻¹¹/yr', 1e11),
-    ...row('x', 'Geocentre towards Greenwich, x', centre?.x, 'mm/yr'),
-    ...row('y', 'Geocentre towards 90° E, y', centre?.y, 'mm/yr'),
-    ...row('z', 'Geocentre towards the north pole, z', centre?.z, 'mm/yr'),
+    ...row('x', 'Geocentre x, towards Greenwich', centre?.x, 'mm/yr'),
+    ...row('y', 'Geocentre y, towards 90° E', centre?.y, 'mm/yr'),
+    ...row('z', 'Geocentre z, towards north', centre?.z, 'mm/yr'),
   ]
 }
 
