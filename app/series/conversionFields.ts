@@ -1,7 +1,14 @@
-import { densities, type Material } from '#shared/series/recipe'
+import { correctionKinds, densities, type CorrectionKind, type Material } from '#shared/series/recipe'
 import { quantityKinds, type Quantity } from '#shared/series/quantityKinds'
 import type { ConversionChoice } from '#shared/series/conversionChoice'
 import type { MassUnit } from '#shared/series/massUnits'
+
+/** A rate to be taken off, as typed. */
+export interface CorrectionField { on: boolean, what: CorrectionKind, name: string, rate: string, sigma: string, shared: boolean }
+export const correctionTexts: Record<CorrectionKind, string> = {
+  'isostatic': 'isostatic adjustment', 'surface-water': 'surface water', 'soil-water': 'soil water', 'snow': 'snow', 'leakage': 'leakage', 'other': 'another correction',
+}
+export const blankCorrection = (): CorrectionField => ({ on: true, what: 'isostatic', name: '', rate: '', sigma: '', shared: true })
 
 /** A conversion as it stands in the fields of a form. */
 export interface ConversionFields {
@@ -16,8 +23,11 @@ export interface ConversionFields {
   storageSigma: string
   storageSource: string
   areaSigma: string
+  corrections: CorrectionField[]
 }
-export type ConversionFaults = Partial<Record<keyof ConversionFields, string>>
+type TextField = Exclude<keyof ConversionFields, 'corrections'>
+/** Faults by field; those of the corrections by their place: `corrections/0`. */
+export type ConversionFaults = Partial<Record<TextField | `corrections/${number}`, string>>
 
 export const materialNames: Record<Material, string> = {
   water: 'fresh water', ice: 'ice', glacier: 'glacier volume change', firn: 'firn', snow: 'snow', own: 'own value',
@@ -67,7 +77,7 @@ export function firstFields(columnName: string, unit: MassUnit): ConversionField
   const [quantity, text] = said ? [said, unitInName(columnName)] : plainTexts[unit]
   const empty: ConversionFields = {
     quantity: 'mass', unit: text, material: 'water', density: '', densitySigma: '', densitySource: '',
-    coefficient: 'specific-yield', storage: '', storageSigma: '', storageSource: '', areaSigma: '',
+    coefficient: 'specific-yield', storage: '', storageSigma: '', storageSource: '', areaSigma: '', corrections: [],
   }
   return withQuantity(withMaterial(empty, 'water'), quantity)
 }
@@ -76,14 +86,17 @@ export function firstFields(columnName: string, unit: MassUnit): ConversionField
 export function fieldsOfDraft(kept: unknown): ConversionFields | null {
   const fields = kept as ConversionFields | null
   if (!fields || typeof fields !== 'object' || !(fields.quantity in quantityKinds)) return null
-  return Object.values(fields).every(value => typeof value === 'string') ? fields : null
+  const { corrections, ...texts } = fields
+  if (!Object.values(texts).every(value => typeof value === 'string') || !Array.isArray(corrections)) return null
+  const whole = (c: CorrectionField) => correctionKinds.includes(c?.what) && [c.name, c.rate, c.sigma].every(text => typeof text === 'string')
+  return { ...fields, corrections: corrections.filter(whole) }
 }
 
 /** The choice that the fields hold, or what is wrong with them, field by field. Ranges are checked where the recipe is made. */
 export function readConversion(fields: ConversionFields, readNumber: (text: string) => number | null): { choice: ConversionChoice | null, faults: ConversionFaults } {
   const faults: ConversionFaults = {}
   const { needs } = quantityKinds[fields.quantity]
-  const number = (key: keyof ConversionFields, missing: string | null): number => {
+  const number = (key: TextField, missing: string | null): number => {
     const value = readNumber(fields[key])
     if (value === null && missing === null) return 0
     if (value === null) faults[key] = missing!
@@ -104,11 +117,21 @@ export function readConversion(fields: ConversionFields, readNumber: (text: stri
     const sigmaKm2 = number('areaSigma', null)
     if (sigmaKm2 > 0) choice.area = { sigmaKm2, source: null }
   }
+  if (fields.corrections.length) choice.corrections = fields.corrections.map((correction, i) => readCorrection(correction, readNumber, (fault) => { faults[`corrections/${i}`] = fault }))
   return { choice: Object.keys(faults).length ? null : choice, faults }
 }
 
+function readCorrection({ on, what, name, rate, sigma, shared }: CorrectionField, readNumber: (text: string) => number | null, fault: (text: string) => void) {
+  const [value, error] = [readNumber(rate), readNumber(sigma)]
+  if (name.trim() === '') fault('Name the model or the series that the rate is from.')
+  else if (value === null || error === null) fault(`The ${value === null ? 'rate' : 'one-sigma'} is missing.`)
+  else if (!Number.isFinite(value) || !Number.isFinite(error)) fault(`“${(Number.isFinite(value) ? sigma : rate).trim()}” is not a number.`)
+  else if (error < 0) fault('A one-sigma is not negative.')
+  return { on, what, name: name.trim(), gtPerYear: { value: value ?? 0, sigma: error ?? 0, source: shared ? name.trim() : null } }
+}
+
 /** Field that an issue of the conversion is about. */
-export function fieldOfIssue(path: string | undefined): keyof ConversionFields {
+export function fieldOfIssue(path: string | undefined): TextField {
   if (path === 'density/sigma') return 'densitySigma'
   if (path === 'storage/sigma') return 'storageSigma'
   if (path === 'area/sigma') return 'areaSigma'

@@ -11,7 +11,7 @@ import { Problem } from '../utils/problem'
 import { authorise, change, newId } from './change'
 import type { Context } from './context'
 import { canonicalJson, sha256Hex } from './hash'
-import { keepOriginal, readOriginal, rememberOriginal, uploadText } from './originals'
+import { keepOriginal, readOriginal, rememberOriginal, uploadTable } from './originals'
 import { latestOutline, regionRow, seriesOfRegion } from './regions'
 import { checksOf } from './seriesChecks'
 import { floats, massSeries, nextVersion, versionRow, versionView } from './seriesStore'
@@ -23,12 +23,12 @@ export async function createSeriesVersion(context: Context, principal: Principal
   const region = regionRow(context, regionId)
   const actor = authorise(principal, 'region.write', { workspaceId: region.workspaceId, kind: region.kind })
   const outline = latestOutline(context, regionId)
-  const { sigmaColumn, ...columns } = body.columns
+  const { sigmaColumn, sheet, ...columns } = body.columns
   const recipeAsked = body.conversion && await recipeFor(body.conversion, outline.areaM2, columns.withdrawalPositive)
   const options = {
     ...columns, ...(sigmaColumn === undefined ? {} : { sigmaColumn }), areaM2: outline.areaM2, ...(recipeAsked ? { recipe: recipeAsked } : {}),
   } as MassSeriesOptions
-  const read = readMassSeries(await uploadText(upload), options)
+  const read = readMassSeries(await uploadTable(upload, sheet), options)
   if (read.issues.length && !body.leaveOutBadRows) {
     throw new InputError(`${read.issues.length} of ${read.rowsRead} rows cannot be used. Nothing was stored.`, read.issues)
   }
@@ -39,7 +39,7 @@ export async function createSeriesVersion(context: Context, principal: Principal
   const shared = sumBySource([...body.sharedRates, ...systematicRates(read.replayed, region.name)])
   const dataSha256 = sha256Hex(canonicalJson({ ...values, sharedRates: shared }))
   const recipe = {
-    options: { ...options, ...read.chosen }, steps: read.conversion.steps, stepsDone: read.replayed.steps, conversion: body.conversion, outlineSha256: outline.sha256,
+    options: { ...options, ...read.chosen }, steps: read.conversion.steps, stepsDone: read.replayed.steps, conversion: body.conversion, ...(sheet === undefined ? {} : { sheet }), outlineSha256: outline.sha256,
     checks: checksOf(context, regionId, read, outline.areaM2, body.decisions), edited: read.edited, leftOutOnPurpose: read.leftOut,
     rowsRead: read.rowsRead, rowsStored: read.mjd.length, leftOut: read.issues.slice(0, 1000), leftOutCount: read.issues.length, notices: read.notices,
   }

@@ -2,6 +2,8 @@ import { existsSync } from 'node:fs'
 import { copyFile, mkdir, readFile, rename, rm } from 'node:fs/promises'
 import { dirname, join } from 'node:path'
 import { decodeText } from '#shared/series/decodeText'
+import type { TableSource } from '#shared/series/table'
+import { InputError } from '#shared/types/issue'
 import { schema, type Reader } from '../database/client'
 import type { Upload } from '../utils/body'
 import type { Context } from './context'
@@ -35,6 +37,18 @@ export function rememberOriginal(context: Context, tx: Reader, upload: Upload) {
 
 export async function readOriginal(context: Context, sha256: string): Promise<Buffer> {
   return readFile(originalPath(context.dataDir, sha256))
+}
+
+/** Rows of an uploaded table: its text, or the cells of one sheet where it is a workbook; the first sheet with rows unless told. */
+export async function uploadTable(upload: Upload, sheetName?: string): Promise<TableSource> {
+  const bytes = await readFile(upload.path)
+  const { isWorkbook, readWorkbook } = await import('#shared/series/workbook')
+  if (!isWorkbook(bytes)) return decodeText(bytes)
+  const sheets = await readWorkbook(bytes)
+  const sheet = sheetName === undefined ? sheets.find(s => s.cells.length > 0) ?? sheets[0] : sheets.find(s => s.name === sheetName)
+  if (sheet) return { cells: sheet.cells }
+  const message = `The workbook has no sheet “${sheetName}”; it has ${sheets.map(s => `“${s.name}”`).join(', ')}.`
+  throw new InputError(message, [{ path: 'columns/sheet', code: 'no-such-sheet', message }])
 }
 
 /** Text of an uploaded file. */

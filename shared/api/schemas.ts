@@ -93,6 +93,8 @@ export const perGt = z.object({
 export const massColumns = z.object({
   epochColumn: z.int().min(0).optional(), valueColumn: z.int().min(0).optional(), sigmaColumn: z.int().min(0).nullable().optional(),
   epochFormat: z.enum(epochFormats).optional(),
+  /** Name of the sheet of a workbook; the first with rows unless told. */
+  sheet: z.string().min(1).max(200).optional(),
   /** Where each row's period ends, for rates and balances; null: rows have no end though a column looks like one. */
   endColumn: z.int().min(0).nullable().optional(), endDayIncluded: z.boolean().optional(),
   /** Gigatonnes and heights of water; every other quantity and unit goes into `conversion`. */

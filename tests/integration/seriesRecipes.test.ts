@@ -1,3 +1,5 @@
+import { createHash } from 'node:crypto'
+import { readFileSync } from 'node:fs'
 import { beforeAll, describe, expect, inject, it } from 'vitest'
 import type { Client } from '../support/client'
 import { addWorkspace, makeRegion, newcomer, seriesFacts, square, type Place } from '../support/world'
@@ -116,5 +118,26 @@ describe('checks of a version', () => {
     expect(standing.marks.find(mark => mark.id === id)).toMatchObject({ state: 'open' })
     const corrected = (await store(table, { decisions, columns: { edits: [{ row: 20, column: 1, text: '0.9' }] } })).recipe.checks as Checks
     expect(corrected.corrected).toEqual([{ id, note: 'row 20' }])
+  })
+})
+
+// Written by openpyxl, another implementation of the format: tests/fixtures/series/README.md.
+describe('a workbook', () => {
+  const workbook = new Uint8Array(readFileSync('tests/fixtures/series/invented.xlsx'))
+  const conversion = { quantity: 'head', unit: 'm', storage: { ...specificYield, sigma: 0 } }
+
+  it('is read from the sheet and column that are chosen, and kept byte for byte', async () => {
+    const version = await hydrologist.get('seriesCreate', send(workbook, { columns: { sheet: 'heads', valueColumn: 1 }, conversion }, 'wells.xlsx'))
+    const { massGt, recipe } = await hydrologist.get('seriesVersionRead', { params: { id: version.id } })
+    // 12.5 m × 0.1 over A km² is 1.25 A/1000 Gt.
+    expect(massGt[0]! / (1.25 * areaKm2 / 1000)).toBeCloseTo(1, 9)
+    expect(recipe.sheet).toBe('heads')
+    expect(version.originalSha256).toBe(createHash('sha256').update(workbook).digest('hex'))
+  })
+
+  it('is refused by name for a sheet that it does not have', async () => {
+    const problem = await hydrologist.refused('seriesCreate', 422, send(workbook, { columns: { sheet: 'rain' } }, 'wells.xlsx'))
+    expect(problem.issues).toMatchObject([{ code: 'no-such-sheet' }])
+    expect(problem.detail).toContain('“heads”')
   })
 })

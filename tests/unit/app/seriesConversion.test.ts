@@ -45,6 +45,13 @@ describe('fields of a conversion', () => {
     expect(withQuantity({ ...start, material: 'water' }, 'ice-thickness').material).toBe('glacier')
   })
 
+  it('hold rates to be taken off, with their own error or one that others share', () => {
+    const corrections = [{ on: true, what: 'isostatic' as const, name: ' Model A ', rate: '−1,5', sigma: '0.4', shared: true }]
+    expect(readConversion({ ...start, corrections }, readFigure).choice?.corrections).toEqual([{ on: true, what: 'isostatic', name: 'Model A', gtPerYear: { value: -1.5, sigma: 0.4, source: 'Model A' } }])
+    const bad = [['', '1', '1'], ['A', '', '1'], ['A', '1', 'x'], ['A', '1', '-1']].map(([name, rate, sigma]) => ({ ...corrections[0]!, name: name!, rate: rate!, sigma: sigma! }))
+    expect(Object.keys(readConversion({ ...start, corrections: bad }, readFigure).faults)).toEqual(['corrections/0', 'corrections/1', 'corrections/2', 'corrections/3'])
+  })
+
   it('come back from a draft, or not at all', () => {
     expect(fieldsOfDraft(JSON.parse(JSON.stringify(head())))).toEqual(head())
     for (const bad of [null, 1, {}, { quantity: 'heat' }, { ...head(), storage: 3 }]) expect(fieldsOfDraft(bad)).toBeNull()
@@ -67,6 +74,15 @@ describe('a preview with a conversion', () => {
     expect(preview.stepsDone.map(step => step.kind)).toEqual(['unit', 'storage', 'area'])
     const again = readMassSeries(text, { ...columnsToSend(preview), areaM2, recipe } as Parameters<typeof readMassSeries>[1])
     expect(again.massGt).toEqual([...preview.massGt])
+  })
+
+  it('takes a rate off and keeps a step that is switched off', () => {
+    const correction = { on: true, what: 'isostatic' as const, name: 'Model A', gtPerYear: { value: 2, sigma: 0.5, source: null } }
+    const years = 'date,mass\n2010-01-01,0\n2011-01-01,0\n2012-01-01,0\n2014-01-01,0\n'
+    const trendOf = (on: boolean) => read(years, {}, { recipe: recipeOfChoice({ quantity: 'mass', unit: 'Gt', corrections: [{ ...correction, on }] }, areaM2) })
+    expect(trendOf(true).trend!.value).toBeCloseTo(-2, 9)
+    expect(trendOf(false).trend!.value).toBeCloseTo(0, 12)
+    expect(trendOf(false).steps.at(-1)).toMatch(/^Switched off/)
   })
 
   it('refuses a unit of another dimension by name', () => {
