@@ -117,7 +117,8 @@ function take(node: unknown, path: string, name: string | undefined, found: Foun
 
 function nameOf(properties: unknown): string | undefined {
   if (!isObject(properties)) return undefined
-  const key = Object.keys(properties).find(name => /^(name|title|label|region|basin|id)$/i.test(name) && String(properties[name] ?? '').trim() !== '')
+  const written = Object.keys(properties).filter(name => String(properties[name] ?? '').trim() !== '')
+  const key = written.find(name => /^(name|title|label|region|basin|id)$/i.test(name)) ?? written.find(name => /(?:^|_)name(?:_|$)/i.test(name))
   return key === undefined ? undefined : String(properties[key]).trim().slice(0, 120)
 }
 
