@@ -43,6 +43,17 @@ export function withStep(chain: Chain, at: number, part: Partial<ChainStep>): Ch
   return { ...chain, steps: chain.steps.map((step, i) => i === at ? { ...step, ...part } as ChainStep : step) }
 }
 
+/** The chain with a step that subtracts a series of angular momentum, behind the excitation that it belongs to. */
+export function withFluid(chain: Chain, correction: string): Chain {
+  const at = 1 + Math.max(chain.steps.findIndex(step => step.kind === 'excitation'), chain.steps.findLastIndex(step => step.kind === 'angular-momentum'))
+  return { ...chain, steps: chain.steps.toSpliced(at, 0, { kind: 'angular-momentum', on: true, correction, mass: true, motion: true, trend: false }) }
+}
+
+/** The chain without one of its steps. */
+export function withoutStep(chain: Chain, at: number): Chain {
+  return { ...chain, steps: chain.steps.toSpliced(at, 1) }
+}
+
 /** What is left after a reduction, in one sentence with its trends. */
 export function reductionSentence(name: string, { steps, trends, noTrend }: Pick<PlainChainResult, 'steps' | 'trends' | 'noTrend'>): string {
   const on = steps.filter(step => step.on && step.panels.length > 0).length

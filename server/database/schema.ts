@@ -100,7 +100,7 @@ export const series = sqliteTable('series', {
   workspaceId: text().notNull().references(() => workspace.id),
   /** Null: an observed Earth-orientation series. */
   regionId: text().references(() => region.id),
-  quantity: text().$type<'mass' | 'earth-orientation'>().notNull(),
+  quantity: text().$type<'mass' | 'earth-orientation' | 'angular-momentum'>().notNull(),
   name: text().notNull(),
   ...mutable(),
 }, t => [index('series_region').on(t.regionId), index('series_workspace').on(t.workspaceId)])

@@ -7,6 +7,7 @@ import type { RunInput } from '#shared/types/run'
 import { schema } from '../database/client'
 import { Problem } from '../utils/problem'
 import type { AttributionAnswer } from '../workers/attribution'
+import { correctionsOf } from './angularMomentum'
 import { authorise } from './change'
 import type { Context } from './context'
 import { canonicalJson } from './hash'
@@ -27,16 +28,17 @@ export async function attributionOfRun(context: Context, principal: Principal | 
   const observed = observedRow(context, question.observed)
   if (observed.workspaceId !== row.workspaceId) throw new Problem(404, 'not-found', 'There is no such observed series.')
   const chain = chainOfText(question.chain)
+  const corrections = correctionsOf(context, row.workspaceId, chain)
   const cache = kept.get(context) ?? new Map<string, Promise<AttributionReport>>()
   kept.set(context, cache)
-  const key = `${row.resultSha256} ${versionsOf(context, observed.id)[0]!.id} ${question.prior} ${canonicalJson(chain)}`
+  const key = `${row.resultSha256} ${versionsOf(context, observed.id)[0]!.id} ${question.prior} ${Object.keys(corrections).join()} ${canonicalJson(chain)}`
   let answer = cache.get(key)
   if (!answer) {
     if (cache.size >= most) cache.clear()
     const input = runInputOf(row)
     // Outlines are not asked for here, and are most of what a run holds.
     const light = { ...input, regions: input.regions.map(region => ({ ...region, geometry: { type: 'Polygon' as const, coordinates: [] } })) }
-    answer = attributed(context, { input: light, result: runResultOf(row), series: loadObserved(context, observed.id), chain, bases: basesOfRegions(context, row.workspaceId, input), priorSigma: question.prior })
+    answer = attributed(context, { input: light, result: runResultOf(row), series: loadObserved(context, observed.id), chain, corrections, bases: basesOfRegions(context, row.workspaceId, input), priorSigma: question.prior })
     answer.catch(() => cache.delete(key))
     cache.set(key, answer)
   }

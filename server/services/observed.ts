@@ -1,4 +1,4 @@
-import { and, desc, eq, isNull, lt } from 'drizzle-orm'
+import { and, desc, eq, inArray, isNull, lt } from 'drizzle-orm'
 import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import { parseObserved } from '#shared/observed/parse'
@@ -61,8 +61,12 @@ function joined(parts: readonly Float64Array[]): Buffer {
   return floats(all)
 }
 
-export function observedRow(context: Context, id: string, { inBin = false } = {}) {
-  const row = context.db.select().from(schema.series).where(and(eq(schema.series.id, id), eq(schema.series.quantity, 'earth-orientation'))).get()
+const orientation = ['earth-orientation'] as const
+/** Kinds of series that go into the bin and out of it by the same routes. */
+const binned = ['earth-orientation', 'angular-momentum'] as const
+
+export function observedRow(context: Context, id: string, { inBin = false, quantities = orientation as typeof orientation | typeof binned } = {}) {
+  const row = context.db.select().from(schema.series).where(and(eq(schema.series.id, id), inArray(schema.series.quantity, [...quantities]))).get()
   if (!row || (row.deletedAt && !inBin)) throw new Problem(404, 'not-found', 'There is no such observed series.')
   return row
 }
@@ -118,7 +122,7 @@ export function readObserved(context: Context, principal: Principal | null, id: 
 }
 
 export function binObserved(context: Context, principal: Principal | null, id: string, revision: number, restore = false) {
-  const row = observedRow(context, id, { inBin: restore })
+  const row = observedRow(context, id, { inBin: restore, quantities: binned })
   const next = row.revision + 1
   return change(context, principal, { action: 'observed.write', verb: restore ? 'taken out of the bin' : 'put in the bin', entity: 'observed series', id, workspaceId: row.workspaceId, row, revision }, (tx) => {
     tx.update(schema.series).set({ deletedAt: restore ? null : context.now(), revision: next }).where(eq(schema.series.id, id)).run()

@@ -4,6 +4,7 @@ import { defaultChain, readChain } from '#shared/observed/readChain'
 import type { Principal } from '#shared/permissions'
 import { InputError } from '#shared/types/issue'
 import type { ChainAnswer, ChainTask } from '../workers/chain'
+import { correctionsOf } from './angularMomentum'
 import { authorise } from './change'
 import type { Context } from './context'
 import { canonicalJson } from './hash'
@@ -31,13 +32,14 @@ export async function readChainOfObserved(context: Context, principal: Principal
   const row = observedRow(context, id)
   authorise(principal, 'observed.read', { workspaceId: row.workspaceId })
   const chain = chainOfText(text)
+  const corrections = correctionsOf(context, row.workspaceId, chain)
   const cache = kept.get(context) ?? new Map<string, Promise<PlainChainResult>>()
   kept.set(context, cache)
-  const key = `${versionsOf(context, id)[0]!.id} ${points} ${canonicalJson(chain)}`
+  const key = `${versionsOf(context, id)[0]!.id} ${points} ${Object.keys(corrections).join()} ${canonicalJson(chain)}`
   let answer = cache.get(key)
   if (!answer) {
     if (cache.size >= most) cache.clear()
-    answer = reduced(context, { series: loadObserved(context, id), chain, points })
+    answer = reduced(context, { series: loadObserved(context, id), chain, corrections, points })
     answer.catch(() => cache.delete(key))
     cache.set(key, answer)
   }

@@ -5,6 +5,7 @@ import { attributionAnswer, attributionQuery } from './attributionSchemas.ts'
 import { chainAnswer, chainQuery } from './chainSchemas.ts'
 import { contract, type Contract } from './contract.ts'
 import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
+import { fluidOptions, fluidSummary } from './fluidSchemas.ts'
 import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
@@ -199,6 +200,13 @@ export const contracts = {
     body: z.object({ revision }), answer: changed,
   }),
 
+  fluidList: contract({
+    id: 'fluidList', method: 'GET', path: '/api/v1/workspaces/{workspace}/angular-momentum', action: 'observed.read', summary: 'Series of angular momentum of air and sea that a chain may subtract', params: inWorkspace, answer: listOf(fluidSummary),
+  }),
+  fluidCreate: contract({
+    id: 'fluidCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/angular-momentum', action: 'observed.write', summary: 'Store a series of angular momentum with the answers to what its numbers do not say', params: inWorkspace, bodyType: 'multipart',
+    body: fluidOptions, answer: fluidSummary, status: 201, maxBytes: limits.originalBytes,
+  }),
   observedChain: contract({
     id: 'observedChain', method: 'GET', path: '/api/v1/observed/{id}/chain', action: 'observed.read', summary: 'An observed series reduced step by step by a chain: before, removed and after of each step; stores nothing', params: byId,
     query: chainQuery, answer: chainAnswer,

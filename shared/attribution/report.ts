@@ -1,7 +1,7 @@
 import { runChain } from '../observed/chain.ts'
 import { circularityWarnings } from '../observed/circularity.ts'
 import type { Basis } from '../observed/circularity.ts'
-import type { Chain } from '../observed/chainTypes.ts'
+import type { Chain, FluidCorrection } from '../observed/chainTypes.ts'
 import { InputError } from '../types/issue.ts'
 import type { ObservedSeries, RunInput, RunResult, RunWarning } from '../types/run.ts'
 import { assembleAttribution } from './assemble.ts'
@@ -29,6 +29,8 @@ export interface AttributionTask {
   result: RunResult
   series: ObservedSeries
   chain: Chain
+  /** Series that the chain subtracts, by the keys that it names. */
+  corrections?: Record<string, FluidCorrection>
   /** What the mass of each region was made from, for the warning about circular comparisons. */
   bases: { key: string, name: string, bases: Basis[] }[]
   /** One-sigma of the prior of every factor, about 1. */
@@ -66,8 +68,8 @@ export interface AttributionReport {
  *
  * @throws InputError for a chain that does not hold for this series
  */
-export function attributionReport({ input, result, series, chain, bases, priorSigma }: AttributionTask): AttributionReport {
-  const reduced = runChain(series, chain)
+export function attributionReport({ input, result, series, chain, corrections, bases, priorSigma }: AttributionTask): AttributionReport {
+  const reduced = runChain(series, chain, { corrections })
   const months = observedMonths(reduced, result.epochsMjd)
   const loose = observedMonths(reduced, result.epochsMjd, 'out')
   const { rates } = observedTrends(months)

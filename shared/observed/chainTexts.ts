@@ -14,6 +14,9 @@ export const quantityTexts: Readonly<Record<ChainQuantity, { symbol: string, nam
   y: { symbol: 'y', name: 'pole towards 90° W' }, chi1: { symbol: 'χ₁', name: 'excitation towards Greenwich' }, chi2: { symbol: 'χ₂', name: 'excitation towards 90° E' }
 }
 
+/** Sizes below this, ms or mas, are rounding. */
+const LEAST_SHOWN = 1e-6
+
 /** Source of what a step does. */
 export function stepSources(step: ChainStep, inputs: ChainInputs): string {
   switch (step.kind) {
@@ -32,7 +35,10 @@ export function stepSources(step: ChainStep, inputs: ChainInputs): string {
 export function panelSentence(step: ChainStep, panels: readonly StepPanel[], worked: boolean, inputs: ChainInputs, gravity: boolean): string {
   if (!step.on) return `${stepTitles[step.kind]}: switched off, nothing is taken away.`
   if (!worked) return nothingToDo(step, gravity)
-  const size = (track: Track | null | undefined): string => track ? formatSignificant(rms(track), 2) : '0'
+  const size = (track: Track | null | undefined): string => {
+    const value = track ? rms(track) : 0
+    return value < LEAST_SHOWN ? '0' : formatSignificant(value, 2)
+  }
   const of = (quantity: ChainQuantity): StepPanel | undefined => panels.find(panel => panel.quantity === quantity)
   const each = (fn: (panel: StepPanel) => string): string => panels.map(panel => `${quantityTexts[panel.quantity].symbol} ${fn(panel)} ${panel.unit}`).join(', ')
   switch (step.kind) {

@@ -137,6 +137,14 @@ const steps: Step[] = [
   { route: 'observedList', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'observedCreate', rule: 'leadOnly', make: () => ({ params: workspace(), body: { ...seriesFacts }, file: { name: 'eop.csv', content: orientationCsv(40) } }) },
   { route: 'observedRead', rule: 'science', make: () => ({ params: { id: shared.observed } }) },
+  { route: 'fluidList', rule: 'science', make: () => ({ params: workspace() }) },
+  {
+    route: 'fluidCreate', rule: 'leadOnly',
+    make: () => ({
+      params: workspace(), file: { name: 'aam.txt', content: '2010 1 1 0 55197.0 1e-7 2e-7 3e-9 4e-9 5e-9 6e-9\n2010 1 2 0 55198.0 1e-7 2e-7 3e-9 4e-9 5e-9 6e-9\n' },
+      body: { name: 'Air', source: 'made by the test', fields: { component: 'atmosphere', model: 'invented', pairedWith: null, invertedBarometer: 'yes', coefficients: 'gross-2007', subtracted: '', barystatic: 'no' } },
+    }),
+  },
   { route: 'observedChain', rule: 'science', make: () => ({ params: { id: shared.observed }, query: { points: 50 } }) },
   { route: 'observedRemove', rule: 'leadOnly', make: async () => ({ params: { id: (await makeObserved(lead, place, orientationCsv(40))).id }, query: { revision: 1 } }) },
   {

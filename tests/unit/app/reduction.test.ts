@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { afterChart, chainOfText, coveredSpans, pageChain, panelCharts, reductionSentence, textOfChain, withStep } from '../../../app/observed/reduction'
+import { afterChart, chainOfText, coveredSpans, pageChain, panelCharts, reductionSentence, textOfChain, withFluid, withoutStep, withStep } from '../../../app/observed/reduction'
+import { fieldsOf, noAnswers, openQuestions, readFluidText } from '../../../app/observed/fluidDraft'
 import { readChain } from '#shared/observed/readChain'
 
 const measured = (value: number, sigma: number) => ({ value, sigmaWhite: sigma / 2, sigma })
@@ -47,5 +48,21 @@ describe('small multiples', () => {
     const months = [0, 30, 61, 91, 365, 396, 426]
     expect(coveredSpans(track(months, [1, 2, 3, 4, 5, null, 7]))).toEqual([[0, 91], [365, 426]])
     expect(afterChart('chi1', track(months, months)).coverage).toEqual([{ label: 'values', spans: [[0, 91], [365, 426]] }])
+  })
+})
+
+describe('series of air and sea', () => {
+  it('are subtracted behind the excitation, one after another, in an order that the reader accepts', () => {
+    const two = withFluid(withFluid(pageChain(), 'air'), 'sea')
+    expect(two.steps.slice(1, 4).map(s => s.kind === 'angular-momentum' ? s.correction : s.kind)).toEqual(['excitation', 'air', 'sea'])
+    expect(readChain(JSON.parse(JSON.stringify(two))).steps).toHaveLength(9)
+    expect(withoutStep(withFluid(pageChain(), 'air'), 2)).toEqual(pageChain())
+  })
+  it('are stored only once their questions are answered, the pairing for an ocean alone', () => {
+    const answers = { ...noAnswers(), component: 'ocean', model: ' m ', invertedBarometer: 'yes', coefficients: 'unknown', barystatic: 'no' }
+    expect(openQuestions(answers)).toEqual(['Which atmosphere drove the ocean?'])
+    expect(openQuestions({ ...answers, component: 'atmosphere' })).toEqual([])
+    expect(fieldsOf({ ...answers, component: 'atmosphere', pairedWith: 'typed before' })).toMatchObject({ pairedWith: null, model: 'm' })
+    expect(readFluidText('mjd,lod\n1,2\n').fault!.issues[0]!.code).toBe('no-rows')
   })
 })

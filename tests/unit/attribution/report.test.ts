@@ -64,7 +64,7 @@ describe('the report of an attribution', () => {
       for (const values of [observed, model]) expect(Math.abs(both.reduce((sum, j) => sum + values[j]!, 0) / both.length)).toBeLessThan(1e-9)
       for (const j of both) expect(residual[j]).toBeCloseTo(observed[j]! - model[j]!, 12)
       expect(statistics!.months).toBe(both.length)
-      expect(trends!.observed.value ?? trends!.observed.simple.value).toBeDefined()
+      expect(trends!.observed.models.map(({ model }) => model)).toEqual(['white', 'ar1', 'power-law'])
     }
   })
 
