@@ -31,8 +31,8 @@ export function derivedRows(effects: readonly Effect[]): { name: string, unit: s
     row('ΔJ₂', '10⁻¹¹', e => e.deltaJ2, 1e11),
     row('ΔC₂₁', '10⁻¹¹', e => e.deltaC21, 1e11),
     row('ΔS₂₁', '10⁻¹¹', e => e.deltaS21, 1e11),
-    row('geocentre x, towards Greenwich', 'mm', e => e.geocentreMm?.x ?? null),
-    row('geocentre y, towards 90° E', 'mm', e => e.geocentreMm?.y ?? null),
-    row('geocentre z, towards north', 'mm', e => e.geocentreMm?.z ?? null),
+    row('geocentre x, to 0°', 'mm', e => e.geocentreMm?.x ?? null),
+    row('geocentre y, to 90°\u00a0E', 'mm', e => e.geocentreMm?.y ?? null),
+    row('geocentre z, to north', 'mm', e => e.geocentreMm?.z ?? null),
   ]
 }

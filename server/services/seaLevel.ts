@@ -1,4 +1,5 @@
 import Papa from 'papaparse'
+import { leastMean } from '#shared/figures/seaLevel/seaLevelFacts'
 import type { Principal } from '#shared/permissions'
 import { InputError } from '#shared/types/issue'
 import type { SeaLevelAnswer, SeaLevelTask } from '../workers/seaLevel'
@@ -65,10 +66,12 @@ export type SeaLevelView = Awaited<ReturnType<typeof seaLevelOfRun>> | Awaited<R
 
 /** The grid as CSV: one row a node of the sea, both poles and 180° W left as they are. */
 export function seaLevelCsv(view: SeaLevelView): string {
-  const rows: Record<string, number>[] = []
+  const rows: Record<string, number | ''>[] = []
+  const largest = view.seaLevelMm.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
+  const mean = Math.abs(view.barystaticMm) > leastMean * largest ? view.barystaticMm : null
   view.latitudesDeg.forEach((latitude, i) => view.longitudesDeg.forEach((longitude, j) => {
     const at = i * view.longitudesDeg.length + j
-    if (view.sea[at]! > 0) rows.push({ latitude_deg: latitude, longitude_deg: longitude, sea_fraction: view.sea[at]!, sea_level_mm: view.seaLevelMm[at]!, relative_to_mean: view.barystaticMm ? view.seaLevelMm[at]! / view.barystaticMm : NaN })
+    if (view.sea[at]! > 0) rows.push({ latitude_deg: latitude, longitude_deg: longitude, sea_fraction: view.sea[at]!, sea_level_mm: view.seaLevelMm[at]!, relative_to_mean: mean === null ? '' : view.seaLevelMm[at]! / mean })
   }))
   const head = `# Relative sea level, ${view.unit}; mean over the sea ${view.barystaticMm} mm; degree ${view.degree}, rotational feedback ${view.feedback ? 'on' : 'off'}. Calculated: elastic Earth, fixed shorelines.`
   return `${head}\n${Papa.unparse(rows, { newline: '\n' })}\n`

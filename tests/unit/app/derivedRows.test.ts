@@ -21,7 +21,7 @@ describe('per hundred gigatonnes lost', () => {
     expect(cells('ΔS₂₁')).toEqual(['+0.305', '+0.305'])
   })
   it('leaves the geocentre open where there is none', () => {
-    expect(cells('geocentre z, towards north')).toEqual(['−0.110', '–'])
-    expect(cells('geocentre y, towards 90° E')).toEqual(['+0.0100', '–'])
+    expect(cells('geocentre z, to north')).toEqual(['−0.110', '–'])
+    expect(cells('geocentre y, to 90°\u00a0E')).toEqual(['+0.0100', '–'])
   })
 })
