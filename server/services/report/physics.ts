@@ -1,6 +1,6 @@
 import { print } from '#shared/design/tokens'
 import { dataUncertaintyRow, derivedMissing, derivedNote, derivedTable, modelUncertaintyTable, uncertaintyColumns, uncertaintyNote } from '#shared/figures/budget/physicsTables'
-import { paragraph, sectionHead, size, textTable } from './style'
+import { paragraph, sectionHead, size, textTable, together } from './style'
 import type { UncertaintyTableRow } from '#shared/figures/budget/physicsTables'
 import type { Block, ReportData } from './types'
 
@@ -12,13 +12,13 @@ export function derivedBlocks({ result }: ReportData): Block[] {
   if (!rows.length) return []
   const missing = derivedMissing(result)
   return [
-    textTable({
+    together(textTable({
       head: sectionHead('Derived quantities', 'per Julian year, with one sigma'),
       columns: ['Quantity', 'rate', 'unit'],
       rows: rows.map(({ name, value, sigma, unit }) => [name, sigma ? `${value}\u00a0${sigma}` : value, unit]),
       widths: ['*', 'auto', 80],
       right: [1],
-    }),
+    })),
     ...(missing ? [note(missing)] : []),
     note(derivedNote),
   ]
@@ -33,13 +33,13 @@ export function modelUncertaintyBlocks({ result }: ReportData): Block[] {
     { text: [{ text: name, color: soft ? print.soft : print.ink }, { text: `\n${text}`, color: print.soft }] }, ...cells,
   ]
   return [
-    textTable({
+    together(textTable({
       head: sectionHead('Model uncertainty', 'sizes per Julian year, beside the uncertainty of the data and never in it'),
       columns: ['Choice of the model', ...uncertaintyColumns.map(({ name, unit }) => `${name}, ${unit}`)],
       rows: [...rows.map(row => line(row)), ...(data ? [line(data, true)] : [])],
       widths: ['*', 'auto', 'auto', 'auto', 'auto'],
       right: [1, 2, 3, 4],
-    }),
+    })),
     note(uncertaintyNote),
   ]
 }

@@ -31,7 +31,7 @@ export function derivedTable({ total }: RunResult): DerivedTableRow[] {
 
 /** Why rows of the derived quantities are missing; null where none is. */
 export function derivedMissing({ total, settings }: RunResult): string | null {
-  if (!total.derived) return 'This run was made by an earlier engine, which did not yet compute ΔC₂₁, ΔS₂₁ and the geocentre: run the scenario again for them.'
+  if (!total.derived) return 'This run was made by an earlier engine, which did not compute ΔC₂₁, ΔS₂₁ and the geocentre; a new run of the scenario has them.'
   return settings.ocean === 'none' ? 'Without an ocean response there is no geocentre: the sea’s part of the mass is missing.' : null
 }
 
