@@ -13,7 +13,7 @@ export default defineConfig({
       // The built server over HTTP; needs `npm run build` first, as the next one does.
       { resolve, test: { name: 'integration', include: ['tests/integration/**/*.test.ts'], testTimeout: 30_000, ...served } },
       // The built server in Chromium.
-      { resolve, test: { name: 'browser', include: ['tests/e2e/**/*.test.ts'], testTimeout: 120_000, ...served } },
+      { resolve, test: { name: 'browser', include: ['tests/e2e/**/*.test.ts'], testTimeout: 240_000, ...served } },
     ],
   },
 })

@@ -33,6 +33,8 @@ export async function visit(browser: Browser, url: string, { look = 'light', wid
     if (response.status() >= 500 || (response.status() === 404 && /^\/(_nuxt|tiles|earth|fonts)\//.test(own))) faults.push(`answer ${response.status()}: ${own}`)
   })
   const page = await context.newPage()
+  // Well under a test's own limit, so that the step that hangs is the one that is named.
+  page.setDefaultTimeout(45_000)
   page.on('pageerror', error => faults.push(`script error: ${error.message}`))
   page.on('console', (message) => {
     if (message.type() === 'error' || /hydration/i.test(message.text())) faults.push(`console: ${message.text()} (${message.location().url})`)
