@@ -8,7 +8,7 @@ import type { RunResult } from '../../types/run.ts'
 export interface DerivedTableRow { id: string, name: string, value: string, sigma: string, unit: string }
 
 /** What the derived quantities are relative to and normalised by. */
-export const derivedNote = `ΔJ₂, ΔC₂₁ and ΔS₂₁ are fully normalised but for J₂ = −√5 C₂₀, for a radius of 6371 km, with the yielding of the Earth. The geocentre is the ${GEOCENTRE_FRAME}.`
+export const derivedNote = `ΔC₂₁ and ΔS₂₁ are fully normalised, ΔJ₂ is not; all three for a radius of 6371\u00a0km, with the yielding of the Earth. The geocentre is the ${GEOCENTRE_FRAME}.`
 
 /** Rates of sea level, gravity field and centre of mass for the sum of the regions; what a run does not hold is left out. */
 export function derivedTable({ total }: RunResult): DerivedTableRow[] {

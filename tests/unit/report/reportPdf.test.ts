@@ -137,6 +137,7 @@ describe('a report of other accounts', () => {
       'Model uncertainty', 'Coefficient set', 'Two per cent.', '0.051', 'Data, one sigma', 'added neither to one another nor to the ± of the data',
       'Kept on land: Northern ice dome to Southern ice margin', '50 % reaches the sea, the rest goes to Southern ice margin.', '90 % of the ice is grounded above flotation',
     ]) expect(text).toContain(part)
+    expect(text).not.toMatch(/[\uFFFD√]/)
     // The budget's own errors stay what they are without the lines.
     expect(text).toContain('+9.63 ± 0.60')
   }, 60_000)
