@@ -187,6 +187,7 @@ const steps: Step[] = [
   { route: 'editionFile', rule: 'open', make: () => ({ params: { slug: shared.slug, n: 1, file: 'series.csv' } }) },
   { route: 'openapi', rule: 'open', make: () => ({}) },
   { route: 'health', rule: 'open', make: () => ({}) },
+  { route: 'validationRead', rule: 'open', make: () => ({}) },
 ]
 
 const lastLogEntry = () => withDatabase(dataDir, db => db.prepare('select max(seq) from log').pluck().get())
