@@ -1,9 +1,10 @@
+import { geoContains } from 'd3-geo'
 import { readFileSync } from 'node:fs'
 import { describe, expect, it } from 'vitest'
-import { landOf } from '../../../shared/figures/map/land.ts'
+import { landOf, landWithoutSeas } from '../../../shared/figures/map/land.ts'
 import { contourLines } from '../../../shared/figures/seaLevel/contourLines.ts'
 import { contourLevels, roundUp } from '../../../shared/figures/seaLevel/levels.ts'
-import { seaLevelContours } from '../../../shared/figures/seaLevel/seaLevelContours.ts'
+import { seaLevelContours, smoothed } from '../../../shared/figures/seaLevel/seaLevelContours.ts'
 import { seaLevelFacts } from '../../../shared/figures/seaLevel/seaLevelFacts.ts'
 import { seaLevelFigure } from '../../../shared/figures/seaLevel/seaLevelFigure.ts'
 import { boxesMeet } from '../../../shared/figures/layout.ts'
@@ -124,6 +125,26 @@ describe('seaLevelContours', () => {
     expect(seaLevelContours(well, null).levels).toContain(1)
     const relative = seaLevelContours(well, 1)
     expect(relative.lines.filter(({ level }) => level === 1).length).toBe(contourLines(well, [1]).length)
+  })
+})
+
+describe('smoothing', () => {
+  it('takes out what changes sign from node to node and leaves planes and waves', () => {
+    const flicker = smoothed(fieldOf((lon, lat) => (lon / 2 + lat / 2) % 2 === 0 ? 1 : -1))
+    const inner = flicker.value.slice(181, -181)
+    expect(Math.max(...inner.map(Math.abs))).toBeLessThan(1e-12)
+    const plane = fieldOf((_, lat) => 3 - lat / 50)
+    smoothed(plane).value.slice(181, -181).forEach((value, i) => expect(value).toBeCloseTo(plane.value[i + 181]!, 12))
+    const wave = fieldOf(lon => Math.cos(2 * lon * rad))
+    // cos 2λ on nodes of 2° keeps (1 + cos 4°)/2 of its height, across the antimeridian too.
+    smoothed(wave).value.forEach((value, i) => expect(value).toBeCloseTo(wave.value[i]! * (1 + Math.cos(4 * rad)) / 2, 12))
+  })
+
+  it('fills the Caspian and leaves every other coast', () => {
+    const atlas: unknown = JSON.parse(readFileSync('node_modules/world-atlas/land-110m.json', 'utf8'))
+    const [open, filled] = [landOf(atlas), landWithoutSeas(atlas)]
+    expect([geoContains(open, [51, 41]), geoContains(filled, [51, 41])]).toEqual([false, true])
+    for (const place of [[0, 0], [-100, 40], [0, -85], [90, 60], [-150, 20]] as [number, number][]) expect(geoContains(filled, place)).toBe(geoContains(open, place))
   })
 })
 
