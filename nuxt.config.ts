@@ -66,7 +66,11 @@ export default defineNuxtConfig({
     },
     externals: { external: ['better-sqlite3', 'pdfmake', 'piscina'] },
   },
-  vite: { build: { chunkSizeWarningLimit: 1500 } },
+  vite: {
+    build: { chunkSizeWarningLimit: 1500 },
+    // Loaded late by pages; named here so that the development server does not reload on first use.
+    optimizeDeps: { include: ['mathjs', 'read-excel-file/universal', 'papaparse', 'd3-scale', 'shapefile', 'proj4', '@tmcw/togeojson', '@xmldom/xmldom', 'fflate'] },
+  },
   hooks: {
     'nitro:init'(nitro) {
       // Migrations, workers, fonts: what the server reads from disk, laid beside it.
