@@ -46,7 +46,10 @@ export async function visit(browser: Browser, url: string, { look = 'light', wid
 /** Opens a page and waits until its scripts have taken over. */
 export async function open(page: Page, path: string) {
   await page.goto(path, { waitUntil: 'load' })
-  await page.waitForFunction('Boolean(document.querySelector("#__nuxt")?.__vue_app__)')
+  const taken = () => page.locator('#__nuxt').evaluate(root => '__vue_app__' in (root as object))
+  // Not waitForFunction: its polling evaluates text inside the page, which the page's policy refuses.
+  for (let i = 0; i < 300 && !await taken(); i++) await page.waitForTimeout(100)
+  if (!await taken()) throw new Error(`the scripts of ${path} did not take over within 30 s`)
   await page.waitForLoadState('networkidle')
 }
 
