@@ -68,7 +68,7 @@ describe('on the map', () => {
     await page.getByLabel(/Or paste/).fill(JSON.stringify({ type: 'Polygon', coordinates: [[[0, 0], [10, 10], [10, 0], [0, 10], [0, 0]]] }))
     await page.getByRole('button', { name: 'Show it' }).click()
     await page.getByText(/cross/i).first().waitFor()
-    await page.getByLabel('GeoJSON file').setInputFiles({ name: 'aquifer.geojson', mimeType: 'application/geo+json', buffer: Buffer.from(JSON.stringify(square(24, -21, 2))) })
+    await page.getByLabel(/zipped shapefile/).setInputFiles({ name: 'aquifer.geojson', mimeType: 'application/geo+json', buffer: Buffer.from(JSON.stringify(square(24, -21, 2))) })
     await page.getByLabel('Name').fill('Brought by file')
     await page.getByLabel('Kind').selectOption('aquifer')
     await page.getByRole('button', { name: 'Save region' }).click()
