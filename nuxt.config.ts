@@ -52,6 +52,7 @@ export default defineNuxtConfig({
   nitro: {
     typescript: { tsConfig: { include: ['../tests/**/*', '../scripts/**/*.ts'], exclude: browserTests, compilerOptions: { allowImportingTsExtensions: true } } },
     preset: 'node-server',
+    esbuild: { options: { target: 'node20' } },
     compressPublicAssets: { gzip: true, brotli: false },
     routeRules: {
       '/**': {

@@ -32,7 +32,10 @@ export function run(command, args, { env = {}, quiet = false } = {}) {
     child.stdout.on('data', pass(process.stdout))
     child.stderr.on('data', pass(process.stderr))
     child.on('error', error => done({ code: 127, output: `${output}${error.message}\n` }))
-    child.on('close', (code, signal) => done({ code: code ?? 1, signal, output }))
+    child.on('close', (code, signal) => {
+      if (signal) console.error(`${[command, ...args].join(' ')} was ended by ${signal}, from outside.`)
+      done({ code: code ?? 1, output })
+    })
   })
 }
 

@@ -99,10 +99,15 @@ export async function makeScenario(client: Client, place: Place, regions: Scenar
 
 /** Runs a scenario and polls its job to the end. */
 export async function runScenario(client: Client, scenario: { id: string, revision: number }) {
-  const started = await client.get('runCreate', { params: { id: scenario.id }, body: { revision: scenario.revision } })
+  const { id } = await client.get('runCreate', { params: { id: scenario.id }, body: { revision: scenario.revision } })
+  return { jobId: id, runId: await endOfJob(client, id) }
+}
+
+/** Polls a job until it is done and gives its run. */
+export async function endOfJob(client: Client, id: string): Promise<string> {
   for (let i = 0; i < 200; i++) {
-    const job = await client.get('jobRead', { params: { id: started.id } })
-    if (job.state === 'done') return { jobId: job.id, runId: job.answer!.runId }
+    const job = await client.get('jobRead', { params: { id } })
+    if (job.state === 'done') return job.answer!.runId
     if (job.state !== 'waiting' && job.state !== 'running') throw new Error(`the job ended as ${job.state}: ${JSON.stringify(job.problem)}`)
     await new Promise(wait => setTimeout(wait, 50))
   }
