@@ -1,7 +1,7 @@
 import { overlapsOf } from '#shared/geo/overlap'
 import type { Outline } from '#shared/types/domain'
 
-export interface NamedOverlap { a: string, b: string, areaKm2: number, shareOfA: number, shareOfB: number, aName: string, bName: string }
+interface NamedOverlap { a: string, b: string, areaKm2: number, shareOfA: number, shareOfB: number, aName: string, bName: string }
 interface Region { id: string, name: string, geometry: { type: string, coordinates: unknown[] } }
 
 /** Ground that regions share: what the server found first, then, once the page stands, every pair that could be chosen. */

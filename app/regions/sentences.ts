@@ -45,7 +45,7 @@ export function totalSentence(total: RegionTotal): string {
 export function totalNotes(total: RegionTotal): string[] {
   const notes: string[] = []
   const pairs = total.overlaps.length
-  if (pairs > 0) notes.push(`${capital(counted(pairs, 'pair'))} of regions ${pairs === 1 ? 'shares' : 'share'} ground, so mass there may be counted twice.`)
+  if (pairs > 0) notes.push(`${capital(counted(pairs, 'pair'))} of regions ${pairs === 1 ? 'shares' : 'share'} ground and ${pairs === 1 ? 'is' : 'are'} not settled, so mass there may be counted twice.`)
   const { lodMicrosecondsPerYear: lod, regions, withTrend, withoutSeries } = total
   if (withTrend > 0) notes.push('The sum of each region’s latest trend, not a run; an error that series share by name is added as one error.')
   if (lod && stands(lod)) notes.push(`Calculated, not observed: it ${lod.value > 0 ? 'lengthens' : 'shortens'} the day by ${size(lod, 'µs per year')}.`)

@@ -1,3 +1,4 @@
+import { isSettled, withChoices, type OpenPair } from './overlaps'
 import { publishedBackground } from '#shared/text/background'
 import type { ScenarioDraft } from '#shared/api/schemas'
 import type { OceanMode } from '#shared/types/domain'
@@ -43,8 +44,10 @@ export function withRegion(draft: ScenarioDraft, choice: DraftRegion): ScenarioD
   return { ...draft, regions: known ? draft.regions.map(region => region.regionId === choice.regionId ? choice : region) : [...draft.regions, choice] }
 }
 
+/** Without a region, and without what was decided of the ground that it shares. */
 export function withoutRegion(draft: ScenarioDraft, regionId: string): ScenarioDraft {
-  return { ...draft, regions: draft.regions.filter(region => region.regionId !== regionId) }
+  const kept = { ...draft, regions: draft.regions.filter(region => region.regionId !== regionId) }
+  return withChoices(kept, (draft.overlaps ?? []).filter(({ a, b }) => a !== regionId && b !== regionId))
 }
 
 /** The draft with a background row added or changed; null in place of a row takes it out. Published rows keep their place. */
@@ -64,12 +67,6 @@ function byPublication(a: BackgroundRow, b: BackgroundRow): number {
   return rank(a) - rank(b)
 }
 
-/** Pairs of regions that share ground, among those that count in the draft. */
-export function countedOverlaps<T extends { a: string, b: string }>(draft: ScenarioDraft, overlaps: readonly T[]): T[] {
-  const counting = new Set(draft.regions.filter(region => region.scale !== 0).map(region => region.regionId))
-  return overlaps.filter(({ a, b }) => counting.has(a) && counting.has(b))
-}
-
 /** The stretch of time that all switched-on series hold; null where there is none. */
 export function commonSpan(
   draft: ScenarioDraft, versions: readonly { id: string, firstMjd: number, lastMjd: number }[],
@@ -83,10 +80,12 @@ export function commonSpan(
 }
 
 /** Why a draft cannot be run yet; null where it can. */
-export function runFault(draft: ScenarioDraft): string | null {
+export function runFault(draft: ScenarioDraft, pairs: readonly OpenPair[] = []): string | null {
   if (!draft.regions.some(region => region.scale !== 0)) return 'Nothing to run: switch on at least one region that has a series.'
   const { fromMjd, toMjd } = draft.settings
   if (fromMjd !== null && toMjd !== null && fromMjd >= toMjd) return 'The last day must come after the first.'
+  const open = pairs.filter(pair => !isSettled(pair)).length
+  if (open > 0) return `${open === 1 ? 'Two regions share' : `${open} pairs of regions share`} ground: say how they are counted, under “Common ground”.`
   return null
 }
 
@@ -102,6 +101,7 @@ export function placeOfIssue(issue: Issue, draft: ScenarioDraft, nameOf: (region
     return [region ? nameOf(region.regionId) : 'a region', regionFields[field ?? ''] ?? ''].filter(Boolean).join(', ')
   }
   if (part === 'background' && index !== undefined) return draft.background[Number(index)]?.name || 'a background row'
+  if (part === 'overlaps') return 'common ground'
   if (part === 'settings') return index === 'fromMjd' || index === 'toMjd' ? 'span' : 'settings'
   return { regions: 'regions', restOfWorld: 'rest of the world', observedId: 'observed series', name: 'name' }[part ?? ''] ?? ''
 }

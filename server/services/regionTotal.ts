@@ -57,6 +57,10 @@ export function regionTotal(context: Context, workspaceId: string) {
   })
   const trends = regions.flatMap(({ trend, perGt }) => trend ? [{ ...trend, perGt }] : [])
   const spans = trends.map(t => [t.fromMjd, t.toMjd] as const)
+  const onGround = (id: string, share: number) => {
+    const mass = regions.find(({ row }) => row.id === id)?.trend?.massGtPerYear
+    return mass ? { value: mass.value * share, sigma: mass.sigma * share } : null
+  }
   const names = new Map(rows.map(row => [row.id, row.name]))
   return {
     regions: rows.length,
@@ -69,6 +73,9 @@ export function regionTotal(context: Context, workspaceId: string) {
     // Spans that differ by less than a month are one span to a reader.
     oneSpan: spans.every(s => Math.abs(s[0] - spans[0]![0]) < 31 && Math.abs(s[1] - spans[0]![1]) < 31),
     overlaps: overlapsAmong(context, regions.map(({ row, outline }) => ({ id: row.id, sha256: outline.sha256, geometry: outline.geometry })))
-      .map(o => ({ ...o, aName: names.get(o.a) ?? '', bName: names.get(o.b) ?? '' })),
+      .map(o => ({
+        ...o, aName: names.get(o.a) ?? '', bName: names.get(o.b) ?? '',
+        onGroundGtPerYear: { a: onGround(o.a, o.shareOfA), b: onGround(o.b, o.shareOfB) },
+      })),
   }
 }

@@ -2,7 +2,6 @@ import { and, desc, eq, isNull, lt } from 'drizzle-orm'
 import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import type { ScenarioDraft } from '#shared/api/schemas'
-import { overlapsOf } from '#shared/geo/overlap'
 import { can, type Principal } from '#shared/permissions'
 import { InputError, type Issue } from '#shared/types/issue'
 import type { RunInput } from '#shared/types/run'
@@ -10,8 +9,9 @@ import { schema } from '../database/client'
 import { Problem } from '../utils/problem'
 import { authorise, change, nameOfUser, newId } from './change'
 import type { Context } from './context'
+import { faultsOfChoices, overlapsOfDraft, settledOverlaps } from './overlaps'
 import { pageOf } from './paging'
-import { latestOutline, regionNames, seriesOfRegion } from './regions'
+import { latestOutline, seriesOfRegion } from './regions'
 import { massSeries } from './seriesStore'
 
 export type ScenarioRow = typeof schema.scenario.$inferSelect
@@ -71,6 +71,7 @@ function checkDraft(context: Context, workspaceId: string, draft: ScenarioDraft)
       issues.push({ path: `draft/regions/${i}/restTo`, code: 'unknown', message: 'is not another region of this scenario' })
     }
   })
+  issues.push(...faultsOfChoices(draft))
   const { fromMjd, toMjd } = draft.settings
   if (fromMjd !== null && toMjd !== null && fromMjd >= toMjd) issues.push({ path: 'draft/settings/toMjd', code: 'order', message: 'must be later than the first day' })
   if (draft.observedId) {
@@ -95,13 +96,11 @@ export function readScenario(context: Context, principal: Principal | null, id: 
   const row = scenarioRow(context, id)
   authorise(principal, 'scenario.read', { workspaceId: row.workspaceId })
   const view = scenarioView(context, principal, row)
-  const present = view.draft.regions.filter(r => r.scale !== 0 && regionExists(context, r.regionId))
-  const names = regionNames(context, present.map(r => r.regionId))
-  const overlaps = overlapsOf(present.map(r => ({ id: r.regionId, geometry: latestOutline(context, r.regionId).geometry })))
+  const overlaps = overlapsOfDraft(context, { ...view.draft, regions: view.draft.regions.filter(r => regionExists(context, r.regionId)) })
   return {
     ...view,
     runs: runsOf(context, id).map(run => runSummaryView(context, run)),
-    overlaps: overlaps.map(o => ({ ...o, aName: names.get(o.a) ?? '', bName: names.get(o.b) ?? '' })),
+    overlaps,
   }
 }
 
@@ -139,6 +138,7 @@ export function freezeInput(context: Context, row: ScenarioRow): RunInput {
   const draft = JSON.parse(row.draft) as ScenarioDraft
   checkDraft(context, row.workspaceId, draft)
   const used = draft.regions.filter(r => r.scale !== 0)
+  const overlapChoices = settledOverlaps(context, draft)
   if (!used.length) throw new InputError('A run needs at least one region with a series.', [{ path: 'draft/regions', code: 'empty', message: 'no region is switched on' }])
   return {
     schemaVersion: 1,
@@ -161,5 +161,6 @@ export function freezeInput(context: Context, row: ScenarioRow): RunInput {
     }),
     background: draft.background,
     restOfWorld: draft.restOfWorld,
+    ...(overlapChoices.length ? { overlapChoices: overlapChoices.map(({ a, b, choice, from, reason }) => ({ a: keyOf(draft, a), b: keyOf(draft, b), choice, from: from && keyOf(draft, from), reason })) } : {}),
   }
 }

@@ -47,7 +47,7 @@ export async function seaLevelOfRun(context: Context, principal: Principal | nul
   const geometry = new Map(runInputOf(row).regions.map(r => [r.key, { geometry: r.geometry, restTo: r.restTo ?? null }]))
   const loads = runResultOf(row).regions.flatMap((region) => {
     const source = geometry.get(region.keptFrom ?? region.key)!
-    const place = region.keptFrom ? source.restTo && geometry.get(source.restTo)!.geometry : source.geometry
+    const place = region.takenFrom ? geometry.get(region.takenFrom)!.geometry : region.keptFrom ? source.restTo && geometry.get(source.restTo)!.geometry : source.geometry
     const massGt = region.massGtPerYear?.value ?? 0
     return place && massGt !== 0 ? [{ geometry: place, massGt }] : []
   })

@@ -9,7 +9,7 @@ import { fluidOptions, fluidSummary } from './fluidSchemas.ts'
 import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
-  agency, edition, geometry, jobView, limits, listOf, markDecisions, massColumns, massConversion, me, name, observedData, observedSummary, overlap, page, perGt, prose,
+  agency, draftOverlap, edition, geometry, jobView, limits, listOf, markDecisions, massColumns, massConversion, me, name, observedData, observedSummary, page, perGt, prose,
   region, regionKind, regionTotal, revision, role, runSummary, scenario, scenarioDraft, sha256, trendSummary, ulid, versionSummary,
 } from './schemas.ts'
 
@@ -219,8 +219,8 @@ export const contracts = {
     body: z.object({ name, draft: scenarioDraft }), answer: scenario, status: 201,
   }),
   scenarioRead: contract({
-    id: 'scenarioRead', method: 'GET', path: '/api/v1/scenarios/{id}', action: 'scenario.read', summary: 'A scenario, its runs and the overlaps among its regions', params: byId,
-    answer: scenario.extend({ runs: z.array(runSummary), overlaps: z.array(overlap.extend({ aName: z.string(), bName: z.string() })) }),
+    id: 'scenarioRead', method: 'GET', path: '/api/v1/scenarios/{id}', action: 'scenario.read', summary: 'A scenario, its runs, and the overlaps among its regions with what was decided of each', params: byId,
+    answer: scenario.extend({ runs: z.array(runSummary), overlaps: z.array(draftOverlap) }),
   }),
   scenarioChange: contract({
     id: 'scenarioChange', method: 'PATCH', path: '/api/v1/scenarios/{id}', action: 'scenario.write', summary: 'Change a scenario’s draft', params: byId,
@@ -235,7 +235,7 @@ export const contracts = {
     body: z.object({ revision }), answer: changed,
   }),
   runCreate: contract({
-    id: 'runCreate', method: 'POST', path: '/api/v1/scenarios/{id}/runs', action: 'run.create', summary: 'Run a scenario as it stands; answers with a job', params: byId,
+    id: 'runCreate', method: 'POST', path: '/api/v1/scenarios/{id}/runs', action: 'run.create', summary: 'Run a scenario as it stands; answers with a job. Refused with an issue for each overlap that is not settled', params: byId,
     body: z.object({ revision }), answer: jobView, status: 202,
   }),
   jobRead: contract({ id: 'jobRead', method: 'GET', path: '/api/v1/jobs/{id}', action: 'run.read', summary: 'State of a job', params: byId, answer: jobView }),

@@ -132,6 +132,10 @@ export const backgroundRow = z.object({
   key: z.string().min(1).max(40), name, source: prose, core: z.enum(coreChoices).nullable(),
   lodMsPerCentury: measuredPlain.nullable(), chi1MasPerYear: measuredPlain.nullable(), chi2MasPerYear: measuredPlain.nullable(),
 })
+/** `keep`: both count in full, with the reason. `subtract`: what the other's series holds on the common ground is taken off `from`. */
+export const overlapChoice = z.object({
+  a: ulid, b: ulid, choice: z.enum(['keep', 'subtract']), from: ulid.nullable(), reason: prose,
+})
 export const scenarioDraft = z.object({
   schemaVersion: z.literal(1),
   settings: physicsSettings.extend({
@@ -144,6 +148,8 @@ export const scenarioDraft = z.object({
     /** Ice: the part that is grounded above flotation and so changes a load. */
     groundedFraction: finite.min(0).max(1).optional(),
   })).max(limits.regions),
+  /** How each pair of regions that share ground is counted; every pair that counts must be settled before a run. */
+  overlaps: z.array(overlapChoice).max(5000).optional(),
   background: z.array(backgroundRow).max(50),
   restOfWorld: backgroundRow.nullable(),
   /** Observed series that the result page opens with; not part of the run. */
@@ -152,12 +158,18 @@ export const scenarioDraft = z.object({
 export type ScenarioDraft = z.output<typeof scenarioDraft>
 
 export const overlap = z.object({ a: z.string(), b: z.string(), areaKm2: finite, shareOfA: finite, shareOfB: finite })
-/** Latest trends of all regions, summed; each trend is over its own span. */
+/** Two regions on common ground, the mass trend that each series holds there, and what a scenario decided of them. */
+export const namedOverlap = overlap.extend({
+  aName: z.string(), bName: z.string(),
+  onGroundGtPerYear: z.object({ a: measuredPlain.nullable(), b: measuredPlain.nullable() }),
+})
+export const draftOverlap = namedOverlap.extend({ settled: overlapChoice.pick({ choice: true, from: true, reason: true }).nullable() })
+/** Latest trends of all regions, summed; each trend is over its own span. Nothing is settled here: overlaps count twice. */
 export const regionTotal = z.object({
   regions: z.int(), withTrend: z.int(), withoutSeries: z.int(),
   massGtPerYear: measured.nullable(), lodMicrosecondsPerYear: measured.nullable(),
   fromMjd: finite.nullable(), toMjd: finite.nullable(), oneSpan: z.boolean(),
-  overlaps: z.array(overlap.extend({ aName: z.string(), bName: z.string() })),
+  overlaps: z.array(namedOverlap),
 })
 export const runSummary = z.object({
   id: ulid, scenarioId: ulid, n: z.int(), name: z.string(), inputSha256: sha256, resultSha256: sha256, engine: z.string(),

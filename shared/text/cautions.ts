@@ -6,7 +6,7 @@ export const cautions = {
   legal: 'Attribution is not a finding of legal responsibility. Decisions on water allocation, dams and abstraction follow local law and licensed practice.',
   operational: 'Not for operational timekeeping, navigation or leap-second decisions: use the official Earth-orientation bulletins.',
   projection: 'A projection is the stated rule carried forward, not a forecast.',
-  overlap: 'Some regions overlap, so mass on common ground may be counted twice. The overlaps are listed before the sum.',
+  overlap: 'Some regions share ground and both count in full there, so mass may be counted twice. What was decided of each pair stands before the sum.',
   restOfWorld: 'The account may not hold the whole world: what it leaves out is the row “rest of the world”.',
   oceanNone: 'Without an ocean response mass is not conserved. This setting is a diagnostic, not a result.',
   notRemoved: 'Tides, atmosphere and ocean circulation are still in the observed series wherever they have not been taken out; they are in the residual as well.',
@@ -25,7 +25,7 @@ export function cautionsFor(
   const applies: Record<CautionKey, boolean> = {
     invented: options.invented === true,
     oceanNone: result.settings.ocean === 'none',
-    overlap: result.overlaps.length > 0,
+    overlap: result.overlaps.some(({ settled }) => settled?.choice !== 'subtract'),
     projection: options.projected === true,
     calculated: true,
     core: true,

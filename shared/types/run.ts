@@ -24,6 +24,19 @@ export interface RunInput {
   background: BackgroundRow[]
   /** What the account does not hold, entered by the lead; null leaves the row empty. */
   restOfWorld: BackgroundRow | null
+  /** How each pair of regions that share ground is counted; absent where none do, and in runs from before this was asked. */
+  overlapChoices?: OverlapChoice[]
+}
+
+/** What was decided of two regions that share ground, by their keys. */
+export interface OverlapChoice {
+  a: string
+  b: string
+  /** `keep`: both count in full. `subtract`: what the other's series holds on the common ground is taken off `from`. */
+  choice: 'keep' | 'subtract'
+  /** The region that is counted less: a or b; null for `keep`. */
+  from: string | null
+  reason: string
 }
 
 export interface RunRegionInput {
@@ -96,8 +109,10 @@ export interface ModelUncertaintyRate { id: string, name: string, text: string, 
 export interface RunRegionResult extends BudgetRow {
   /** Absent in runs of earlier engines. */
   derived?: DerivedRates
-  /** Key of the region whose water this row keeps on land; the row is no region of its own. */
+  /** Key of the region whose series this row counts elsewhere, on land or on ground it shares; the row is no region of its own. */
   keptFrom?: string
+  /** Key of the region that this row takes mass off, since `keptFrom` counts it already. */
+  takenFrom?: string
   kind: RegionKind
   agency: string
   areaKm2: number
@@ -126,7 +141,17 @@ export interface RunTotalSeries {
 export interface RunWarning { code: string, message: string, regions: string[] }
 
 /** Two regions of a run whose outlines cover common ground. */
-export interface RegionOverlap { a: string, b: string, areaKm2: number, shareOfA: number, shareOfB: number }
+export interface RegionOverlap {
+  a: string
+  b: string
+  areaKm2: number
+  shareOfA: number
+  shareOfB: number
+  /** Mass trend of each on the common ground, spread evenly over its outline, with its factor; absent in runs of earlier engines. */
+  onGroundGtPerYear?: { a: Measured, b: Measured }
+  /** Absent where it was not settled, in runs from before this was asked. */
+  settled?: Pick<OverlapChoice, 'choice' | 'from' | 'reason'>
+}
 
 export interface RunResult {
   schemaVersion: 1

@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto'
 import canonicalize from 'canonicalize'
 import { beforeAll, describe, expect, inject, it } from 'vitest'
+import type { ScenarioDraft } from '#shared/api/schemas'
 import type { Client } from '../support/client'
 import { addWorkspace, draftOf, makeObserved, makeRegion, makeScenario, makeVersion, monthlyCsv, newcomer, orientationCsv, runScenario, square, withDatabase, type Place } from '../support/world'
 
@@ -123,8 +124,27 @@ describe('a scenario', () => {
     const { overlaps } = await lead.get('scenarioRead', { params: { id: scenario.id } })
     expect(overlaps).toHaveLength(1)
     expect([overlaps[0]!.a, overlaps[0]!.b].sort()).toEqual([regions[0]!.regionId, other.id].sort())
-    const { result } = await lead.get('runRead', { params: { id: (await runScenario(lead, scenario)).runId } })
-    expect(result.overlaps).toHaveLength(1)
+    expect(overlaps[0]).toMatchObject({ settled: null, onGroundGtPerYear: { a: { value: expect.any(Number) as number }, b: { value: expect.any(Number) as number } } })
+    const problem = await lead.refused('runCreate', 422, { params: { id: scenario.id }, body: { revision: scenario.revision } })
+    expect(problem.issues).toEqual([expect.objectContaining({ path: 'draft/overlaps', code: 'overlap-unsettled' })])
+
+    const { a, b } = overlaps[0]!
+    const settle = (choice: Partial<NonNullable<ScenarioDraft['overlaps']>[number]>) => ({ ...scenario.draft, overlaps: [{ a, b, choice: 'keep' as const, from: null, reason: '', ...choice }] })
+    const unreasoned = await lead.refused('scenarioChange', 422, { params: { id: scenario.id }, body: { revision: 1, draft: settle({}) } })
+    expect(unreasoned.issues![0]!.path).toBe('draft/overlaps/0/reason')
+    await lead.refused('scenarioChange', 422, { params: { id: scenario.id }, body: { revision: 1, draft: settle({ choice: 'subtract' }) } })
+
+    const kept = await lead.get('scenarioChange', { params: { id: scenario.id }, body: { revision: 1, draft: settle({ reason: 'Groundwater and surface water.' }) } })
+    const both = (await lead.get('runRead', { params: { id: (await runScenario(lead, kept)).runId } })).result
+    expect(both.overlaps[0]).toMatchObject({ settled: { choice: 'keep', reason: 'Groundwater and surface water.' } })
+    const less = await lead.get('scenarioChange', { params: { id: scenario.id }, body: { revision: 2, draft: settle({ choice: 'subtract', from: a }) } })
+    const once = (await lead.get('runRead', { params: { id: (await runScenario(lead, less)).runId } })).result
+    expect(once.overlaps[0]).toMatchObject({ settled: { choice: 'subtract' } })
+    // Half of each square is common ground: half of what the other square holds is taken off.
+    const taken = once.regions.find(row => row.takenFrom)!
+    const giver = once.regions.find(row => row.key === taken.keptFrom)!
+    expect(taken.massGtPerYear!.value / giver.massGtPerYear!.value).toBeCloseTo(-0.5, 6)
+    expect(once.total.massGtPerYear!.value).toBeCloseTo(both.total.massGtPerYear!.value + taken.massGtPerYear!.value, 9)
   })
 })
 

@@ -3,6 +3,7 @@ import { print } from '#shared/design/tokens'
 import { cautions, cautionsFor } from '#shared/text/cautions'
 import { constantRows } from '#shared/text/constants'
 import { methodSections, settingsLine } from '#shared/text/method'
+import { massOnGround, namedPairs, settledSentence, sharedGround, unsettledNote } from '#shared/text/overlaps'
 import { waterWaySentences } from '#shared/text/waterWay'
 import { listed } from '#shared/text/words'
 import { caution, page, paragraph, sectionHead, size, textTable, together } from './style'
@@ -11,9 +12,7 @@ import type { Block, ReportData } from './types'
 
 /** Overlaps and warnings, before any sum. Nothing where there are none. */
 export function overlapBlocks({ result }: ReportData): Block[] {
-  const names = new Map(result.regions.map(region => [region.key, region.name]))
-  const overlaps = result.overlaps.map(({ a, b, areaKm2, shareOfA, shareOfB }) =>
-    `${names.get(a) ?? a} and ${names.get(b) ?? b} share ${formatArea(areaKm2)}: ${formatShare(shareOfA).replace('+', '')} of the first, ${formatShare(shareOfB).replace('+', '')} of the second.`)
+  const overlaps = namedPairs(result).map(pair => [sharedGround(pair), massOnGround(pair), settledSentence(pair) ?? unsettledNote].filter(Boolean).join(' '))
   const messages = result.warnings.filter(warning => warning.code !== 'overlap').map(warning => warning.message)
   const [first, ...rest] = [...overlaps, ...messages].map(text => caution(text))
   return first ? [together(sectionHead('Before the sum', 'overlaps and warnings'), first), ...rest] : []

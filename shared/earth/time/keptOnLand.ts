@@ -1,6 +1,6 @@
 import { InputError, type Issue } from '../../types/issue.ts'
 import type { RunInput } from '../../types/run.ts'
-import { coefficientsOf, responseToMoments, type ResponsePerGt } from '../response.ts'
+import { coefficientsOf, responseToMoments } from '../response.ts'
 import type { Contour } from '../contour.ts'
 import type { EarthModel } from '../earthModel.ts'
 import { landMoments } from '../landResponse.ts'
@@ -43,15 +43,16 @@ export function keptOnLand(fitted: readonly FittedRegion[], settings: RunInput['
     if (key !== null && !other) issues.push({ path: `regions/${i}/restTo`, code: 'unknown', message: `${f.region.name}: “${key}” is not another region of this run.` })
     const moments = other ? netMoments(other.contour, model, settings.ocean) : (land ??= landMoments(model, settings.ocean))
     const response = responseToMoments(moments, model, coefficientsOf(settings))
-    return { ...f, kept: { effect: scaled(response, -rest), moments, target: other ? { name: other.region.name, contour: other.contour } : null } }
+    return { ...f, kept: { effect: scaledEffect({ ...response, massGt: 1 }, -rest), moments, target: other ? { name: other.region.name, contour: other.contour } : null } }
   })
   if (issues.length > 0) throw new InputError('Where the water goes is not said rightly', issues)
   return withKept
 }
 
-function scaled(response: ResponsePerGt, factor: number): EffectPerGt {
-  const effect = { ...response, massGt: factor }
-  for (const name of quantities) effect[name] = factor * response[name]
+/** An effect times a factor. */
+export function scaledEffect(of: EffectPerGt, factor: number): EffectPerGt {
+  const effect = { ...of, massGt: factor * of.massGt }
+  for (const name of quantities) effect[name] = factor * of[name]
   return effect
 }
 
@@ -60,11 +61,12 @@ export function ownEffect(f: FittedRegion): EffectPerGt {
   return { ...f.response, massGt: 1 }
 }
 
-/** The same with what is kept on land: what the sum counts. */
+/** The same with what is kept on land and what is taken off others that hold the same mass: what the sum counts. */
 export function netEffect(f: FittedRegion): EffectPerGt {
   const effect = ownEffect(f)
-  if (!f.kept) return effect
-  effect.massGt += f.kept.effect.massGt
-  for (const name of quantities) effect[name] += f.kept.effect[name]
+  for (const more of [...f.kept ? [f.kept] : [], ...f.taken]) {
+    effect.massGt += more.effect.massGt
+    for (const name of quantities) effect[name] += more.effect[name]
+  }
   return effect
 }

@@ -1,18 +1,21 @@
 import { overlapsOf } from '../../geo/overlap.ts'
+import type { OutlineOverlap } from '../../geo/overlap.ts'
 import { InputError } from '../../types/issue.ts'
-import type { BudgetRow, RunInput, RunRegionInput, RunRegionResult, RunResult, RunTotalSeries } from '../../types/run.ts'
+import type { BudgetRow, OverlapChoice, RegionOverlap, RunInput, RunRegionInput, RunRegionResult, RunResult, RunTotalSeries } from '../../types/run.ts'
 import { contourOf } from '../contour.ts'
 import type { Contour } from '../contour.ts'
 import type { EarthModel } from '../earthModel.ts'
 import { responseOf } from '../response.ts'
 import type { ResponsePerGt } from '../response.ts'
-import { budgetRow, emptyRow, enteredRow, sharesOf } from './budget.ts'
+import { budgetRow, emptyRow, enteredRow, functional, sharesOf } from './budget.ts'
 import type { EffectPerGt, MassRates } from './budget.ts'
 import { covarianceOf } from './covariance.ts'
 import type { CalendarMonth } from './epochs.ts'
 import { JULIAN_YEAR_DAYS } from './epochs.ts'
 import { monthlyAnomalies, monthlyWeights } from './monthly.ts'
 import type { MonthlyAnomalies } from './monthly.ts'
+import { choiceOf, countedOnce } from './countedOnce.ts'
+import type { TakenOff } from './countedOnce.ts'
 import { keptOnLand, netEffect, ownEffect } from './keptOnLand.ts'
 import type { KeptOnLand } from './keptOnLand.ts'
 import { derivedRates, modelUncertaintyRates } from './runDerived.ts'
@@ -31,6 +34,8 @@ export interface FittedRegion {
   response: ResponsePerGt
   /** The part that is kept on land; null where all of it reaches the sea. */
   kept: KeptOnLand | null
+  /** Mass of this series that is taken off other regions, which hold it as well. */
+  taken: TakenOff[]
   fit: TrendFit | null
   monthly: MonthlyAnomalies
   epochsUsed: number
@@ -49,17 +54,19 @@ export interface FittedRegion {
 export function computeRun(input: RunInput, model: EarthModel): RunResult {
   checkSeries(input.regions)
   const active = input.regions.filter(region => region.scale !== 0)
-  const overlaps = overlapsOf(active.map(region => ({ id: region.key, geometry: region.geometry })))
+  const choices = input.overlapChoices ?? []
+  const common = overlapsOf(active.map(region => ({ id: region.key, geometry: region.geometry })))
   const { span, months } = spanOf(input.regions, input.settings)
   checkEpochs(input.regions, span)
 
-  const fitted = keptOnLand(input.regions.map(region => fitRegion(region, input.settings, model, span, months)), input.settings, model)
+  const fitted = countedOnce(keptOnLand(input.regions.map(region => fitRegion(region, input.settings, model, span, months)), input.settings, model), common, choices)
+  const overlaps = common.map(overlap => overlapResult(overlap, fitted, choices))
   const rates = ratesOf(fitted)
   const total = budgetRow('total', 'Sum of the regions', rates, fitted.map(netEffect))
   const regions = fitted.flatMap((f) => {
     const row = budgetRow(f.region.key, f.region.name, ratesOf([f]), [ownEffect(f)])
-    const own = { ...regionResult(f, row, months), derived: derivedRates([{ ...f, kept: null }], ratesOf([f]), input.settings.ocean, model), ...sharesOf(row, total) }
-    return f.kept ? [own, keptResult(f, f.kept, total, months)] : [own]
+    const own = { ...regionResult(f, row, months), derived: derivedRates([{ ...f, kept: null, taken: [] }], ratesOf([f]), input.settings.ocean, model), ...sharesOf(row, total) }
+    return [own, ...(f.kept ? [keptResult(f, f.kept, total, months)] : []), ...f.taken.map(taken => takenResult(f, taken, total, months))]
   })
   return {
     schemaVersion: 1,
@@ -104,6 +111,7 @@ function fitRegion(sent: RunRegionInput, settings: RunInput['settings'], model: 
     contour,
     response: responseOf(contour, model, settings),
     kept: null,
+    taken: [],
     fit,
     monthly: monthlyAnomalies(monthlyWeights(mjd, months, settings.maxGapDays), months, value, sigma),
     epochsUsed: mjd.length
@@ -152,14 +160,35 @@ function regionResult(f: FittedRegion, row: BudgetRow, months: readonly Calendar
 /** The row of what a region's water does where it is kept on land: of opposite sign, and fully correlated with the region's own. */
 function keptResult(f: FittedRegion, { effect, target }: KeptOnLand, total: BudgetRow, months: readonly CalendarMonth[]): RunRegionResult {
   const name = target ? `Kept on land: ${f.region.name} to ${target.name}` : `Kept on land elsewhere: from ${f.region.name}`
-  const row = budgetRow(`${f.region.key}-kept`, name, ratesOf([f]), [effect])
+  return elsewhereResult(f, `${f.region.key}-kept`, name, effect, target?.contour ?? null, total, months)
+}
+
+/** The row of what is taken off a region because this one's series counts it: fully correlated with this one's own row. */
+function takenResult(f: FittedRegion, { effect, from }: TakenOff, total: BudgetRow, months: readonly CalendarMonth[]): RunRegionResult {
+  const name = `Counted once: ${f.region.name}, taken off ${from.region.name}`
+  return { ...elsewhereResult(f, `${f.region.key}-off-${from.region.key}`, name, effect, from.contour, total, months), takenFrom: from.region.key }
+}
+
+function elsewhereResult(f: FittedRegion, key: string, name: string, effect: EffectPerGt, place: Contour | null, total: BudgetRow, months: readonly CalendarMonth[]): RunRegionResult {
+  const row = budgetRow(key, name, ratesOf([f]), [effect])
   const own = regionResult(f, row, months)
   const { massGt: factor, ...perGt } = effect
   return {
     ...own, ...sharesOf(row, total), keptFrom: f.region.key, perGt,
-    areaKm2: target ? target.contour.areaM2 / 1e6 : 0, centroid: target ? target.contour.centroid : [0, 0],
+    areaKm2: place ? place.areaM2 / 1e6 : 0, centroid: place ? place.centroid : [0, 0],
     massGt: own.massGt.map(mass => mass === null ? null : factor * mass + 0),
     sigmaMassGt: own.sigmaMassGt.map(sigma => sigma === null ? null : Math.abs(factor) * sigma)
+  }
+}
+
+/** An overlap with what each series holds there and what was decided. */
+function overlapResult(overlap: OutlineOverlap, fitted: readonly FittedRegion[], choices: readonly OverlapChoice[]): RegionOverlap {
+  const onGround = (key: string, share: number) => functional(ratesOf(fitted.filter(f => f.region.key === key)), [share])
+  const settled = choiceOf(choices, overlap)
+  return {
+    ...overlap,
+    onGroundGtPerYear: { a: onGround(overlap.a, overlap.shareOfA), b: onGround(overlap.b, overlap.shareOfB) },
+    ...(settled ? { settled: { choice: settled.choice, from: settled.from, reason: settled.reason } } : {})
   }
 }
 

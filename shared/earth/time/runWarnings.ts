@@ -30,11 +30,22 @@ export function runWarnings(
 
 function overlapWarnings(input: RunInput, overlaps: readonly RegionOverlap[]): RunWarning[] {
   const nameOf = (key: string): string => input.regions.find(region => region.key === key)?.name ?? key
-  return overlaps.map(({ a, b, areaKm2, shareOfA, shareOfB }) => ({
+  const unsettled = overlaps.filter(overlap => !overlap.settled).map(({ a, b, areaKm2, shareOfA, shareOfB }) => ({
     code: 'overlap',
     message: `“${nameOf(a)}” and “${nameOf(b)}” share ${formatArea(areaKm2)}, ${formatShare(shareOfA).replace('+', '')} of the first and ${formatShare(shareOfB).replace('+', '')} of the second: mass there may be counted twice.`,
     regions: [a, b]
   }))
+  return [...unsettled, ...takenTwice(overlaps, nameOf)]
+}
+
+/** Three regions on common ground, each taken off the next and the smallest off the largest too: its mass is then taken off once too often. */
+function takenTwice(overlaps: readonly RegionOverlap[], nameOf: (key: string) => string): RunWarning[] {
+  const taken = overlaps.flatMap(({ a, b, settled }) => settled?.choice === 'subtract' ? [{ from: settled.from!, of: settled.from === a ? b : a }] : [])
+  return taken.flatMap(outer => taken.filter(inner => inner.from === outer.of && taken.some(t => t.from === outer.from && t.of === inner.of)).map(inner => ({
+    code: 'taken-twice',
+    message: `“${nameOf(inner.of)}” is taken off both “${nameOf(inner.from)}” and “${nameOf(outer.from)}”, from which “${nameOf(inner.from)}” is taken as well: where all three share ground it is taken off once too often. Keep one of these pairs in full.`,
+    regions: [outer.from, inner.from, inner.of]
+  })))
 }
 
 function seaWarnings(active: readonly { region: RunRegionInput, contour: Contour }[], { oceanField }: EarthModel): RunWarning[] {

@@ -4,7 +4,7 @@ import { formatDirection } from '../../format/places.ts'
 import { driftOf } from '../drift/vector.ts'
 import { aligned } from './aligned.ts'
 import type { Measured } from '../../types/domain.ts'
-import type { BudgetRow, Comparison, RunResult } from '../../types/run.ts'
+import type { BudgetRow, Comparison, RunRegionResult, RunResult } from '../../types/run.ts'
 import type { AlignedText } from './aligned.ts'
 
 export interface BudgetColumn {
@@ -127,8 +127,8 @@ export function budgetTable(result: RunResult, comparison: Comparison | null = n
   const rows: RawRow[] = [
     ...result.regions.filter(region => !region.keptFrom).sort((a, b) => size(b) - size(a)).flatMap(region => [
       raw('region', region, region.scale === 0 ? 'switched off' : region.scale === 1 ? null : `mass × ${region.scale}`),
-      // What does not reach the sea stands below the region that it comes from.
-      ...result.regions.filter(({ keptFrom }) => keptFrom === region.key).map(kept => raw('region', kept, region.scale === 0 ? 'switched off' : 'the part of the row above that does not reach the sea')),
+      // What does not reach the sea stands below the region that it comes from, what is counted elsewhere below the one that it is taken off.
+      ...result.regions.filter(({ keptFrom, takenFrom }) => (takenFrom ?? keptFrom) === region.key).map(row => raw('region', row, noteOfPart(row, region.scale))),
     ]),
     raw('model', { ...result.total, name: 'Model', shareOfModelLod: shareOfItself(result.total.lodMicrosecondsPerYear), shareOfModelPole: shareOfItself(result.total.driftCmPerYear) }),
     ...result.background.map(row => raw('background', row, 'background')),
@@ -143,6 +143,11 @@ export function budgetTable(result: RunResult, comparison: Comparison | null = n
   return rows.map(({ key, kind, name, note }, r) => ({
     key, kind, name, note, cells: columns.map(column => ({ value: column.value[r]!, sigma: column.sigma[r]! })),
   }))
+}
+
+function noteOfPart(row: RunRegionResult, scale: number): string {
+  if (scale === 0) return 'switched off'
+  return row.takenFrom ? 'taken off the region above, since it is counted with its own' : 'the part of the row above that does not reach the sea'
 }
 
 function shareOfItself(measured: Measured | null): number | null {

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { publishedBackground } from '#shared/text/background'
-import { commonSpan, countedOverlaps, emptyRate, newDraft, placeOfIssue, runFault, withBackground, withoutRegion, withRegion } from '../../../app/scenario/draft'
+import { commonSpan, emptyRate, newDraft, placeOfIssue, runFault, withBackground, withoutRegion, withRegion } from '../../../app/scenario/draft'
+import { pairsOfDraft, withChoice } from '../../../app/scenario/overlaps'
 
 const region = (id: string, versionId: string | null = `v-${id}`) => ({ id, name: `Region ${id}`, series: versionId ? { latest: { id: versionId } } : null })
 const draft = newDraft([region('a'), region('b'), region('c', null)], 'fingerprint', 'o1')
@@ -27,10 +28,22 @@ describe('regions of a draft', () => {
     expect(draft.regions).toHaveLength(2)
   })
 
+  const shared = { areaKm2: 5, shareOfA: 0.1, shareOfB: 0.2, aName: 'A', bName: 'B' }
+  const overlaps = [{ a: 'a', b: 'b', ...shared }, { a: 'a', b: 'c', ...shared }]
   it('counts overlaps between regions that are switched on only', () => {
-    const overlaps = [{ a: 'a', b: 'b' }, { a: 'a', b: 'c' }]
-    expect(countedOverlaps(draft, overlaps)).toEqual([{ a: 'a', b: 'b' }])
-    expect(countedOverlaps(withRegion(draft, { regionId: 'b', versionId: 'v-b', scale: 0 }), overlaps)).toEqual([])
+    expect(pairsOfDraft(draft, overlaps, []).map(({ a, b }) => a + b)).toEqual(['ab'])
+    expect(pairsOfDraft(withRegion(draft, { regionId: 'b', versionId: 'v-b', scale: 0 }), overlaps, [])).toEqual([])
+  })
+
+  it('wants every pair on common ground settled, keeping both only with a reason, and forgets what was said of a region that goes', () => {
+    const pairs = (of: typeof draft) => pairsOfDraft(of, overlaps, [])
+    expect(runFault(draft, pairs(draft))).toMatch(/Two regions share ground/)
+    const kept = withChoice(draft, { a: 'b', b: 'a', choice: 'keep', from: null, reason: '' })
+    expect(runFault(kept, pairs(kept))).toMatch(/Two regions share ground/)
+    const settled = withChoice(kept, { a: 'a', b: 'b', choice: 'subtract', from: 'a', reason: '' })
+    expect(settled.overlaps).toHaveLength(1)
+    expect(runFault(settled, pairs(settled))).toBeNull()
+    expect(withoutRegion(settled, 'b').overlaps).toBeUndefined()
   })
 
   it('finds the span that switched-on series have in common', () => {

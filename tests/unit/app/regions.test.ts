@@ -70,7 +70,7 @@ describe('sentence over all regions', () => {
   it('does not hide that spans differ, that series are missing, that there is none', () => {
     expect(totalSentence(total({ oneSpan: false }))).toContain('each over its own span within')
     expect(totalNotes(total({ regions: 8, withoutSeries: 1 })).join(' ')).toMatch(/One region has no mass series yet\. One region has a series too short/)
-    expect(totalNotes(total({ overlaps: [{ a: '1', b: '2', areaKm2: 5, shareOfA: 0.1, shareOfB: 0.2, aName: 'x', bName: 'y' }] }))[0]).toMatch(/^One pair of regions shares ground/)
+    expect(totalNotes(total({ overlaps: [{ a: '1', b: '2', areaKm2: 5, shareOfA: 0.1, shareOfB: 0.2, aName: 'x', bName: 'y', onGroundGtPerYear: { a: null, b: null } }] }))[0]).toMatch(/^One pair of regions shares ground/)
     expect(totalSentence(total({ regions: 0, withTrend: 0, massGtPerYear: null }))).toBe('No region is in this account yet.')
     expect(totalSentence(total({ regions: 2, withTrend: 0, massGtPerYear: null }))).toMatch(/^Two regions are in this account; none has/)
   })

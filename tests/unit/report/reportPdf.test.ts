@@ -147,7 +147,7 @@ describe('a report of other accounts', () => {
     const data = sampleReport(regions)
     data.result.overlaps = [{ a: 'r1', b: 'r2', areaKm2: 12_300, shareOfA: 0.25, shareOfB: 0.5 }]
     const { text } = await printed(data)
-    expect(text.indexOf('share 12 300 km²: 25 % of the first, 50 % of the second')).toBeGreaterThan(0)
+    expect(text.indexOf('share 12 300 km², 25 % of the first and 50 % of the second')).toBeGreaterThan(0)
     expect(text.indexOf('Before the sum')).toBeLessThan(text.indexOf('trends per Julian year'))
     for (let i = 0; i < 40; i++) expect(text).toContain(`Basin & "reach" <${i}>`)
   }, 90_000)

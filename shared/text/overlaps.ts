@@ -1,0 +1,45 @@
+import { formatArea, formatMeasured, formatNumber } from '../format/numbers.ts'
+import { hardSpace } from '../format/digits.ts'
+import type { RegionOverlap, RunResult } from '../types/run.ts'
+
+/** Two regions that share ground, with their names. */
+export interface NamedPair extends Omit<RegionOverlap, 'onGroundGtPerYear' | 'settled'> {
+  aName: string
+  bName: string
+  onGroundGtPerYear?: { a: { value: number, sigma: number } | null, b: { value: number, sigma: number } | null }
+  settled?: RegionOverlap['settled'] | null
+}
+
+const percent = (share: number) => `${share > 0 && share < 0.005 ? '<\u2009' : ''}${formatNumber(share > 0 && share < 0.005 ? 1 : share * 100)}${hardSpace}%`
+const perYear = ({ value, sigma }: { value: number, sigma: number }) => formatMeasured(value, sigma, { significant: 3, unit: 'Gt/yr' }).text
+
+/** How much ground two regions share. */
+export function sharedGround({ aName, bName, areaKm2, shareOfA, shareOfB }: NamedPair): string {
+  return `${aName} and ${bName} share ${formatArea(areaKm2)}, ${percent(shareOfA)} of the first and ${percent(shareOfB)} of the second.`
+}
+
+/** What each series holds on the common ground; empty where a trend is not known. */
+export function massOnGround({ aName, bName, onGroundGtPerYear: on }: NamedPair): string {
+  const known = [on?.a ? `${aName} ${perYear(on.a)}` : '', on?.b ? `${bName} ${perYear(on.b)}` : ''].filter(Boolean)
+  return known.length > 0 ? `Spread evenly over its outline, the series of ${known.join(', that of ')} on the common ground.` : ''
+}
+
+/** What was decided of a pair; null where nothing was. */
+export function settledSentence({ a, aName, bName, settled }: NamedPair): string | null {
+  if (!settled) return null
+  const reason = settled.reason ? ` ${ended(settled.reason)}` : ''
+  if (settled.choice === 'keep') return `Both count in full.${reason}`
+  const [less, full] = settled.from === a ? [aName, bName] : [bName, aName]
+  return `Counted once: what the series of ${full} holds on the common ground is taken off ${less}.${reason}`
+}
+
+const ended = (text: string) => /[.!?]$/.test(text) ? text : `${text}.`
+
+/** The overlaps of a run with the names of its regions. */
+export function namedPairs(result: Pick<RunResult, 'overlaps' | 'regions'>): NamedPair[] {
+  const nameOf = (key: string) => result.regions.find(region => region.key === key)?.name ?? key
+  return result.overlaps.map(pair => ({ ...pair, aName: nameOf(pair.a), bName: nameOf(pair.b) }))
+}
+
+/** What an overlap without a decision means for a sum. */
+export const unsettledNote = 'Not settled: mass there may be counted twice in every sum.'
