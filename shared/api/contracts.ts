@@ -5,6 +5,7 @@ import { attributionAnswer, attributionQuery } from './attributionSchemas.ts'
 import { chainAnswer, chainQuery } from './chainSchemas.ts'
 import { contract, type Contract } from './contract.ts'
 import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
+import { fitAnswer, fitQuery } from './fitSchemas.ts'
 import { fluidOptions, fluidSummary } from './fluidSchemas.ts'
 import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
@@ -158,6 +159,11 @@ export const contracts = {
       version: versionSummary, settings: z.looseObject({}), perGt, mjd: z.array(z.number()), massGt: z.array(z.number()), sigmaMassGt: z.array(z.number().nullable()),
       lodMicroseconds: z.array(z.number()), chi1Mas: z.array(z.number()), chi2Mas: z.array(z.number()), trend: trendSummary.nullable(), warnings: z.array(z.string()),
     }),
+  }),
+  regionFit: contract({
+    id: 'regionFit', method: 'GET', path: '/api/v1/regions/{id}/fit', action: 'region.read',
+    summary: 'Fit of a series version: chosen terms with errors under white, AR(1) and power-law noise, residuals, autocorrelation, spectrum, gaps; stores nothing', params: byId,
+    query: fitQuery, answer: fitAnswer,
   }),
 
   // Mass series

@@ -20,8 +20,8 @@ export function sharedGround({ aName, bName, areaKm2, shareOfA, shareOfB }: Name
 
 /** What each series holds on the common ground; empty where a trend is not known. */
 export function massOnGround({ aName, bName, onGroundGtPerYear: on }: NamedPair): string {
-  const known = [on?.a ? `${aName} ${perYear(on.a)}` : '', on?.b ? `${bName} ${perYear(on.b)}` : ''].filter(Boolean)
-  return known.length > 0 ? `Spread evenly over its outline, the series of ${known.join(', that of ')} on the common ground.` : ''
+  const known = [on?.a ? { name: aName, rate: on.a } : null, on?.b ? { name: bName, rate: on.b } : null].flatMap(part => part ?? [])
+  return known.length > 0 ? `Spread evenly over its outline, ${known.map(({ name, rate }, i) => `${i === 0 ? 'the series of ' : 'that of '}${name}${i === 0 ? ' holds' : ''} ${perYear(rate)}`).join(', ')} on the common ground.` : ''
 }
 
 /** What was decided of a pair; null where nothing was. */

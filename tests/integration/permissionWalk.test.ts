@@ -128,6 +128,7 @@ const steps: Step[] = [
   { route: 'regionTotal', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'errorSourceList', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'regionPrediction', rule: 'science', make: () => ({ params: { id: shared.liquid } }) },
+  { route: 'regionFit', rule: 'science', make: () => ({ params: { id: shared.liquid } }) },
   { route: 'seriesCreate', case: 'liquid water', rule: 'liquid', make: async () => newSeries(await freshRegion('lake')) },
   { route: 'seriesCreate', case: 'ice', rule: 'ice', make: async () => newSeries(await freshRegion('glacier-region')) },
   { route: 'seriesVersionList', rule: 'science', make: () => ({ params: workspace() }) },

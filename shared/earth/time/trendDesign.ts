@@ -3,6 +3,8 @@ import { JULIAN_YEAR_DAYS, julianYearsFromMjd } from './epochs.ts'
 export interface TrendOptions {
   /** 'auto' (default): annual and semiannual terms from two years on, where the epochs can carry them. */
   seasonal?: 'auto' | boolean
+  /** Which of the two where seasons are carried: 1 annual, 2 semiannual; both unless told. */
+  harmonics?: readonly (1 | 2)[]
   /** Adds ½·a·(t − t₀)²; the trend is then the rate at the reference epoch. */
   acceleration?: boolean
   /** Epochs of steps, MJD: each adds a column that is 0 before and 1 from there on. */
@@ -50,8 +52,9 @@ export function trendDesign(mjd: ArrayLike<number>, options: TrendOptions = {}):
     columns.push(map(mjd, t => 0.5 * ((t - referenceMjd) / JULIAN_YEAR_DAYS) ** 2))
   }
   if (seasonal) {
-    periodic('annual', 1)
-    periodic('semiannual', 2)
+    const harmonics = options.harmonics ?? [1, 2]
+    if (harmonics.includes(1)) periodic('annual', 1)
+    if (harmonics.includes(2)) periodic('semiannual', 2)
   }
   if (options.aliasPeriodDays !== undefined) {
     if (!(options.aliasPeriodDays > 0)) throw new RangeError(`aliasPeriodDays must be positive, got ${options.aliasPeriodDays}`)

@@ -17,6 +17,9 @@ export interface TrendUnderNoise {
   sigma: number
   /** φ of AR(1) at the step of the series; spectral index κ of the power law (0 white, −1 flicker, −2 random walk); null for white. */
   parameter: number | null
+  /** All coefficients in the order of `TrendNoiseReport.names` with their one-sigma. */
+  coefficients: number[]
+  sigmas: number[]
   /** −2 ln restricted likelihood + 2 × parameters, less the smallest of the models: 0 for the model that describes best. */
   aic: number
 }
@@ -26,6 +29,8 @@ export interface TrendNoiseReport {
   simple: Measured & { r1: number }
   /** White, AR(1) and power law, each by restricted likelihood averaged over its parameter; without the latter two where the epochs are too irregular. */
   models: TrendUnderNoise[]
+  /** Names of the coefficients. */
+  names: string[]
   /** Model whose error is to be quoted. */
   quote: NoiseModelName
   /** Which error to quote and why, in a sentence. */
@@ -34,6 +39,8 @@ export interface TrendNoiseReport {
 
 /** Series that are shorter tell no noise model from another. */
 const LEAST_EPOCHS = 36
+/** Series that are longer take too long: the power law goes with the square of their length. */
+const MOST_EPOCHS = 2000
 /** Epochs missing on the grid that are still carried as unknowns. */
 const MOST_MISSING = 60
 /** Difference in AIC that counts. */
@@ -48,12 +55,13 @@ const CLEAR = 2
 export function trendNoise(series: TimeSeriesInput, options: TrendOptions = {}): TrendNoiseReport {
   const plain = fitTrend(series, options)
   const simple = { value: plain.value, sigmaWhite: plain.sigmaWhite, sigma: plain.sigma, r1: plain.r1 }
-  const problem = series.mjd.length >= LEAST_EPOCHS ? gridProblem(series, { ...options, seasonal: plain.seasonal }) : null
+  const problem = series.mjd.length >= LEAST_EPOCHS && series.mjd.length <= MOST_EPOCHS ? gridProblem(series, { ...options, seasonal: plain.seasonal }) : null
   if (!problem) {
-    const why = series.mjd.length < LEAST_EPOCHS ? `fewer than ${LEAST_EPOCHS} epochs` : 'epochs too irregular'
+    const why = series.mjd.length < LEAST_EPOCHS ? `fewer than ${LEAST_EPOCHS} epochs` : series.mjd.length > MOST_EPOCHS ? `more than ${MOST_EPOCHS} epochs` : 'epochs too irregular'
     return {
       simple,
-      models: [{ model: 'white', value: plain.value, sigma: plain.sigmaWhite, parameter: null, aic: 0 }],
+      models: [{ model: 'white', value: plain.value, sigma: plain.sigmaWhite, parameter: null, aic: 0, coefficients: [...plain.coefficients], sigmas: [...plain.sigmaWhiteCoefficients] }],
+      names: plain.names,
       quote: 'ar1',
       sentence: `With ${why} the noise cannot be told from the residuals: quote the error inflated for lag-one correlation, and take it as a lower bound.`
     }
@@ -66,9 +74,11 @@ export function trendNoise(series: TimeSeriesInput, options: TrendOptions = {}):
     value: coefficients[1]!,
     sigma: sigma[1]!,
     parameter: model === 'white' ? null : model === 'ar1' ? parameter : -2 * parameter,
-    aic: aics[i]! - least
+    aic: aics[i]! - least,
+    coefficients: [...coefficients],
+    sigmas: [...sigma]
   }))
-  return { simple, models, ...advice(models) }
+  return { simple, models, names: plain.names, ...advice(models) }
 }
 
 /**
@@ -93,7 +103,7 @@ export function fitAr1ByCorrelation(series: TimeSeriesInput, options: TrendOptio
 }
 
 /** Usual step, days; a twelfth of a year for calendar months, whose median of 30 to 31 days would run away from them over decades. */
-function gridStep(mjd: ArrayLike<number>): number {
+export function gridStep(mjd: ArrayLike<number>): number {
   const step = medianStep(mjd)
   return step >= 28 && step <= 31.5 ? JULIAN_YEAR_DAYS / 12 : step
 }

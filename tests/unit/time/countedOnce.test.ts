@@ -55,7 +55,7 @@ describe('common ground that is counted once', () => {
     expect(pair!.onGroundGtPerYear!.a!.value).toBeCloseTo(-20, 8)
     expect(pair!.onGroundGtPerYear!.b!.value).toBeCloseTo(4, 8)
     expect(sharedGround(pair!)).toMatch(/20\s% of the first and 50\s% of the second/)
-    expect(massOnGround(pair!)).toMatch(/Region a −20\.0.*Region b \+4\.0/)
+    expect(massOnGround(pair!)).toMatch(/the series of Region a holds −20\.0.*that of Region b \+4\.0/)
     expect(settledSentence(pair!)).toBe('Counted once: what the series of Region b holds on the common ground is taken off Region a. A reason.')
   })
 
