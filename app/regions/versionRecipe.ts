@@ -1,3 +1,4 @@
+import { factRows } from '#shared/text/seriesFacts'
 import type { Mark } from '#shared/series/checks'
 import type { VersionToCompare } from '#shared/series/versions'
 import type { AnswerOf } from '#shared/api/contract'
@@ -27,8 +28,8 @@ export function shownRecipe(recipe: Readonly<Record<string, unknown>>): ShownRec
 
 /** A stored version as versions are compared. */
 export function toCompare(version: VersionData): VersionToCompare {
-  const { mjd, massGt, sigmaGt, sharedRates, source, licence, independence } = version
-  return { mjd, massGt, sigmaGt, sharedRates, steps: shownRecipe(version.recipe).steps, facts: { Source: source, Licence: licence, Independence: independence } }
+  const { mjd, massGt, sigmaGt, sharedRates, source, licence, independence, facts } = version
+  return { mjd, massGt, sigmaGt, sharedRates, steps: shownRecipe(version.recipe).steps, facts: { Source: source, Licence: licence, Independence: independence, ...Object.fromEntries(factRows(facts).map(({ name, text }) => [name[0]!.toUpperCase() + name.slice(1), text])) } }
 }
 
 /** The changed epochs, the largest changes first; all epochs that a shift moves count as one. */

@@ -1,5 +1,6 @@
 import { choiceOf } from '#shared/earth/time/countedOnce'
 import type { ScenarioDraft } from '#shared/api/schemas'
+import type { SeriesFacts } from '#shared/series/facts'
 import type { NamedPair } from '#shared/text/overlaps'
 
 export type OverlapChoice = NonNullable<ScenarioDraft['overlaps']>[number]
@@ -11,7 +12,9 @@ interface Trended { id: string, series: { latest: { id: string } } | null, trend
 /** Pairs that share ground among the regions that count in a draft, with what each series holds there and what was decided. */
 export function pairsOfDraft(
   draft: ScenarioDraft, overlaps: readonly Pick<NamedPair, 'a' | 'b' | 'aName' | 'bName' | 'areaKm2' | 'shareOfA' | 'shareOfB'>[], regions: readonly Trended[],
+  versions: readonly { id: string, facts: SeriesFacts | null }[] = [],
 ): NamedPair[] {
+  const held = (id: string) => versions.find(version => version.id === counting.get(id)!.versionId)?.facts?.contains ?? []
   const counting = new Map(draft.regions.filter(region => region.scale !== 0).map(region => [region.regionId, region]))
   const onGround = (id: string, share: number) => {
     const choice = counting.get(id)!
@@ -23,7 +26,7 @@ export function pairsOfDraft(
   }
   return overlaps.filter(({ a, b }) => counting.has(a) && counting.has(b)).map((pair) => {
     const settled = choiceOf(draft.overlaps ?? [], pair)
-    return { ...pair, onGroundGtPerYear: { a: onGround(pair.a, pair.shareOfA), b: onGround(pair.b, pair.shareOfB) }, settled: settled && { choice: settled.choice, from: settled.from, reason: settled.reason } }
+    return { ...pair, contains: { a: held(pair.a), b: held(pair.b) }, onGroundGtPerYear: { a: onGround(pair.a, pair.shareOfA), b: onGround(pair.b, pair.shareOfB) }, settled: settled && { choice: settled.choice, from: settled.from, reason: settled.reason } }
   })
 }
 

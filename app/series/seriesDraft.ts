@@ -1,3 +1,4 @@
+import { answers, waterKinds, type SeriesFacts as OriginFacts } from '#shared/series/facts'
 import type { MarkDecision } from '#shared/series/checks'
 import { decisionsOfDraft } from './marks'
 import { fieldsOfDraft, type ConversionFields } from './conversionFields'
@@ -11,6 +12,28 @@ export interface SeriesFacts {
   licence: string
   independence: string
   sharedRates: SharedRateField[]
+  origin: OriginFacts
+}
+
+/** Nothing said yet. */
+export const noOrigin = (): OriginFacts => ({ citation: '', method: '', instrument: '', contains: [], gravimetry: 'unknown', pole: 'unknown', lengthOfDay: 'unknown' })
+
+/** The fields as they are sent; null where none says anything. */
+export function originToSend(origin: OriginFacts): OriginFacts | null {
+  const sent = { ...origin, citation: origin.citation.trim(), method: origin.method.trim(), instrument: origin.instrument.trim() }
+  return JSON.stringify(sent) === JSON.stringify(noOrigin()) ? null : sent
+}
+
+/** Fields of a kept draft; a draft from before they were asked for has none. */
+function originOfDraft(value: unknown): OriginFacts {
+  const kept = typeof value === 'object' && value !== null ? value as Partial<Record<keyof OriginFacts, unknown>> : {}
+  const word = (key: 'citation' | 'method' | 'instrument') => typeof kept[key] === 'string' ? kept[key] : ''
+  const answer = (key: 'gravimetry' | 'pole' | 'lengthOfDay') => answers.find(each => each === kept[key]) ?? 'unknown'
+  return {
+    citation: word('citation'), method: word('method'), instrument: word('instrument'),
+    contains: waterKinds.filter(kind => Array.isArray(kept.contains) && kept.contains.includes(kind)),
+    gravimetry: answer('gravimetry'), pole: answer('pole'), lengthOfDay: answer('lengthOfDay'),
+  }
 }
 /** What somebody has entered so far. */
 export interface SeriesDraft { text: string, fileName: string | null, choices: ColumnChoices, conversion: ConversionFields | null, decisions: MarkDecision[], facts: SeriesFacts }
@@ -39,7 +62,7 @@ export function readDraft(kept: string | null): SeriesDraft | null {
   if (![facts.name, facts.reason, facts.source, facts.licence, facts.independence].every(isText) || !Array.isArray(facts.sharedRates)) return null
   return {
     text: value.text, fileName: isText(value.fileName) ? value.fileName : null, choices: value.choices, conversion: fieldsOfDraft(value.conversion), decisions: decisionsOfDraft(value.decisions),
-    facts: { ...facts, sharedRates: facts.sharedRates.filter(rate => isText(rate?.source) && isText(rate?.sigma)) },
+    facts: { ...facts, origin: originOfDraft(facts.origin), sharedRates: facts.sharedRates.filter(rate => isText(rate?.source) && isText(rate?.sigma)) },
   }
 }
 

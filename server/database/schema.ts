@@ -120,6 +120,8 @@ export const seriesVersion = sqliteTable('series_version', {
   source: text().notNull(),
   licence: text().notNull(),
   independence: text().notNull(),
+  /** Fields of a mass series, as JSON; null for versions from before they were asked for, and for observed series. */
+  facts: text(),
   firstMjd: real().notNull(),
   lastMjd: real().notNull(),
   count: integer().notNull(),

@@ -1,10 +1,6 @@
-import { and, eq, inArray } from 'drizzle-orm'
 import type { AttributionReport, AttributionTask } from '#shared/attribution/report'
-import { basesOf } from '#shared/observed/circularity'
 import type { Principal } from '#shared/permissions'
 import { InputError } from '#shared/types/issue'
-import type { RunInput } from '#shared/types/run'
-import { schema } from '../database/client'
 import { Problem } from '../utils/problem'
 import type { AttributionAnswer } from '../workers/attribution'
 import { correctionsOf } from './angularMomentum'
@@ -14,6 +10,7 @@ import { canonicalJson } from './hash'
 import { loadObserved, observedRow } from './observed'
 import { chainOfText } from './observedChain'
 import { runInputOf, runResultOf, runRow } from './runs'
+import { basesOfRegions } from './seriesBases'
 import { versionsOf } from './seriesStore'
 
 interface Question { observed: string, chain?: string, prior: number }
@@ -49,14 +46,4 @@ async function attributed(context: Context, task: AttributionTask): Promise<Attr
   const answer = await context.jobs.compute<AttributionAnswer>('attribution', task)
   if ('fault' in answer) throw new InputError(answer.fault.message, answer.fault.issues)
   return answer.report
-}
-
-/** What the masses were made from, as the notes on the very series versions say that the run froze. */
-function basesOfRegions(context: Context, workspaceId: string, { regions }: RunInput): AttributionTask['bases'] {
-  const versions = context.db.select({ sha256: schema.seriesVersion.dataSha256, independence: schema.seriesVersion.independence, source: schema.seriesVersion.source })
-    .from(schema.seriesVersion).innerJoin(schema.series, eq(schema.series.id, schema.seriesVersion.seriesId))
-    .where(and(eq(schema.series.workspaceId, workspaceId), inArray(schema.seriesVersion.dataSha256, regions.map(region => region.seriesSha256)))).all()
-  return regions.filter(region => region.scale !== 0).map(({ key, name, seriesSha256 }) => ({
-    key, name, bases: [...new Set(versions.filter(version => version.sha256 === seriesSha256).flatMap(({ independence, source }) => basesOf(`${independence}. ${source}`)))],
-  }))
 }

@@ -2,7 +2,8 @@ import { writeFile, mkdir } from 'node:fs/promises'
 import { join } from 'node:path'
 import type { ScenarioDraft } from '#shared/api/schemas'
 import type { Principal } from '#shared/permissions'
-import type { Role } from '#shared/types/domain'
+import type { SeriesFacts } from '#shared/series/facts'
+import type { RegionKind, Role } from '#shared/types/domain'
 import { publishedBackground } from '#shared/text/background'
 import { schema } from '../database/client'
 import type { Upload } from '../utils/body'
@@ -76,7 +77,7 @@ async function seedAccount(context: Context, workspaceId: string, agencies: read
     const region = createRegion(context, who, workspaceId, { name: demo.name, kind: demo.kind, agencyId: agencies[ice ? 1 : 0], note: noteOfInvention, geometry: { type: 'Polygon', coordinates: [demo.ring] } })
     const csv = demoSeriesCsv(demo, 1000 + i)
     await createSeriesVersion(context, who, region.id, await asUpload(context, csv, `${demo.name.toLowerCase().replaceAll(' ', '-')}.csv`), {
-      name: demo.name, reason: 'First version', source: noteOfInvention, licence: 'CC BY 4.0', independence: 'Invented; independent of gravimetry and of the pole.',
+      name: demo.name, reason: 'First version', source: noteOfInvention, licence: 'CC BY 4.0', independence: 'Invented; independent of gravimetry and of the pole.', facts: factsOfDemo(demo.kind),
       columns: {}, conversion: null, decisions: [], leaveOutBadRows: false, sharedRates: demo.sharedRates,
     })
     choices.push({ regionId: region.id, versionId: versionsOf(context, seriesOfRegion(context, region.id)!.id)[0]!.id, scale: 1 })
@@ -94,6 +95,12 @@ async function seedAccount(context: Context, workspaceId: string, agencies: read
     },
   })
   return scenario.id
+}
+
+/** Fields of an invented series: what a region of its kind holds. */
+function factsOfDemo(kind: RegionKind): SeriesFacts {
+  const contains = ({ 'aquifer': ['groundwater'], 'reservoir': ['surface-water'], 'lake': ['surface-water'], 'basin': ['groundwater', 'soil-water', 'snow'], 'soil-water': ['soil-water'], 'snow-water': ['snow'], 'ice-sector': ['ice'], 'glacier-region': ['ice'] } as const)[kind]
+  return { citation: '', method: 'Seeded generator: trend, season and noise', instrument: 'none', contains: [...contains], gravimetry: 'no', pole: 'no', lengthOfDay: 'no' }
 }
 
 async function asUpload(context: Context, text: string, name: string): Promise<Upload> {

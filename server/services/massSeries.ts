@@ -57,7 +57,7 @@ export async function createSeriesVersion(context: Context, principal: Principal
     const n = nextVersion(tx, seriesId)
     tx.insert(schema.seriesVersion).values({
       id: versionId, seriesId, n, originalSha256: upload.sha256, originalName: upload.name, dataSha256, recipe: canonicalJson(recipe),
-      reason: body.reason, source: body.source, licence: body.licence, independence: body.independence,
+      reason: body.reason, source: body.source, licence: body.licence, independence: body.independence, facts: body.facts && canonicalJson(body.facts),
       firstMjd: read.mjd[0]!, lastMjd: read.mjd.at(-1)!, count: read.mjd.length, createdAt: context.now(), createdBy: actor.userId,
     }).run()
     tx.insert(schema.seriesData).values({ versionId, mjd: floats(read.mjd), value: floats(read.massGt), sigma: read.sigmaGt ? floats(read.sigmaGt) : null }).run()

@@ -1,10 +1,11 @@
 import type { ScenarioDraft } from '#shared/api/schemas'
 import { choiceOf } from '#shared/earth/time/countedOnce'
 import { overlapsOf } from '#shared/geo/overlap'
-import { massOnGround, sharedGround } from '#shared/text/overlaps'
+import { massOnGround, sharedGround, waterOnGround } from '#shared/text/overlaps'
 import { InputError, type Issue } from '#shared/types/issue'
 import type { Context } from './context'
 import { derivedOfRegion, latestOutline, regionNames } from './regions'
+import { factsOf, versionRow } from './seriesStore'
 
 /** Regions of a draft that count and share ground, with the trend that each chosen version holds there. */
 export function overlapsOfDraft(context: Context, draft: Pick<ScenarioDraft, 'regions' | 'overlaps'>) {
@@ -18,9 +19,11 @@ export function overlapsOfDraft(context: Context, draft: Pick<ScenarioDraft, 're
   }
   return overlapsOf(counting.map(({ choice, outline }) => ({ id: choice.regionId, geometry: outline.geometry }))).map((pair) => {
     const settled = choiceOf(draft.overlaps ?? [], pair)
+    const held = (id: string) => factsOf(versionRow(context, counting.find(({ choice }) => choice.regionId === id)!.choice.versionId))?.contains ?? []
     return {
       ...pair, aName: names.get(pair.a) ?? '', bName: names.get(pair.b) ?? '',
       onGroundGtPerYear: { a: onGround(pair.a, pair.shareOfA), b: onGround(pair.b, pair.shareOfB) },
+      contains: { a: held(pair.a), b: held(pair.b) },
       settled: settled ? { choice: settled.choice, from: settled.from, reason: settled.reason } : null,
     }
   })
@@ -52,7 +55,7 @@ export function settledOverlaps(context: Context, draft: ScenarioDraft) {
   if (open.length) {
     throw new InputError(`${open.length === 1 ? 'Two regions share' : `${open.length} pairs of regions share`} ground and it is not said how they are counted: settle that before a run.`, open.map(({ settled: _, ...pair }) => ({
       path: 'draft/overlaps', code: 'overlap-unsettled', value: `${pair.a} ${pair.b}`,
-      message: `${[sharedGround(pair), massOnGround(pair)].filter(Boolean).join(' ')} Take one off the other, or keep both with a reason.`,
+      message: `${[sharedGround(pair), massOnGround(pair), waterOnGround(pair)].filter(Boolean).join(' ')} Take one off the other, or keep both with a reason.`,
     })))
   }
   return pairs.map(pair => choiceOf(draft.overlaps!, pair)!)

@@ -1,5 +1,6 @@
 import { eq } from 'drizzle-orm'
 import type { RegionSource } from '#shared/api/runSchemas'
+import { circularityWarnings } from '#shared/observed/circularity'
 import { compareRun } from '#shared/earth/time/compare'
 import type { Principal } from '#shared/permissions'
 import type { Comparison, RunInput, RunResult } from '#shared/types/run'
@@ -7,6 +8,7 @@ import { schema } from '../database/client'
 import { Problem } from '../utils/problem'
 import { authorise } from './change'
 import type { Context } from './context'
+import { basesOfRegions } from './seriesBases'
 import { freezeInput, scenarioRow } from './scenarios'
 import { loadObserved, observedRow } from './observed'
 import { versionsOf } from './seriesStore'
@@ -25,7 +27,7 @@ export const runInputOf = (row: RunRow) => (JSON.parse(row.input) as { input: Ru
 export function sourcesOf(input: RunInput): RegionSource[] {
   return input.regions.map(r => ({
     key: r.key, name: r.name, kind: r.kind, agency: r.agency, outlineSha256: r.outlineSha256, seriesVersion: r.seriesVersion,
-    seriesSha256: r.seriesSha256, source: r.source, geometry: r.geometry,
+    seriesSha256: r.seriesSha256, source: r.source, geometry: r.geometry, ...(r.facts ? { facts: r.facts } : {}),
     ...(r.fractionToOcean === undefined ? {} : { fractionToOcean: r.fractionToOcean, restTo: r.restTo ?? null }),
     ...(r.groundedFraction === undefined ? {} : { groundedFraction: r.groundedFraction }),
   }))
@@ -46,10 +48,13 @@ export function compareWith(context: Context, row: RunRow, observedId: string, z
   if (observed.workspaceId !== row.workspaceId) throw new Problem(404, 'not-found', 'There is no such observed series.')
   const kept = comparisons.get(context) ?? new Map<string, Comparison>()
   comparisons.set(context, kept)
-  const key = `${row.resultSha256} ${versionsOf(context, observedId)[0]!.dataSha256} ${zonalTides}`
+  const key = `${row.inputSha256} ${row.resultSha256} ${versionsOf(context, observedId)[0]!.dataSha256} ${zonalTides}`
   let comparison = kept.get(key)
   if (!comparison) {
-    comparison = compareRun(runResultOf(row), loadObserved(context, observedId), { zonalTides })
+    const series = loadObserved(context, observedId)
+    comparison = compareRun(runResultOf(row), series, { zonalTides })
+    // Agreement with what a mass was made from confirms nothing.
+    comparison.warnings.push(...circularityWarnings(series.from === 'gravity' ? 'gravity' : 'rotation', basesOfRegions(context, row.workspaceId, runInputOf(row))))
     if (kept.size > 50) kept.clear()
     kept.set(key, comparison)
   }

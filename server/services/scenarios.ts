@@ -12,7 +12,7 @@ import type { Context } from './context'
 import { faultsOfChoices, overlapsOfDraft, settledOverlaps } from './overlaps'
 import { pageOf } from './paging'
 import { latestOutline, seriesOfRegion } from './regions'
-import { massSeries } from './seriesStore'
+import { factsOf, massSeries } from './seriesStore'
 
 export type ScenarioRow = typeof schema.scenario.$inferSelect
 
@@ -151,7 +151,7 @@ export function freezeInput(context: Context, row: ScenarioRow): RunInput {
       return {
         key: `r${i + 1}`, name: region.name, kind: region.kind, agency: agency.name,
         geometry: outline.geometry, outlineSha256: outline.sha256,
-        seriesVersion: version.n, seriesSha256: version.dataSha256, source: version.source,
+        seriesVersion: version.n, seriesSha256: version.dataSha256, source: version.source, ...(version.facts ? { facts: factsOf(version)! } : {}),
         series: massSeries(context, version.id), scale: choice.scale,
         ...(choice.fractionToOcean !== undefined && choice.fractionToOcean < 1
           ? { fractionToOcean: choice.fractionToOcean, restTo: choice.restTo ? keyOf(draft, choice.restTo) : null }

@@ -1,4 +1,5 @@
 import { and, desc, eq, isNull } from 'drizzle-orm'
+import type { SeriesFacts } from '#shared/series/facts'
 import type { MassSeries } from '#shared/types/run'
 import { schema, type Reader } from '../database/client'
 import { Problem } from '../utils/problem'
@@ -28,9 +29,13 @@ export function versionsOf(context: Context, seriesId: string): VersionRow[] {
   return context.db.select().from(schema.seriesVersion).where(eq(schema.seriesVersion.seriesId, seriesId)).orderBy(desc(schema.seriesVersion.n)).all()
 }
 
+export function factsOf({ facts }: Pick<VersionRow, 'facts'>): SeriesFacts | null {
+  return facts ? JSON.parse(facts) as SeriesFacts : null
+}
+
 export function versionView(context: Context, row: VersionRow) {
   return {
-    id: row.id, n: row.n, reason: row.reason, source: row.source, licence: row.licence, independence: row.independence,
+    id: row.id, n: row.n, reason: row.reason, source: row.source, licence: row.licence, independence: row.independence, facts: factsOf(row),
     originalName: row.originalName, originalSha256: row.originalSha256, dataSha256: row.dataSha256,
     firstMjd: row.firstMjd, lastMjd: row.lastMjd, count: row.count, createdAt: row.createdAt, createdBy: nameOfUser(context, row.createdBy),
   }

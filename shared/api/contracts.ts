@@ -11,7 +11,7 @@ import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
   agency, draftOverlap, edition, geometry, jobView, limits, listOf, markDecisions, massColumns, massConversion, me, name, observedData, observedSummary, page, perGt, prose,
-  region, regionKind, regionTotal, revision, role, runSummary, scenario, scenarioDraft, sha256, trendSummary, ulid, versionSummary,
+  region, regionKind, regionTotal, revision, role, runSummary, scenario, scenarioDraft, seriesFacts, sha256, trendSummary, ulid, versionSummary,
 } from './schemas.ts'
 
 const inWorkspace = z.object({ workspace: ulid })
@@ -170,6 +170,7 @@ export const contracts = {
   seriesCreate: contract({
     id: 'seriesCreate', method: 'POST', path: '/api/v1/regions/{id}/series', action: 'region.write', summary: 'Store a new version of a region’s mass series', params: byId, bodyType: 'multipart',
     body: versionFacts.extend({
+      facts: seriesFacts.nullable().default(null),
       columns: massColumns, conversion: massConversion.nullable().default(null), decisions: markDecisions.default([]), leaveOutBadRows: z.boolean().default(false),
       sharedRates: z.array(z.object({ source: name, sigmaGtPerYear: z.number().min(0) })).max(20).default([]),
     }),

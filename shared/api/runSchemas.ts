@@ -1,6 +1,6 @@
 import { z, type ZodType } from 'zod'
 import type { Comparison, RunResult } from '../types/run.ts'
-import { edition, measured, runSummary, sha256, ulid, warning } from './schemas.ts'
+import { edition, measured, runSummary, seriesFacts, sha256, ulid, warning } from './schemas.ts'
 
 const nullableMeasured = measured.nullable()
 const column = z.array(z.number().nullable())
@@ -37,6 +37,7 @@ export const comparison = z.looseObject({
 const regionSource = z.object({
   key: z.string(), name: z.string(), kind: z.string(), agency: z.string(), outlineSha256: sha256, seriesVersion: z.int(),
   seriesSha256: sha256, source: z.string(), geometry: z.object({ type: z.enum(['Polygon', 'MultiPolygon']), coordinates: z.array(z.unknown()) }),
+  facts: seriesFacts.optional(),
   /** Where its water goes, where not all of it counts and reaches the sea; restTo is the key of another source. */
   fractionToOcean: z.number().optional(), restTo: z.string().nullable().optional(), groundedFraction: z.number().optional(),
 })

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { epochFormats } from '../series/epochColumn.ts'
+import { answers, waterKinds } from '../series/facts.ts'
 import { quantities } from '../series/quantityKinds.ts'
 import { correctionKinds, materials } from '../series/recipe.ts'
 import { coefficientSetIds, coreChoices, oceanModes, regionKinds, roles } from '../types/domain.ts'
@@ -72,8 +73,14 @@ export const trendSummary = z.object({
   massGtPerYear: measured, lodMicrosecondsPerYear: measured, driftCmPerYear: measured,
   directionDegEast: z.number().nullable(), fromMjd: finite, toMjd: finite,
 })
+/** What is known of a mass series besides its values, in fields that report, comparison and overlaps read. */
+export const seriesFacts = z.object({
+  citation: prose.default(''), method: prose.default(''), instrument: prose.default(''),
+  contains: z.array(z.enum(waterKinds)).max(waterKinds.length).default([]),
+  gravimetry: z.enum(answers).default('unknown'), pole: z.enum(answers).default('unknown'), lengthOfDay: z.enum(answers).default('unknown'),
+})
 export const versionSummary = z.object({
-  id: ulid, n: z.int(), reason: z.string(), source: z.string(), licence: z.string(), independence: z.string(),
+  id: ulid, n: z.int(), reason: z.string(), source: z.string(), licence: z.string(), independence: z.string(), facts: seriesFacts.nullable(),
   originalName: z.string(), originalSha256: sha256, dataSha256: sha256,
   firstMjd: finite, lastMjd: finite, count: z.int(), createdAt: z.string(), createdBy: z.string().nullable(),
 })
@@ -163,7 +170,10 @@ export const namedOverlap = overlap.extend({
   aName: z.string(), bName: z.string(),
   onGroundGtPerYear: z.object({ a: measuredPlain.nullable(), b: measuredPlain.nullable() }),
 })
-export const draftOverlap = namedOverlap.extend({ settled: overlapChoice.pick({ choice: true, from: true, reason: true }).nullable() })
+export const draftOverlap = namedOverlap.extend({
+  /** What each series holds; empty where its version does not say. */
+  contains: z.object({ a: seriesFacts.shape.contains, b: seriesFacts.shape.contains }),
+  settled: overlapChoice.pick({ choice: true, from: true, reason: true }).nullable() })
 /** Latest trends of all regions, summed; each trend is over its own span. Nothing is settled here: overlaps count twice. */
 export const regionTotal = z.object({
   regions: z.int(), withTrend: z.int(), withoutSeries: z.int(),

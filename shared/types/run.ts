@@ -1,3 +1,4 @@
+import type { SeriesFacts } from '../series/facts.ts'
 import type { CoreChoice, Measured, Outline, PhysicsSettings, RegionKind } from './domain.ts'
 
 /** A mass change series in canonical units: gigatonnes relative to an arbitrary zero, epochs in MJD (UTC). */
@@ -50,6 +51,8 @@ export interface RunRegionInput {
   seriesVersion: number
   seriesSha256: string
   source: string
+  /** Fields of the version; absent where none were given. */
+  facts?: SeriesFacts
   series: MassSeries
   /** Factor on the mass; 0 switches the region off and keeps its row. */
   scale: number

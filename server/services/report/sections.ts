@@ -4,6 +4,7 @@ import { cautions, cautionsFor } from '#shared/text/cautions'
 import { constantRows } from '#shared/text/constants'
 import { methodSections, settingsLine } from '#shared/text/method'
 import { massOnGround, namedPairs, settledSentence, sharedGround, unsettledNote } from '#shared/text/overlaps'
+import { factRows } from '#shared/text/seriesFacts'
 import { waterWaySentences } from '#shared/text/waterWay'
 import { listed } from '#shared/text/words'
 import { caution, page, paragraph, sectionHead, size, textTable, together } from './style'
@@ -81,7 +82,7 @@ export function sourceBlocks({ result, sources, observed }: ReportData): Block[]
   const nameOf = (key: string) => sources.find(source => source.key === key)?.name ?? key
   const rows = sources.map((source) => {
     const region = byKey.get(source.key)
-    const way = waterWaySentences(source, nameOf).join(' ')
+    const way = [...factRows(source.facts).map(({ name, text }) => `${name}: ${text}`), ...waterWaySentences(source, nameOf)].join('\n')
     return [
       { text: [source.name, { text: `\n${kinds[source.kind]}, ${source.agency}${region ? `\n${formatArea(region.areaKm2)}` : ''}`, color: print.soft }] },
       { text: [source.source || 'not stated', { text: `\nversion ${source.seriesVersion}${region ? `, ${region.epochsUsed} epochs, ${formatShare(region.coverage).replace('+', '')} of the span` : ''}${way ? `\n${way}` : ''}`, color: print.soft }] },

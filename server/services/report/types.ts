@@ -1,3 +1,4 @@
+import type { SeriesFacts } from '#shared/series/facts'
 import type { Outline, RegionKind } from '#shared/types/domain'
 import type { Comparison, RunResult } from '#shared/types/run'
 
@@ -11,6 +12,8 @@ export interface ReportSource {
   seriesVersion: number
   seriesSha256: string
   source: string
+  /** Fields of the series version, where some were given. */
+  facts?: SeriesFacts
   geometry: Outline
   /** Where its water goes, where not all of it counts and reaches the sea; `restTo` is the key of another source. */
   fractionToOcean?: number

@@ -3,7 +3,7 @@ import { readMassSeries } from '#shared/series/readMassSeries'
 import { decodeText } from '#shared/series/decodeText'
 import { columnsToSend, previewOf, type Preview } from '~/series/preview'
 import { issueGroups, lineRange } from '~/series/issueGroups'
-import { longestDraftText, mendedName, readDraft, readSharedRates, writeDraft, type SeriesDraft } from '~/series/seriesDraft'
+import { longestDraftText, mendedName, noOrigin, originToSend, readDraft, readSharedRates, writeDraft, type SeriesDraft } from '~/series/seriesDraft'
 import { readFigure } from '~/utils/figureInput'
 
 const areaM2 = 1e9
@@ -70,11 +70,18 @@ describe('bad rows', () => {
 describe('draft', () => {
   const draft: SeriesDraft = {
     text, fileName: 'wells.csv', choices: { unit: 'mm-we', sigmaColumn: null }, conversion: null, decisions: [],
-    facts: { name: 'Plain', reason: 'Recalibrated', source: 'Wells', licence: '', independence: '', sharedRates: [{ source: 'tilt', sigma: '0,5' }] },
+    facts: { name: 'Plain', reason: 'Recalibrated', source: 'Wells', licence: '', independence: '', sharedRates: [{ source: 'tilt', sigma: '0,5' }], origin: { ...noOrigin(), method: 'Well heads', contains: ['groundwater'], gravimetry: 'no' } },
   }
 
   it('comes back as it was', () => {
     expect(readDraft(writeDraft(draft))).toEqual(draft)
+  })
+
+  it('from before its fields were asked for has none, and fields that say nothing are not sent', () => {
+    const { origin: _, ...old } = draft.facts
+    expect(readDraft(JSON.stringify({ ...draft, facts: old }))!.facts.origin).toEqual(noOrigin())
+    expect(originToSend(noOrigin())).toBeNull()
+    expect(originToSend({ ...draft.facts.origin, citation: ' A (2020) ' })).toMatchObject({ citation: 'A (2020)', contains: ['groundwater'] })
   })
 
   it('leaves out a text that a browser would not hold, and keeps the rest', () => {

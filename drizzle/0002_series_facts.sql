@@ -1,0 +1,1 @@
+ALTER TABLE `series_version` ADD `facts` text;
