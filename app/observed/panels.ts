@@ -1,10 +1,11 @@
 import type { AnswerOf } from '#shared/api/contract'
 import type { contracts } from '#shared/api/contracts'
 import type { FigureSeries, SeriesData } from '#shared/figures/series/data'
+import { coveredSpans } from './coverage'
 
 /** Columns of an observed series as a page gets them, or as a reader of files gives them. */
 export type ObservedColumns = Pick<AnswerOf<typeof contracts.observedRead>, 'mjd' | 'lodMs' | 'xMas' | 'yMas' | 'sigmaLodMs' | 'sigmaXMas' | 'sigmaYMas' | 'predicted'>
-  & { chi1Mas?: (number | null)[] | null, chi2Mas?: (number | null)[] | null }
+  & { chi1Mas?: (number | null)[] | null, chi2Mas?: (number | null)[] | null, coefficients?: AnswerOf<typeof contracts.observedRead>['coefficients'] }
 
 const kinds = [
   { value: 'lodMs', title: 'Excess length of day', unit: 'ΔLOD, ms' },
@@ -27,7 +28,7 @@ function usualStep(mjd: ArrayLike<number>): number {
 export function observedPanels(data: ObservedColumns): SeriesData[] {
   const maxGapDays = 2.5 * usualStep(data.mjd)
   const predicting = data.predicted.some(flag => flag === 1)
-  return kinds.flatMap(({ value, title, unit }): SeriesData[] => {
+  const found = kinds.flatMap(({ value, title, unit }): SeriesData[] => {
     const column = data[value]
     if (!column || !column.some(v => v !== null && Number.isFinite(v))) return []
     const part = (flag: 0 | 1): (number | null)[] => column.map((v, i) => data.predicted[i] === flag ? v : null)
@@ -35,8 +36,26 @@ export function observedPanels(data: ObservedColumns): SeriesData[] {
     const seen = predicting ? part(0) : column
     const series = [line('observed', 'observed', seen)]
     if (predicting && column.some((v, i) => v !== null && data.predicted[i] === 1)) series.push(line('predicted, not used', 'residual', part(1)))
-    return [{ title, unit, series }]
+    return [{ title, unit, series, coverage: [{ label: 'values', spans: coveredSpans({ mjd: data.mjd, value: seen }) }] }]
   })
+  return [...coefficientPanels(data), ...found]
+}
+
+const coefficientKinds = [
+  { value: 'c20', sigma: 'sigmaC20', symbol: 'ΔC₂₀' }, { value: 'c21', sigma: 'sigmaC21', symbol: 'ΔC₂₁' }, { value: 's21', sigma: 'sigmaS21', symbol: 'ΔS₂₁' },
+] as const
+
+/** Changes of the gravity coefficients as they were sent, in units of 10⁻¹¹, with their one-sigma. */
+function coefficientPanels({ mjd, coefficients }: ObservedColumns): SeriesData[] {
+  if (!coefficients) return []
+  const inUnits = (values: (number | null)[]) => values.map(v => v === null ? null : v * 1e11)
+  return coefficientKinds.flatMap(({ value, sigma, symbol }): SeriesData[] => coefficients[value].some(v => v !== null)
+    ? [{
+        title: `Gravity coefficient ${symbol}, as sent`, unit: `${symbol}, 10⁻¹¹`,
+        series: [{ label: 'observed ± 1σ', role: 'observed', mjd, value: inUnits(coefficients[value]), sigma: inUnits(coefficients[sigma]), maxGapDays: 2.5 * usualStep(mjd) }],
+        coverage: [{ label: 'values', spans: coveredSpans({ mjd, value: coefficients[value] }) }],
+      }]
+    : [])
 }
 
 export interface ObservedRange { low: number, high: number, fromMjd: number, toMjd: number }

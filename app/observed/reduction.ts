@@ -1,8 +1,9 @@
 import { formatMeasured } from '#shared/format/numbers'
-import { quantityTexts } from '#shared/observed/chainTexts'
+import { quantityTexts, stepTitles } from '#shared/observed/chainTexts'
 import { defaultChain, readChain } from '#shared/observed/readChain'
 import { counted, listed } from '#shared/text/words'
 import { InputError, type Issue } from '#shared/types/issue'
+import { coveredSpans, longestStep } from './coverage'
 import type { FigureSeries, SeriesData } from '#shared/figures/series/data'
 import type { PlainChainResult, PlainPanel, PlainTrack } from '#shared/observed/chainPlain'
 import type { Chain, ChainQuantity, ChainStep } from '#shared/observed/chainTypes'
@@ -36,6 +37,21 @@ export function chainOfText(text: unknown): ChainReading {
 export function textOfChain(chain: Chain): string | undefined {
   const text = JSON.stringify(chain)
   return text === JSON.stringify(pageChain()) ? undefined : text
+}
+
+/** Whether two chains say the same, in whatever order their settings stand. */
+export function sameChain(a: Chain, b: Chain): boolean {
+  return ordered(a) === ordered(b)
+}
+function ordered(value: unknown): string {
+  return JSON.stringify(value, (_, v: unknown) => v && typeof v === 'object' && !Array.isArray(v) ? Object.fromEntries(Object.entries(v).sort(([x], [y]) => x < y ? -1 : 1)) : v)
+}
+
+/** The steps of a chain that are on, in a few words. */
+export function stepsInWords({ steps, from, to }: Chain): string {
+  const names = steps.filter(step => step.on && !(step.kind === 'background' && step.rows.length === 0)).map(step => stepTitles[step.kind].toLowerCase())
+  const span = from || to ? `, ${from ?? 'the beginning'} to ${to ?? 'the end'}` : ''
+  return `${listed([...new Set(names)]) || 'none'}${span}`
 }
 
 /** The chain with some settings of one step changed. */
@@ -89,23 +105,4 @@ export function afterChart(quantity: ChainQuantity, track: PlainTrack): SeriesDa
 function trackChart(track: PlainTrack, quantity: ChainQuantity, unit: string, title: string, role: FigureSeries['role'], label: string): SeriesData {
   const { symbol } = quantityTexts[quantity]
   return { title, unit: `${symbol}, ${unit}`, series: [{ label, role, mjd: track.mjd, value: track.value, maxGapDays: longestStep(track.mjd) }] }
-}
-
-/** Distance between epochs beyond which a line is broken. Missing values break it too; points of a thinned series are unevenly apart. */
-function longestStep(mjd: readonly number[]): number {
-  const steps = mjd.slice(1).map((t, i) => t - mjd[i]!).sort((a, b) => a - b)
-  return Math.max(3, 3.5 * (steps[Math.floor(0.75 * steps.length)] ?? 1))
-}
-
-/** Stretches of time that hold values, MJD. */
-export function coveredSpans({ mjd, value }: PlainTrack): [number, number][] {
-  const limit = longestStep(mjd)
-  const spans: [number, number][] = []
-  mjd.forEach((t, i) => {
-    if (value[i] === null || value[i] === undefined) return
-    const last = spans.at(-1)
-    if (last && t - last[1] <= limit) last[1] = t
-    else spans.push([t, t])
-  })
-  return spans
 }

@@ -9,14 +9,16 @@ export const formatTexts: Readonly<Record<ObservedSeries['format'], { name: stri
   csv: { name: 'Table (CSV)', source: '' },
 }
 
-export const formatName = (format: string): string => formatTexts[format as ObservedSeries['format']]?.name ?? format
+export const formatName = (format: string): string => format === 'gravity' ? 'Gravity coefficients of degree two' : formatTexts[format as ObservedSeries['format']]?.name ?? format
 
-interface Held { name: string, has: { lod: boolean, pole: boolean, excitation?: boolean }, latest: { count: number, firstMjd: number, lastMjd: number } }
+interface Held { name: string, format?: string, has: { lod: boolean, pole: boolean, excitation?: boolean }, latest: { count: number, firstMjd: number, lastMjd: number } }
 
 /** What a series holds, in one sentence. */
-export function observedSentence({ name, has, latest }: Held): string {
+export function observedSentence({ name, format, has, latest }: Held): string {
+  const span = `at ${formatNumber(latest.count)} epochs, ${formatLongDate(latest.firstMjd)} to ${formatLongDate(latest.lastMjd)}`
+  if (format === 'gravity') return `${name} holds gravity coefficients of degree two ${span}; they stand for ${listed([has.lod ? 'the length of day' : '', has.excitation ? 'the excitation of the pole' : ''].filter(Boolean)) || 'nothing that is used'}.`
   const parts = [has.lod ? 'the excess length of day' : '', has.pole ? 'the pole' : '', has.excitation ? 'the excitation of the pole' : ''].filter(Boolean)
-  return `${name} holds ${listed(parts) || 'no quantity that is used'} at ${formatNumber(latest.count)} epochs, ${formatLongDate(latest.firstMjd)} to ${formatLongDate(latest.lastMjd)}.`
+  return `${name} holds ${listed(parts) || 'no quantity that is used'} ${span}.`
 }
 
 /** What has not been taken out of a series as it is stored. */

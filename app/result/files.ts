@@ -7,9 +7,9 @@ export const runFiles = [
   { file: 'run.json', name: 'Run', type: 'JSON', text: 'inputs, settings, result and hashes: enough to compute it again' },
 ] as const
 
-/** Address of a file of a run, with the observed series that it is held against. */
-export function runFilePath(runId: string, file: string, observedId: string | null): string {
-  const query = observedId ? `?observed=${encodeURIComponent(observedId)}` : ''
+/** Address of a file of a run, with the observed series that it is held against and the chain that reduces it. */
+export function runFilePath(runId: string, file: string, observedId: string | null, chain: string | null = null): string {
+  const query = observedId ? `?observed=${encodeURIComponent(observedId)}${chain ? `&chain=${encodeURIComponent(chain)}` : ''}` : ''
   return `/api/v1/runs/${encodeURIComponent(runId)}/files/${file}${query}`
 }
 

@@ -98,9 +98,9 @@ export const original = sqliteTable('blob', {
 export const series = sqliteTable('series', {
   id: id(),
   workspaceId: text().notNull().references(() => workspace.id),
-  /** Null: an observed Earth-orientation series. */
+  /** Null: an observed series, of rotation, of gravity, or of the angular momentum of air and sea. */
   regionId: text().references(() => region.id),
-  quantity: text().$type<'mass' | 'earth-orientation' | 'angular-momentum'>().notNull(),
+  quantity: text().$type<'mass' | 'earth-orientation' | 'gravity' | 'angular-momentum'>().notNull(),
   name: text().notNull(),
   ...mutable(),
 }, t => [index('series_region').on(t.regionId), index('series_workspace').on(t.workspaceId)])
@@ -151,6 +151,15 @@ export const seriesError = sqliteTable('series_error', {
   sourceId: text().notNull().references(() => errorSource.id),
   sigmaGtPerYear: real().notNull(),
 }, t => [primaryKey({ columns: [t.versionId, t.sourceId] })])
+
+/** A reduction under a name: the chain as JSON, used on any observed series of the workspace. */
+export const chain = sqliteTable('chain', {
+  id: id(),
+  workspaceId: text().notNull().references(() => workspace.id),
+  name: text().notNull(),
+  chain: text().notNull(),
+  ...mutable(),
+}, t => [index('chain_workspace').on(t.workspaceId)])
 
 export const scenario = sqliteTable('scenario', {
   id: id(),

@@ -4,11 +4,11 @@ import { InputError } from '#shared/types/issue'
 import { Problem } from '../utils/problem'
 import type { AttributionAnswer } from '../workers/attribution'
 import { correctionsOf } from './angularMomentum'
+import { namedChain } from './chains'
 import { authorise } from './change'
 import type { Context } from './context'
 import { canonicalJson } from './hash'
-import { loadObserved, observedRow } from './observed'
-import { chainOfText } from './observedChain'
+import { gravityFieldsOf, loadObserved, observedRow } from './observed'
 import { runInputOf, runResultOf, runRow } from './runs'
 import { basesOfRegions } from './seriesBases'
 import { versionsOf } from './seriesStore'
@@ -24,18 +24,18 @@ export async function attributionOfRun(context: Context, principal: Principal | 
   authorise(principal, 'run.read', { workspaceId: row.workspaceId })
   const observed = observedRow(context, question.observed)
   if (observed.workspaceId !== row.workspaceId) throw new Problem(404, 'not-found', 'There is no such observed series.')
-  const chain = chainOfText(question.chain)
+  const { name: chainName, chain } = namedChain(context, row.workspaceId, question.chain)
   const corrections = correctionsOf(context, row.workspaceId, chain)
   const cache = kept.get(context) ?? new Map<string, Promise<AttributionReport>>()
   kept.set(context, cache)
-  const key = `${row.resultSha256} ${versionsOf(context, observed.id)[0]!.id} ${question.prior} ${Object.keys(corrections).join()} ${canonicalJson(chain)}`
+  const key = `${row.resultSha256} ${versionsOf(context, observed.id)[0]!.id} ${question.prior} ${Object.keys(corrections).join()} ${canonicalJson([chainName, chain])}`
   let answer = cache.get(key)
   if (!answer) {
     if (cache.size >= most) cache.clear()
     const input = runInputOf(row)
     // Outlines are not asked for here, and are most of what a run holds.
     const light = { ...input, regions: input.regions.map(region => ({ ...region, geometry: { type: 'Polygon' as const, coordinates: [] } })) }
-    answer = attributed(context, { input: light, result: runResultOf(row), series: loadObserved(context, observed.id), chain, corrections, bases: basesOfRegions(context, row.workspaceId, input), priorSigma: question.prior })
+    answer = attributed(context, { input: light, result: runResultOf(row), series: loadObserved(context, observed.id, input.settings), gravity: gravityFieldsOf(context, observed), chain, chainName, corrections, bases: basesOfRegions(context, row.workspaceId, input), priorSigma: question.prior })
     answer.catch(() => cache.delete(key))
     cache.set(key, answer)
   }

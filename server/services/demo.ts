@@ -45,7 +45,7 @@ export async function seedDemo(context: Context) {
   const lead = principals.get('lead')!
   const runId = await context.jobs.runNow(lead, workspaceId, { scenarioId, name: scenarioRow(context, scenarioId).name, input: freezeInput(context, scenarioRow(context, scenarioId)) })
   const observedId = (JSON.parse(scenarioRow(context, scenarioId).draft) as ScenarioDraft).observedId
-  publish(context, lead, runId, { slug: 'halcyon-2004-2024', title: 'Six regions of the Halcyon Compact, 2004–2024', licence: 'CC BY 4.0. Invented data.', observedId, zonalTides: 'all' })
+  await publish(context, lead, runId, { slug: 'halcyon-2004-2024', title: 'Six regions of the Halcyon Compact, 2004–2024', licence: 'CC BY 4.0. Invented data.', observedId, zonalTides: 'all' })
 }
 
 async function seedPeople(context: Context) {

@@ -7,10 +7,11 @@ import type { Comparison } from '#shared/types/run'
 import { schema } from '../database/client'
 import { Problem } from '../utils/problem'
 import { authorise, change, nameOfUser, newId } from './change'
+import { compareWith } from './comparisons'
 import type { Context } from './context'
 import { observedLabelOf } from './observed'
 import { pageOf } from './paging'
-import { compareWith, runInputOf, runResultOf, runRow, sourcesOf } from './runs'
+import { runInputOf, runResultOf, runRow, sourcesOf } from './runs'
 
 export type EditionRow = typeof schema.edition.$inferSelect
 
@@ -54,7 +55,7 @@ export function editionView(context: Context, row: EditionRow) {
   }
 }
 
-export function publish(context: Context, principal: Principal | null, runId: string, body: BodyOf<typeof contracts.editionCreate>) {
+export async function publish(context: Context, principal: Principal | null, runId: string, body: BodyOf<typeof contracts.editionCreate>) {
   const run = runRow(context, runId)
   const actor = authorise(principal, 'edition.publish', { workspaceId: run.workspaceId })
   const taken = editionsOfSlug(context, body.slug)
@@ -62,7 +63,7 @@ export function publish(context: Context, principal: Principal | null, runId: st
     throw new Problem(422, 'invalid', 'This link is taken.', [{ path: 'slug', code: 'taken', message: 'is used by another publication' }])
   }
   const result = runResultOf(run)
-  const comparison = body.observedId ? compareWith(context, run, body.observedId, body.zonalTides) : null
+  const comparison = body.observedId ? await compareWith(context, run, { observed: body.observedId, zonalTides: body.zonalTides, chain: body.chain }) : null
   const content: EditionContent = {
     sentence: findingSentence(result),
     unexplained: comparison ? remainderSentences(comparison).join(' ') || null : null,

@@ -3,6 +3,7 @@ import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import { parseObserved } from '#shared/observed/parse'
 import { can, type Principal } from '#shared/permissions'
+import type { PhysicsSettings } from '#shared/types/domain'
 import { InputError, type Issue } from '#shared/types/issue'
 import type { ObservedSeries } from '#shared/types/run'
 import { schema } from '../database/client'
@@ -10,6 +11,7 @@ import type { Upload } from '../utils/body'
 import { Problem } from '../utils/problem'
 import { authorise, change, newId } from './change'
 import type { Context } from './context'
+import { gravityExcitation, gravityOf } from './gravity'
 import { canonicalJson, sha256Hex } from './hash'
 import { keepOriginal, rememberOriginal, uploadText } from './originals'
 import { pageOf } from './paging'
@@ -61,11 +63,12 @@ function joined(parts: readonly Float64Array[]): Buffer {
   return floats(all)
 }
 
-const orientation = ['earth-orientation'] as const
+/** Series that a run may be held against. */
+const comparable = ['earth-orientation', 'gravity'] as const
 /** Kinds of series that go into the bin and out of it by the same routes. */
-const binned = ['earth-orientation', 'angular-momentum'] as const
+const binned = ['earth-orientation', 'gravity', 'angular-momentum'] as const
 
-export function observedRow(context: Context, id: string, { inBin = false, quantities = orientation as typeof orientation | typeof binned } = {}) {
+export function observedRow(context: Context, id: string, { inBin = false, quantities = comparable as typeof comparable | typeof binned } = {}) {
   const row = context.db.select().from(schema.series).where(and(eq(schema.series.id, id), inArray(schema.series.quantity, [...quantities]))).get()
   if (!row || (row.deletedAt && !inBin)) throw new Problem(404, 'not-found', 'There is no such observed series.')
   return row
@@ -73,18 +76,35 @@ export function observedRow(context: Context, id: string, { inBin = false, quant
 
 export function observedSummary(context: Context, principal: Principal | null, row: ReturnType<typeof observedRow>) {
   const version = versionsOf(context, row.id)[0]!
+  const facts = { id: row.id, revision: row.revision, name: row.name, latest: versionView(context, version), canWrite: can(principal, 'observed.write', { workspaceId: row.workspaceId }) }
+  if (row.quantity === 'gravity') {
+    const { excitation, observed } = gravityExcitation(version, dataOf(context, version.id))
+    const holds = (values: Float64Array | undefined) => values?.some(Number.isFinite) ?? false
+    return {
+      ...facts, format: 'gravity', has: { pole: false, lod: holds(observed.lodMs), excitation: holds(observed.chi1Mas) && holds(observed.chi2Mas) }, predictedRows: 0, emptyRows: observed.emptyRows,
+      gravity: { fields: gravityOf(version, dataOf(context, version.id)).fields, stated: excitation.stated, warnings: excitation.warnings },
+    }
+  }
   const recipe = JSON.parse(version.recipe) as ObservedRecipe
   return {
-    id: row.id, revision: row.revision, name: row.name, latest: versionView(context, version), format: recipe.format,
-    has: { pole: recipe.pole, lod: recipe.lod, excitation: recipe.excitation ?? false }, predictedRows: recipe.predictedRows, emptyRows: recipe.emptyRows,
-    canWrite: can(principal, 'observed.write', { workspaceId: row.workspaceId }),
+    ...facts, format: recipe.format, has: { pole: recipe.pole, lod: recipe.lod, excitation: recipe.excitation ?? false }, predictedRows: recipe.predictedRows, emptyRows: recipe.emptyRows, gravity: null,
   }
 }
 
-/** The stored series as the engine takes it. */
-export function loadObserved(context: Context, id: string): ObservedSeries {
+const dataOf = (context: Context, versionId: string) => context.db.select().from(schema.seriesData).where(eq(schema.seriesData.versionId, versionId)).get()!
+
+/** The answers stored with gravity coefficients; undefined for a series of rotation. */
+export function gravityFieldsOf(context: Context, row: ReturnType<typeof observedRow>) {
+  if (row.quantity !== 'gravity') return undefined
+  const version = versionsOf(context, row.id)[0]!
+  return gravityOf(version, dataOf(context, version.id)).fields
+}
+
+/** The stored series as the engine takes it; gravity coefficients as excitation, with the coefficients and core of the settings. */
+export function loadObserved(context: Context, id: string, settings?: PhysicsSettings): ObservedSeries {
   const version = versionsOf(context, id)[0]!
-  const data = context.db.select().from(schema.seriesData).where(eq(schema.seriesData.versionId, version.id)).get()!
+  const data = dataOf(context, version.id)
+  if (observedRow(context, id, { inBin: true }).quantity === 'gravity') return gravityExcitation(version, data, settings).observed
   const recipe = JSON.parse(version.recipe) as ObservedRecipe
   const mjd = fromFloats(data.mjd)
   const all = fromFloats(data.value)
@@ -101,7 +121,7 @@ export function loadObserved(context: Context, id: string): ObservedSeries {
 
 export function listObserved(context: Context, principal: Principal | null, workspaceId: string, { limit, cursor }: { limit: number, cursor?: string }) {
   const rows = context.db.select().from(schema.series)
-    .where(and(eq(schema.series.workspaceId, workspaceId), eq(schema.series.quantity, 'earth-orientation'), isNull(schema.series.deletedAt), cursor ? lt(schema.series.id, cursor) : undefined))
+    .where(and(eq(schema.series.workspaceId, workspaceId), inArray(schema.series.quantity, [...comparable]), isNull(schema.series.deletedAt), cursor ? lt(schema.series.id, cursor) : undefined))
     .orderBy(desc(schema.series.id)).limit(limit + 1).all()
   return pageOf(rows, limit, row => observedSummary(context, principal, row))
 }
@@ -117,8 +137,16 @@ export function readObserved(context: Context, principal: Principal | null, id: 
     xMas: nullable(data.xMas), yMas: nullable(data.yMas), lodMs: nullable(data.lodMs),
     sigmaXMas: nullable(data.sigmaXMas), sigmaYMas: nullable(data.sigmaYMas), sigmaLodMs: nullable(data.sigmaLodMs),
     chi1Mas: data.chi1Mas ? nullable(data.chi1Mas) : null, chi2Mas: data.chi2Mas ? nullable(data.chi2Mas) : null,
-    predicted: [...data.predicted],
+    predicted: [...data.predicted], coefficients: coefficientsOf(context, row),
   }
+}
+
+/** ΔC₂₀, ΔC₂₁, ΔS₂₁ as they were sent; null for a series of rotation. */
+function coefficientsOf(context: Context, row: ReturnType<typeof observedRow>) {
+  if (row.quantity !== 'gravity') return null
+  const version = versionsOf(context, row.id)[0]!
+  const { c20, c21, s21, sigmaC20, sigmaC21, sigmaS21 } = gravityOf(version, dataOf(context, version.id)).series
+  return { c20: nullable(c20), c21: nullable(c21), s21: nullable(s21), sigmaC20: nullable(sigmaC20), sigmaC21: nullable(sigmaC21), sigmaS21: nullable(sigmaS21) }
 }
 
 export function binObserved(context: Context, principal: Principal | null, id: string, revision: number, restore = false) {

@@ -1,28 +1,14 @@
 import type { PlainChainResult } from '#shared/observed/chainPlain'
-import type { Chain } from '#shared/observed/chainTypes'
-import { defaultChain, readChain } from '#shared/observed/readChain'
 import type { Principal } from '#shared/permissions'
 import { InputError } from '#shared/types/issue'
 import type { ChainAnswer, ChainTask } from '../workers/chain'
 import { correctionsOf } from './angularMomentum'
+import { namedChain } from './chains'
 import { authorise } from './change'
 import type { Context } from './context'
 import { canonicalJson } from './hash'
-import { loadObserved, observedRow } from './observed'
+import { gravityFieldsOf, loadObserved, observedRow } from './observed'
 import { versionsOf } from './seriesStore'
-
-/** A chain as it stands in an address, checked; the usual one where there is none. */
-export function chainOfText(text: string | undefined): Chain {
-  if (!text) return defaultChain()
-  let json: unknown
-  try {
-    json = JSON.parse(text)
-  }
-  catch (error) {
-    throw new InputError('The chain is no JSON.', [{ path: 'chain', code: 'json', message: error instanceof Error ? error.message : 'cannot be read' }])
-  }
-  return readChain(json)
-}
 
 const most = 8
 const kept = new WeakMap<Context, Map<string, Promise<PlainChainResult>>>()
@@ -31,7 +17,7 @@ const kept = new WeakMap<Context, Map<string, Promise<PlainChainResult>>>()
 export async function readChainOfObserved(context: Context, principal: Principal | null, id: string, { chain: text, points }: { chain?: string, points: number }): Promise<PlainChainResult> {
   const row = observedRow(context, id)
   authorise(principal, 'observed.read', { workspaceId: row.workspaceId })
-  const chain = chainOfText(text)
+  const { chain } = namedChain(context, row.workspaceId, text)
   const corrections = correctionsOf(context, row.workspaceId, chain)
   const cache = kept.get(context) ?? new Map<string, Promise<PlainChainResult>>()
   kept.set(context, cache)
@@ -39,7 +25,7 @@ export async function readChainOfObserved(context: Context, principal: Principal
   let answer = cache.get(key)
   if (!answer) {
     if (cache.size >= most) cache.clear()
-    answer = reduced(context, { series: loadObserved(context, id), chain, corrections, points })
+    answer = reduced(context, { series: loadObserved(context, id), chain, corrections, gravity: gravityFieldsOf(context, row), points })
     answer.catch(() => cache.delete(key))
     cache.set(key, answer)
   }

@@ -14,6 +14,7 @@ const places: Record<string, (context: Context, params: Params) => Place> = {
   'series-versions': ({ db }, { id }) => db.select({ workspaceId: schema.series.workspaceId }).from(schema.seriesVersion)
     .innerJoin(schema.series, eq(schema.series.id, schema.seriesVersion.seriesId)).where(eq(schema.seriesVersion.id, id!)).get(),
   'observed': ({ db }, { id }) => db.select({ workspaceId: schema.series.workspaceId }).from(schema.series).where(eq(schema.series.id, id!)).get(),
+  'chains': ({ db }, { id }) => db.select({ workspaceId: schema.chain.workspaceId }).from(schema.chain).where(eq(schema.chain.id, id!)).get(),
   'scenarios': ({ db }, { id }) => db.select({ workspaceId: schema.scenario.workspaceId }).from(schema.scenario).where(eq(schema.scenario.id, id!)).get(),
   'jobs': ({ db }, { id }) => db.select({ workspaceId: schema.job.workspaceId }).from(schema.job).where(eq(schema.job.id, id!)).get(),
   'runs': ({ db }, { id }) => db.select({ workspaceId: schema.run.workspaceId }).from(schema.run).where(eq(schema.run.id, id!)).get(),

@@ -1,4 +1,4 @@
-import { and, desc, eq, isNull } from 'drizzle-orm'
+import { and, desc, eq, inArray, isNull } from 'drizzle-orm'
 import type { ScenarioDraft } from '#shared/api/schemas'
 import { can, type Principal } from '#shared/permissions'
 import { schema } from '../database/client'
@@ -22,10 +22,10 @@ export function readRun(context: Context, principal: Principal | null, id: strin
   }
 }
 
-/** The observed series that a result opens with: the scenario's choice, else the newest that is there. */
+/** The observed series that a result opens with: the scenario's choice, else the newest of rotation that is there. */
 function openingObserved(context: Context, workspaceId: string, chosen: string | null): string | null {
-  const present = context.db.select({ id: schema.series.id }).from(schema.series)
-    .where(and(eq(schema.series.workspaceId, workspaceId), eq(schema.series.quantity, 'earth-orientation'), isNull(schema.series.deletedAt)))
+  const present = context.db.select({ id: schema.series.id, quantity: schema.series.quantity }).from(schema.series)
+    .where(and(eq(schema.series.workspaceId, workspaceId), inArray(schema.series.quantity, ['earth-orientation', 'gravity']), isNull(schema.series.deletedAt)))
     .orderBy(desc(schema.series.id)).all()
-  return present.find(s => s.id === chosen)?.id ?? present[0]?.id ?? null
+  return (present.find(s => s.id === chosen) ?? present.find(s => s.quantity === 'earth-orientation'))?.id ?? null
 }

@@ -5,7 +5,7 @@ import { ulid, warning } from './schemas.ts'
 
 export const attributionQuery = z.object({
   observed: ulid,
-  /** The reduction of the observed series as JSON; the usual one where it is left out. */
+  /** The reduction of the observed series: “usual”, the id of a kept one, or JSON; the usual one where it is left out. */
   chain: chainText.optional(),
   /** One-sigma of the prior of every factor, about 1. */
   prior: z.coerce.number().min(0.01, 'must be at least 0.01').max(100).default(0.5),
@@ -28,7 +28,7 @@ const scaling = z.looseObject({
 
 /** The engine's own types say the rest; the schema documents the parts that readers of the API need. */
 export const attributionAnswer = z.looseObject({
-  chain: z.looseObject({}), chartNote: z.string(), notRemoved: z.array(z.string()), epochsMjd: z.array(z.number()),
+  chain: z.looseObject({}), chainName: z.string().nullable(), chartNote: z.string(), notRemoved: z.array(z.string()), epochsMjd: z.array(z.number()),
   compared: z.record(z.string(), z.looseObject({ unit: z.enum(['ms', 'mas']), observed: column, model: column, residual: column })),
   leftOut: z.array(z.object({ quantity: z.enum(['lod', 'chi1', 'chi2']), reason: z.string() })),
   budget: z.looseObject({ rows: z.array(row), model: row, observed: row, residual: row, closure: z.looseObject({ quoted: z.boolean() }), sentences: z.array(z.string()) }),

@@ -2,11 +2,12 @@ import { z } from 'zod'
 import { epochFormats } from '../series/epochColumn.ts'
 import { oceanModes } from '../types/domain.ts'
 import { attributionAnswer, attributionQuery } from './attributionSchemas.ts'
-import { chainAnswer, chainQuery } from './chainSchemas.ts'
+import { chainAnswer, chainBody, chainQuery, chainText, savedChain } from './chainSchemas.ts'
 import { contract, type Contract } from './contract.ts'
 import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
 import { fitAnswer, fitQuery } from './fitSchemas.ts'
 import { fluidOptions, fluidSummary } from './fluidSchemas.ts'
+import { gravityFields } from './gravitySchemas.ts'
 import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
@@ -51,6 +52,15 @@ const observedOptions = versionFacts.extend({
   }).optional(),
   leaveOutBadRows: z.boolean().default(false),
 })
+
+const gravityOptions = z.object({
+  name, source: prose, licence: prose.default(''), independence: prose.default(''), fields: gravityFields,
+  /** Power of ten that the values are in, e.g. −10; left out: as the names of the columns say, else plain numbers. */
+  exponent: z.int().min(-20).max(0).optional(),
+  leaveOutBadRows: z.boolean().default(false),
+})
+/** How an observed series is treated before a run is held against it: its tides alone, or a whole chain, which then says all. */
+const comparedBy = z.object({ zonalTides: z.enum(['none', 'all']).default('none'), chain: chainText.optional() })
 
 /** Every route of the product, in one list. */
 export const contracts = {
@@ -214,9 +224,29 @@ export const contracts = {
     id: 'fluidCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/angular-momentum', action: 'observed.write', summary: 'Store a series of angular momentum with the answers to what its numbers do not say', params: inWorkspace, bodyType: 'multipart',
     body: fluidOptions, answer: fluidSummary, status: 201, maxBytes: limits.originalBytes,
   }),
+  gravityCreate: contract({
+    id: 'gravityCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/gravity', action: 'observed.write', summary: 'Store gravity coefficients of degree two as an observed series, with the answers to what their numbers do not say', params: inWorkspace, bodyType: 'multipart',
+    body: gravityOptions, answer: observedSummary, status: 201, maxBytes: limits.originalBytes,
+  }),
   observedChain: contract({
     id: 'observedChain', method: 'GET', path: '/api/v1/observed/{id}/chain', action: 'observed.read', summary: 'An observed series reduced step by step by a chain: before, removed and after of each step; stores nothing', params: byId,
     query: chainQuery, answer: chainAnswer,
+  }),
+
+  chainList: contract({ id: 'chainList', method: 'GET', path: '/api/v1/workspaces/{workspace}/chains', action: 'observed.read', summary: 'Reductions kept under a name', params: inWorkspace, answer: listOf(savedChain) }),
+  chainCreate: contract({
+    id: 'chainCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/chains', action: 'observed.write', summary: 'Keep a reduction under a name', params: inWorkspace, body: chainBody, answer: savedChain, status: 201,
+  }),
+  chainChange: contract({
+    id: 'chainChange', method: 'PATCH', path: '/api/v1/chains/{id}', action: 'observed.write', summary: 'Rename a kept reduction or put another chain in its place', params: byId,
+    body: chainBody.partial().extend({ revision }), answer: savedChain,
+  }),
+  chainRemove: contract({
+    id: 'chainRemove', method: 'DELETE', path: '/api/v1/chains/{id}', action: 'observed.write', summary: 'Put a kept reduction in the bin', params: byId,
+    query: z.object({ revision: z.coerce.number().int() }), answer: changed,
+  }),
+  chainRestore: contract({
+    id: 'chainRestore', method: 'POST', path: '/api/v1/chains/{id}/restore', action: 'observed.write', summary: 'Take a kept reduction out of the bin', params: byId, body: z.object({ revision }), answer: changed,
   }),
 
   // Scenarios, runs, jobs
@@ -250,8 +280,8 @@ export const contracts = {
   jobCancel: contract({ id: 'jobCancel', method: 'DELETE', path: '/api/v1/jobs/{id}', action: 'run.create', summary: 'Cancel a job', params: byId, answer: jobView }),
   runRead: contract({ id: 'runRead', method: 'GET', path: '/api/v1/runs/{id}', action: 'run.read', summary: 'A run and its result', params: byId, answer: runView }),
   runComparison: contract({
-    id: 'runComparison', method: 'GET', path: '/api/v1/runs/{id}/comparison', action: 'run.read', summary: 'A run beside an observed series', params: byId,
-    query: z.object({ observed: ulid, zonalTides: z.enum(['none', 'all']).default('none') }), answer: comparison,
+    id: 'runComparison', method: 'GET', path: '/api/v1/runs/{id}/comparison', action: 'run.read', summary: 'A run beside an observed series, as it is or reduced by a chain', params: byId,
+    query: comparedBy.extend({ observed: ulid }), answer: comparison,
   }),
   runAttribution: contract({
     id: 'runAttribution', method: 'GET', path: '/api/v1/runs/{id}/attribution', action: 'run.read',
@@ -261,7 +291,7 @@ export const contracts = {
   runFile: contract({
     id: 'runFile', method: 'GET', path: '/api/v1/runs/{id}/files/{file}', action: 'report.export', summary: 'Report and data of a run: report.pdf, budget.csv, series.csv, regions.geojson, run.json',
     params: z.object({ id: ulid, file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'run.json']) }),
-    query: z.object({ observed: ulid.optional(), zonalTides: z.enum(['none', 'all']).default('none') }), answer: bytes, answerType: 'application/octet-stream',
+    query: comparedBy.extend({ observed: ulid.optional() }), answer: bytes, answerType: 'application/octet-stream',
   }),
 
   runSeaLevel: contract({
@@ -285,7 +315,7 @@ export const contracts = {
   editionList: contract({ id: 'editionList', method: 'GET', path: '/api/v1/workspaces/{workspace}/editions', action: 'edition.list', summary: 'Published editions of a workspace', params: inWorkspace, query: page, answer: listOf(edition) }),
   editionCreate: contract({
     id: 'editionCreate', method: 'POST', path: '/api/v1/runs/{id}/editions', action: 'edition.publish', summary: 'Publish a run under a readable link; the same link again makes the next edition', params: byId,
-    body: z.object({ slug: z.string().regex(/^[a-z0-9]+(-[a-z0-9]+)*$/, 'must be lower-case letters, digits and single hyphens').min(3).max(80), title: name, licence: prose, observedId: ulid.nullable(), zonalTides: z.enum(['none', 'all']).default('none') }),
+    body: z.object({ slug: z.string().regex(/^[a-z0-9]+(-[a-z0-9]+)*$/, 'must be lower-case letters, digits and single hyphens').min(3).max(80), title: name, licence: prose, observedId: ulid.nullable() }).extend(comparedBy.shape),
     answer: edition, status: 201,
   }),
   editionWithdraw: contract({

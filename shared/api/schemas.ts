@@ -4,6 +4,7 @@ import { answers, waterKinds } from '../series/facts.ts'
 import { quantities } from '../series/quantityKinds.ts'
 import { correctionKinds, materials } from '../series/recipe.ts'
 import { coefficientSetIds, coreChoices, oceanModes, regionKinds, roles } from '../types/domain.ts'
+import { gravityFields } from './gravitySchemas.ts'
 
 /** Limits guard the server against bodies that cannot be meant; each says what it guards. */
 export const limits = {
@@ -197,12 +198,16 @@ export const jobView = z.object({
 export const observedSummary = z.object({
   id: ulid, revision, name: z.string(), latest: versionSummary, format: z.string(),
   has: z.object({ pole: z.boolean(), lod: z.boolean(), excitation: z.boolean() }), predictedRows: z.int(), emptyRows: z.int(), canWrite: z.boolean(),
+  /** Of gravity coefficients: the answers stored with them, how they became excitation, and what that means for a comparison. */
+  gravity: z.object({ fields: gravityFields, stated: z.array(z.string()), warnings: z.array(warning) }).nullable(),
 })
 const column = z.array(z.number().nullable())
 export const observedData = observedSummary.extend({
   mjd: z.array(finite), xMas: column, yMas: column, lodMs: column, sigmaXMas: column, sigmaYMas: column, sigmaLodMs: column,
   chi1Mas: column.nullable(), chi2Mas: column.nullable(),
   predicted: z.array(z.int()),
+  /** Changes of the fully normalised coefficients, as they were sent; null for a series of rotation. */
+  coefficients: z.object({ c20: column, c21: column, s21: column, sigmaC20: column, sigmaC21: column, sigmaS21: column }).nullable(),
 })
 
 export const edition = z.object({

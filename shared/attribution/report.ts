@@ -2,6 +2,7 @@ import { runChain } from '../observed/chain.ts'
 import { circularityWarnings } from '../observed/circularity.ts'
 import type { Basis } from '../observed/circularity.ts'
 import type { Chain, FluidCorrection } from '../observed/chainTypes.ts'
+import type { GravityFields } from '../observed/gravityTypes.ts'
 import { InputError } from '../types/issue.ts'
 import type { ObservedSeries, RunInput, RunResult, RunWarning } from '../types/run.ts'
 import { assembleAttribution } from './assemble.ts'
@@ -29,8 +30,12 @@ export interface AttributionTask {
   result: RunResult
   series: ObservedSeries
   chain: Chain
+  /** Name that the chain is kept under, if it is. */
+  chainName?: string | null
   /** Series that the chain subtracts, by the keys that it names. */
   corrections?: Record<string, FluidCorrection>
+  /** Answers stored with gravity coefficients, where the series comes from them. */
+  gravity?: GravityFields
   /** What the mass of each region was made from, for the warning about circular comparisons. */
   bases: { key: string, name: string, bases: Basis[] }[]
   /** One-sigma of the prior of every factor, about 1. */
@@ -44,6 +49,8 @@ export type ScalingReport = { scaling: PlainScaling, reason: null } | { scaling:
 /** A run attributed to one reduction of one observed series, as plain JSON. */
 export interface AttributionReport {
   chain: Chain
+  /** Name that the chain is kept under; null where it is kept under none. */
+  chainName: string | null
   chartNote: string
   notRemoved: string[]
   epochsMjd: number[]
@@ -68,8 +75,8 @@ export interface AttributionReport {
  *
  * @throws InputError for a chain that does not hold for this series
  */
-export function attributionReport({ input, result, series, chain, corrections, bases, priorSigma }: AttributionTask): AttributionReport {
-  const reduced = runChain(series, chain, { corrections })
+export function attributionReport({ input, result, series, chain, chainName = null, corrections, gravity, bases, priorSigma }: AttributionTask): AttributionReport {
+  const reduced = runChain(series, chain, { corrections, gravity })
   const months = observedMonths(reduced, result.epochsMjd)
   const loose = observedMonths(reduced, result.epochsMjd, 'out')
   const { rates } = observedTrends(months)
@@ -89,6 +96,7 @@ export function attributionReport({ input, result, series, chain, corrections, b
   const toldApart = 'reason' in data || smoothed || data.groups.length === 0 ? null : identifiability(seriesSignatures(data))
   return {
     chain,
+    chainName,
     chartNote: reduced.chartNote,
     notRemoved: reduced.notRemoved,
     epochsMjd: result.epochsMjd,

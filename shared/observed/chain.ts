@@ -11,6 +11,7 @@ import { panelSentence, stepSources, stepTitles } from './chainTexts.ts'
 import { chainQuantities } from './chainTypes.ts'
 import type { Chain, ChainQuantity, ChainResult, ChainStep, FluidCorrection, StepPanel, StepResult, Track } from './chainTypes.ts'
 import { correctionValues, fluidRefusals, fluidWarnings, onEpochs, withoutMean } from './fluidCorrection.ts'
+import { gravityWarnings } from './gravityExcitation.ts'
 import type { GravityFields } from './gravityTypes.ts'
 import { monthsOf, rowsInSpan, seasonsOf, straightPart } from './steps.ts'
 
@@ -35,7 +36,7 @@ export function runChain(series: ObservedSeries, chain: Chain, inputs: ChainInpu
   const span = { fromMjd: chain.from ? mjdFromIsoDate(chain.from) : null, toMjd: chain.to ? mjdFromIsoDate(chain.to) : null }
   const kept = rowsInSpan(series, span, chain.includePredictions)
   const fluids = fluidsOf(chain, inputs, series.from === 'gravity')
-  const warnings: RunWarning[] = fluidWarnings(fluids)
+  const warnings: RunWarning[] = [...(inputs.gravity ? gravityWarnings(inputs.gravity) : []), ...fluidWarnings(fluids)]
   let tracks = tracksOf(kept)
   let months: ChainResult['months'] = null
   const steps: StepResult[] = []

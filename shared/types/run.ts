@@ -1,3 +1,4 @@
+import type { Chain } from '../observed/chainTypes.ts'
 import type { SeriesFacts } from '../series/facts.ts'
 import type { CoreChoice, Measured, Outline, PhysicsSettings, RegionKind } from './domain.ts'
 
@@ -224,4 +225,9 @@ export interface Comparison {
   /** What is still in the observed series. */
   notRemoved: string[]
   warnings: RunWarning[]
+  /** How the observed series was reduced before, step by step; absent where nothing but tides was asked for. */
+  reduction?: ReductionStated
 }
+
+/** A reduction as a comparison states it: the chain as it ran, what each of its steps did, and the name that it is kept under. */
+export interface ReductionStated { name: string | null, chain: Chain, chartNote: string, steps: { title: string, sentence: string, source: string }[] }

@@ -95,6 +95,9 @@ async function binnedScenario(client: Client) {
   return { params: { id }, body: await client.get('scenarioRemove', { params: { id }, query: { revision: 1 } }) }
 }
 
+const noSteps = { schemaVersion: 1, from: null, to: null, includePredictions: false, steps: [] }
+const freshChain = () => lead.get('chainCreate', { params: workspace(), body: { name: ulid(), chain: noSteps } })
+
 const steps: Step[] = [
   { route: 'sessionRead', rule: 'open', make: () => ({}) },
   { route: 'sessionCreate', rule: 'open', fresh: true, make: who => ({ body: { email: who === 'nobody' ? emails.reader : emails[who], password: demoPassword } }) },
@@ -145,6 +148,24 @@ const steps: Step[] = [
       params: workspace(), file: { name: 'aam.txt', content: '2010 1 1 0 55197.0 1e-7 2e-7 3e-9 4e-9 5e-9 6e-9\n2010 1 2 0 55198.0 1e-7 2e-7 3e-9 4e-9 5e-9 6e-9\n' },
       body: { name: 'Air', source: 'made by the test', fields: { component: 'atmosphere', model: 'invented', pairedWith: null, invertedBarometer: 'yes', coefficients: 'gross-2007', subtracted: '', barystatic: 'no' } },
     }),
+  },
+  {
+    route: 'gravityCreate', rule: 'leadOnly',
+    make: () => ({
+      params: workspace(), file: { name: 'degree2.csv', content: 'mjd,dC20,dC21,dS21\n55200,1e-11,2e-12,-3e-12\n55230,2e-11,2.5e-12,-3.5e-12\n' },
+      body: { name: 'Gravity', source: 'made by the test', fields: { solidPoleTide: 'removed', oceanPoleTide: 'removed', permanentTide: 'zero-tide', meanPole: 'secular-2018', radiusM: 6378136.3, dealiasing: 'restored', axialLoadFactor: 0.695 } },
+    }),
+  },
+  { route: 'chainList', rule: 'science', make: () => ({ params: workspace() }) },
+  { route: 'chainCreate', rule: 'leadOnly', make: () => ({ params: workspace(), body: { name: ulid(), chain: noSteps } }) },
+  { route: 'chainChange', rule: 'leadOnly', make: async () => ({ params: { id: (await freshChain()).id }, body: { revision: 1, name: ulid() } }) },
+  { route: 'chainRemove', rule: 'leadOnly', make: async () => ({ params: { id: (await freshChain()).id }, query: { revision: 1 } }) },
+  {
+    route: 'chainRestore', rule: 'leadOnly',
+    make: async () => {
+      const { id } = await freshChain()
+      return { params: { id }, body: await lead.get('chainRemove', { params: { id }, query: { revision: 1 } }) }
+    },
   },
   { route: 'observedChain', rule: 'science', make: () => ({ params: { id: shared.observed }, query: { points: 50 } }) },
   { route: 'observedRemove', rule: 'leadOnly', make: async () => ({ params: { id: (await makeObserved(lead, place, orientationCsv(40))).id }, query: { revision: 1 } }) },

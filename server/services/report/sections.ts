@@ -47,6 +47,21 @@ export function comparisonBlocks(data: ReportData): Block[] {
     ...(comparison.notRemoved.length ? [paragraph(`Still in the observed series: ${listed(comparison.notRemoved)}.`, { margin: [0, 6, 0, 4] })] : []),
     caution(cautions.core),
     caution(cautions.noise),
+    ...reductionBlocks(data),
+  ]
+}
+
+/** The chain that reduced the observed series: its name, what each step did, and the chain itself as JSON, to be used again. */
+export function reductionBlocks({ comparison }: ReportData): Block[] {
+  const reduction = comparison?.reduction
+  if (!reduction) return []
+  const [first, ...rest] = reduction.steps.map(({ sentence, source }, i): Block => ({ text: [`${i + 1}. ${sentence} `, { text: source, color: print.soft }], margin: [0, 0, 0, 3] }))
+  return [
+    together(sectionHead('Reduction of the observed series', reduction.name ? `chain “${reduction.name}”; ${reduction.chartNote}` : reduction.chartNote), first ?? paragraph('Nothing is taken away.')),
+    ...rest,
+    paragraph('The same chain as JSON, to be used again:', { margin: [0, 4, 0, 2], fontSize: size.small, color: print.soft }),
+    // A break after every value: one long word would not be broken.
+    { text: JSON.stringify(reduction.chain, null, 1).replace(/\n\s*/g, ' '), fontSize: size.tiny, color: print.soft },
   ]
 }
 

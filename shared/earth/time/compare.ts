@@ -51,9 +51,9 @@ export function compareRun(result: RunResult, observed: ObservedSeries, options:
   }
   const tide = tides === 'all' ? zonalTideLodMs(series.mjd, 'all') : null
   const lodMs = tide ? series.lodMs.map((lod, i) => lod - tide[i]!) : series.lodMs
-  const lod = quantity('ms', monthlyMeans(series.mjd, lodMs, months).value, model(total.series.lodMicroseconds, 1e-3), months, total.lodMicrosecondsPerYear, 1e-3)
+  const lod = comparedQuantity('ms', monthlyMeans(series.mjd, lodMs, months).value, model(total.series.lodMicroseconds, 1e-3), months, total.lodMicrosecondsPerYear, 1e-3)
   const excitation = excitationOfSeries(series, options.chandler ?? defaultChandler)
-  const pole = (name: 'chi1Mas' | 'chi2Mas', budget: Measured | null): ComparisonQuantity | null => excitation && quantity(
+  const pole = (name: 'chi1Mas' | 'chi2Mas', budget: Measured | null): ComparisonQuantity | null => excitation && comparedQuantity(
     'mas', monthlyMeans(excitation.mjd, excitation[name], months).value, model(total.series[name], 1), months, budget, 1
   )
   const chi1 = pole('chi1Mas', total.chi1MasPerYear)
@@ -87,7 +87,7 @@ export function compareRun(result: RunResult, observed: ObservedSeries, options:
 }
 
 /** Months of the run that the observed series reaches into, from its first to its last row. */
-function commonMonths(result: RunResult, series: ObservedSeries): CalendarMonth[] {
+export function commonMonths(result: RunResult, series: ObservedSeries): CalendarMonth[] {
   if (series.mjd.length === 0) return []
   const from = series.mjd[0]!
   const to = series.mjd.at(-1)!
@@ -99,7 +99,13 @@ function commonMonths(result: RunResult, series: ObservedSeries): CalendarMonth[
     .filter(month => month.endMjd > from && month.startMjd <= to)
 }
 
-function quantity(
+/**
+ * One quantity over some months, in ms or mas, as anomalies about the mean of the months that have both, with trends per Julian year; null
+ * for fewer than six such months.
+ *
+ * @param budget trend of the run's own budget, whose sigma times `factor` is in `unit`
+ */
+export function comparedQuantity(
   unit: 'ms' | 'mas', observed: (number | null)[], model: (number | null)[], months: readonly CalendarMonth[], budget: Measured | null, factor: number
 ): ComparisonQuantity | null {
   const both = months.map((_, j) => j).filter(j => observed[j] !== null && model[j] !== null)

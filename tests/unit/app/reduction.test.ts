@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { afterChart, chainOfText, coveredSpans, pageChain, panelCharts, reductionSentence, textOfChain, withFluid, withoutStep, withStep } from '../../../app/observed/reduction'
+import { coveredSpans } from '../../../app/observed/coverage'
+import { afterChart, chainOfText, pageChain, panelCharts, reductionSentence, textOfChain, withFluid, withoutStep, withStep } from '../../../app/observed/reduction'
 import { fieldsOf, noAnswers, openQuestions, readFluidText } from '../../../app/observed/fluidDraft'
 import { readChain } from '#shared/observed/readChain'
 

@@ -1,5 +1,5 @@
 import { contracts } from '#shared/api/contracts'
-import { readComparison } from '../../../../services/runs'
+import { readComparison } from '../../../../services/comparisons'
 import { route } from '../../../../utils/route'
 
-export default route(contracts.runComparison, ({ context, principal, params, query }) => readComparison(context, principal, params.id, query.observed, query.zonalTides))
+export default route(contracts.runComparison, ({ context, principal, params, query }) => readComparison(context, principal, params.id, query))
