@@ -1,5 +1,5 @@
 import { readConversion, fieldOfIssue, type ConversionFaults, type ConversionFields } from '~/series/conversionFields'
-import type { ConversionChoice } from '#shared/series/conversionChoice'
+import type { ConversionChoice, StoredSeries } from '#shared/series/conversionChoice'
 import type { Recipe } from '#shared/series/recipe'
 import { InputError } from '#shared/types/issue'
 
@@ -7,7 +7,7 @@ import { InputError } from '#shared/types/issue'
  * The recipe that the fields ask for, made anew whenever one of them changes. The parser of units is loaded when it is first needed.
  * `waiting` is true from a change of a field until its recipe or its faults stand.
  */
-export function useSeriesConversion(fields: Ref<ConversionFields | null>, areaM2: Ref<number>, withdrawalPositive: Ref<boolean>) {
+export function useSeriesConversion(fields: Ref<ConversionFields | null>, areaM2: Ref<number>, withdrawalPositive: Ref<boolean>, storedOf: (versionIds: string[]) => Promise<StoredSeries[]>) {
   const recipe = shallowRef<Recipe | null>(null)
   const choice = shallowRef<ConversionChoice | null>(null)
   const faults = shallowRef<ConversionFaults>({})
@@ -23,12 +23,13 @@ export function useSeriesConversion(fields: Ref<ConversionFields | null>, areaM2
       waiting.value = true
       try {
         const { recipeOfChoice } = await import('#shared/series/conversionChoice')
-        made = recipeOfChoice(read.choice, areaM2.value, withdrawalPositive.value)
+        const stored = await storedOf(read.choice.subtract?.map(({ versionId }) => versionId) ?? [])
+        made = recipeOfChoice(read.choice, areaM2.value, withdrawalPositive.value, stored)
       }
       catch (error) {
         found = error instanceof InputError
           ? Object.fromEntries(error.issues.map(({ path, message }) => [fieldOfIssue(path), message]))
-          : { unit: 'The unit could not be read just now; the page has to be loaded again.' }
+          : error instanceof ApiProblem ? { 'subtract/0': error.message } : { unit: 'The unit could not be read just now; the page has to be loaded again.' }
       }
     }
     if (mine !== ticket) return

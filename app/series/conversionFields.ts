@@ -10,6 +10,10 @@ export const correctionTexts: Record<CorrectionKind, string> = {
 }
 export const blankCorrection = (): CorrectionField => ({ on: true, what: 'isostatic', name: '', rate: '', sigma: '', shared: true })
 
+/** A stored version of another series to be taken off, and the longest distance of its epochs that is gone between. */
+export interface SubtractField { on: boolean, what: CorrectionKind, versionId: string, maxGapDays: string }
+export const blankSubtract = (): SubtractField => ({ on: true, what: 'surface-water', versionId: '', maxGapDays: '62' })
+
 /** A conversion as it stands in the fields of a form. */
 export interface ConversionFields {
   quantity: Quantity
@@ -24,10 +28,11 @@ export interface ConversionFields {
   storageSource: string
   areaSigma: string
   corrections: CorrectionField[]
+  subtract: SubtractField[]
 }
-type TextField = Exclude<keyof ConversionFields, 'corrections'>
-/** Faults by field; those of the corrections by their place: `corrections/0`. */
-export type ConversionFaults = Partial<Record<TextField | `corrections/${number}`, string>>
+type TextField = Exclude<keyof ConversionFields, 'corrections' | 'subtract'>
+/** Faults by field; those of the corrections by their place: `corrections/0`, `subtract/0`. */
+export type ConversionFaults = Partial<Record<TextField | `corrections/${number}` | `subtract/${number}`, string>>
 
 export const materialNames: Record<Material, string> = {
   water: 'fresh water', ice: 'ice', glacier: 'glacier volume change', firn: 'firn', snow: 'snow', own: 'own value',
@@ -77,7 +82,7 @@ export function firstFields(columnName: string, unit: MassUnit): ConversionField
   const [quantity, text] = said ? [said, unitInName(columnName)] : plainTexts[unit]
   const empty: ConversionFields = {
     quantity: 'mass', unit: text, material: 'water', density: '', densitySigma: '', densitySource: '',
-    coefficient: 'specific-yield', storage: '', storageSigma: '', storageSource: '', areaSigma: '', corrections: [],
+    coefficient: 'specific-yield', storage: '', storageSigma: '', storageSource: '', areaSigma: '', corrections: [], subtract: [],
   }
   return withQuantity(withMaterial(empty, 'water'), quantity)
 }
@@ -86,10 +91,11 @@ export function firstFields(columnName: string, unit: MassUnit): ConversionField
 export function fieldsOfDraft(kept: unknown): ConversionFields | null {
   const fields = kept as ConversionFields | null
   if (!fields || typeof fields !== 'object' || !(fields.quantity in quantityKinds)) return null
-  const { corrections, ...texts } = fields
+  const { corrections, subtract: series, ...texts } = fields
   if (!Object.values(texts).every(value => typeof value === 'string') || !Array.isArray(corrections)) return null
   const whole = (c: CorrectionField) => correctionKinds.includes(c?.what) && [c.name, c.rate, c.sigma].every(text => typeof text === 'string')
-  return { ...fields, corrections: corrections.filter(whole) }
+  const named = (s: SubtractField) => correctionKinds.includes(s?.what) && [s.versionId, s.maxGapDays].every(text => typeof text === 'string')
+  return { ...fields, corrections: corrections.filter(whole), subtract: Array.isArray(series) ? series.filter(named) : [] }
 }
 
 /** The choice that the fields hold, or what is wrong with them, field by field. Ranges are checked where the recipe is made. */
@@ -118,6 +124,14 @@ export function readConversion(fields: ConversionFields, readNumber: (text: stri
     if (sigmaKm2 > 0) choice.area = { sigmaKm2, source: null }
   }
   if (fields.corrections.length) choice.corrections = fields.corrections.map((correction, i) => readCorrection(correction, readNumber, (fault) => { faults[`corrections/${i}`] = fault }))
+  if (fields.subtract.length) {
+    choice.subtract = fields.subtract.map(({ on, what, versionId, maxGapDays }, i) => {
+      const days = readNumber(maxGapDays)
+      if (!versionId) faults[`subtract/${i}`] = 'Choose the series that is taken off.'
+      else if (days === null || !Number.isInteger(days) || days < 1 || days > 2000) faults[`subtract/${i}`] = 'The longest distance of epochs is whole days from 1 to 2000.'
+      return { on, what, versionId, maxGapDays: days ?? 62 }
+    })
+  }
   return { choice: Object.keys(faults).length ? null : choice, faults }
 }
 
@@ -131,7 +145,8 @@ function readCorrection({ on, what, name, rate, sigma, shared }: CorrectionField
 }
 
 /** Field that an issue of the conversion is about. */
-export function fieldOfIssue(path: string | undefined): TextField {
+export function fieldOfIssue(path: string | undefined): keyof ConversionFaults {
+  if (path?.startsWith('subtract/')) return path as `subtract/${number}`
   if (path === 'density/sigma') return 'densitySigma'
   if (path === 'storage/sigma') return 'storageSigma'
   if (path === 'area/sigma') return 'areaSigma'

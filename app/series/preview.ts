@@ -70,21 +70,23 @@ export function previewOf(source: TableSource, given: ColumnChoices, areaM2: num
     return { state: 'refused', message: error.message, issues: error.issues, columns: columnsOf(source, choices), chosen: recipe ? chosenOf(source, choices) : null }
   }
   const { rows, mjd, massGt, sigmaGt } = reading
-  // Summed rates have one epoch more than rows: each row's sum stands at its end.
-  const extra = mjd.length - rows.length
-  const at = (row: MassSeriesRow, i: number): PreviewRow => ({
-    row: row.row, epochText: row.epochText, valueText: row.valueText, sigma: row.sigma, mjd: mjd[i + extra]!, massGt: massGt[i + extra]!, sigmaGt: sigmaGt?.[i + extra] ?? null,
-  })
-  const cut = rows.length <= 2 * ends ? rows.length : ends
-  const rowOf = mjd.map((_, i) => rows[Math.max(0, i - extra)]?.row ?? 0)
-  const marks = checkSeries({ mjd, massGt, sigmaGt, rows: rowOf, areaM2, others: other ? [other] : [] })
+  const { lineOf } = reading
+  // Summed rates have one epoch more than rows: each row's sum stands at its end. An epoch that a step left out has none.
+  const placeOf = new Map(lineOf.map((line, i) => [line, i]))
+  const kept = rows.filter(row => placeOf.has(row.row))
+  const at = (row: MassSeriesRow): PreviewRow => {
+    const i = placeOf.get(row.row)!
+    return { row: row.row, epochText: row.epochText, valueText: row.valueText, sigma: row.sigma, mjd: mjd[i]!, massGt: massGt[i]!, sigmaGt: sigmaGt?.[i] ?? null }
+  }
+  const cut = kept.length <= 2 * ends ? kept.length : ends
+  const marks = checkSeries({ mjd, massGt, sigmaGt, rows: lineOf, areaM2, others: other ? [other] : [] })
   const marked = new Set(marks.flatMap(mark => mark.rows))
   return {
     state: 'read',
     columns: reading.columns.map(({ index, name, sample }) => ({ index, name, sample })),
     chosen: reading.chosen,
-    head: rows.slice(0, cut).map((row, i) => at(row, i)),
-    tail: rows.slice(Math.max(cut, rows.length - ends)).map((row, i, all) => at(row, rows.length - all.length + i)),
+    head: kept.slice(0, cut).map(at),
+    tail: kept.slice(Math.max(cut, kept.length - ends)).map(at),
     issues: reading.issues,
     notices: reading.notices,
     mjd: Float64Array.from(mjd),
@@ -92,7 +94,7 @@ export function previewOf(source: TableSource, given: ColumnChoices, areaM2: num
     sigmaGt: sigmaGt && Float64Array.from(sigmaGt),
     steps: reading.conversion.steps,
     stepsDone: reading.replayed.steps,
-marks,
+    marks,
     cells: Object.fromEntries(rows.filter(row => marked.has(row.row)).map(row => [row.row, row.valueText])),
     leftOut: reading.leftOut,
     edited: reading.edited,

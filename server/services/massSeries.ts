@@ -1,6 +1,7 @@
 import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import type { Principal } from '#shared/permissions'
+import type { StoredSeries } from '#shared/series/conversionChoice'
 import { readMassSeries, type MassSeriesOptions } from '#shared/series/readMassSeries'
 import { systematicRates, type SystematicRate } from '#shared/series/uncertainty'
 import { InputError } from '#shared/types/issue'
@@ -14,7 +15,7 @@ import { canonicalJson, sha256Hex } from './hash'
 import { keepOriginal, readOriginal, rememberOriginal, uploadTable } from './originals'
 import { latestOutline, regionRow, seriesOfRegion } from './regions'
 import { checksOf } from './seriesChecks'
-import { floats, massSeries, nextVersion, versionRow, versionView } from './seriesStore'
+import { floats, listVersions, massSeries, nextVersion, versionRow, versionView } from './seriesStore'
 
 type NewSeries = BodyOf<typeof contracts.seriesCreate>
 
@@ -24,7 +25,7 @@ export async function createSeriesVersion(context: Context, principal: Principal
   const actor = authorise(principal, 'region.write', { workspaceId: region.workspaceId, kind: region.kind })
   const outline = latestOutline(context, regionId)
   const { sigmaColumn, sheet, ...columns } = body.columns
-  const recipeAsked = body.conversion && await recipeFor(body.conversion, outline.areaM2, columns.withdrawalPositive)
+  const recipeAsked = body.conversion && await recipeFor(body.conversion, outline.areaM2, columns.withdrawalPositive, storedSeries(context, region.workspaceId, body.conversion))
   const options = {
     ...columns, ...(sigmaColumn === undefined ? {} : { sigmaColumn }), areaM2: outline.areaM2, ...(recipeAsked ? { recipe: recipeAsked } : {}),
   } as MassSeriesOptions
@@ -41,7 +42,7 @@ export async function createSeriesVersion(context: Context, principal: Principal
   const recipe = {
     options: { ...options, ...read.chosen }, steps: read.conversion.steps, stepsDone: read.replayed.steps, conversion: body.conversion, ...(sheet === undefined ? {} : { sheet }), outlineSha256: outline.sha256,
     checks: checksOf(context, regionId, read, outline.areaM2, body.decisions), edited: read.edited, leftOutOnPurpose: read.leftOut,
-    rowsRead: read.rowsRead, rowsStored: read.mjd.length, leftOut: read.issues.slice(0, 1000), leftOutCount: read.issues.length, notices: read.notices,
+    rowsRead: read.rowsRead, rowsStored: read.mjd.length, leftOut: read.issues.slice(0, 1000), leftOutCount: read.issues.length, leftOutBySteps: read.replayed.leftOut.slice(0, 1000), notices: read.notices,
   }
   await keepOriginal(context, upload)
   const versionId = newId()
@@ -70,9 +71,17 @@ export async function createSeriesVersion(context: Context, principal: Principal
 }
 
 /** The parser of units is loaded when the first unit is asked for. */
-async function recipeFor(choice: NonNullable<NewSeries['conversion']>, areaM2: number, withdrawalPositive?: boolean) {
+async function recipeFor(choice: NonNullable<NewSeries['conversion']>, areaM2: number, withdrawalPositive: boolean | undefined, stored: StoredSeries[]) {
   const { recipeOfChoice } = await import('#shared/series/conversionChoice')
-  return recipeOfChoice(choice, areaM2, withdrawalPositive)
+  return recipeOfChoice(choice, areaM2, withdrawalPositive, stored)
+}
+
+/** The versions that a conversion takes off, as far as they are of this workspace. */
+function storedSeries(context: Context, workspaceId: string, { subtract = [] }: NonNullable<NewSeries['conversion']>): StoredSeries[] {
+  const known = subtract.length ? listVersions(context, workspaceId).items : []
+  return known.filter(({ id }) => subtract.some(({ versionId }) => versionId === id)).map(version => ({
+    versionId: version.id, dataSha256: version.dataSha256, name: `${regionRow(context, version.regionId).name}, version ${version.n}`, series: massSeries(context, version.id),
+  }))
 }
 
 /** Systematic rates in order of their names; the same source twice is one error, and adds up with its sign. */

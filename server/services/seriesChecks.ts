@@ -15,10 +15,7 @@ export function checksOf(context: Context, regionId: string, read: MassSeriesRea
   const series = seriesOfRegion(context, regionId)
   const last = series ? versionsOf(context, series.id)[0] : undefined
   const others = last ? [{ name: `version ${last.n}`, ...massSeries(context, last.id) }] : []
-  // Summed rates have one epoch more than rows.
-  const extra = read.mjd.length - read.rows.length
-  const rows = read.mjd.map((_, i) => read.rows[Math.max(0, i - extra)]?.row ?? 0)
-  const { marks, gone } = settleMarks(checkSeries({ mjd: read.mjd, massGt: read.massGt, sigmaGt: read.sigmaGt, rows, areaM2, others }), decisions)
+  const { marks, gone } = settleMarks(checkSeries({ mjd: read.mjd, massGt: read.massGt, sigmaGt: read.sigmaGt, rows: read.lineOf, areaM2, others }), decisions)
   const kept = marks.slice(0, mostKept).map(mark => ({ ...mark, rows: mark.rows.slice(0, 20) }))
   return {
     found: marks.length, open: marks.filter(mark => mark.state === 'open').length, marks: kept,

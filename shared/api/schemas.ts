@@ -133,6 +133,8 @@ export const massConversion = z.object({
   area: z.object({ sigmaKm2: finite.min(0), source: name.nullable().default(null) }).nullable().optional(),
   /** Rates that are taken off, Gt per year, gain positive; `on: false` keeps a step without carrying it out. */
   corrections: z.array(z.object({ on: z.boolean().default(true), what: z.enum(correctionKinds), name, gtPerYear: parameter })).max(20).optional(),
+  /** Stored versions of mass series of the same account, taken off at the epochs of this one, between theirs where they are near enough. */
+  subtract: z.array(z.object({ on: z.boolean().default(true), what: z.enum(correctionKinds), versionId: ulid, maxGapDays: z.int().min(1).max(2000).default(62) })).max(10).optional(),
 })
 
 export const measuredPlain = z.object({ value: finite, sigma: finite.min(0) })

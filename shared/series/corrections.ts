@@ -42,9 +42,21 @@ export function subtractSeries(state: Running, { name, series, maxGapDays }: Ser
     massGt: kept.map(({ at, value }) => state.massGt[at]! - value),
     sigmaGt: hasSigma ? kept.map(({ at, variance }) => Math.sqrt((state.sigmaGt?.[at] ?? 0) ** 2 + variance)) : null,
     walkGt2: state.walkGt2 && gathered(state.walkGt2, kept.map(({ at }) => at)),
-    factors: state.factors.map(factor => ({ ...factor, loading: Float64Array.from(kept, ({ at }) => factor.loading[at]!) })),
+    factors: [
+      ...state.factors.map(factor => ({ ...factor, loading: Float64Array.from(kept, ({ at }) => factor.loading[at]!) })),
+      ...systematicFactors(series, kept.map(({ at }) => state.mjd[at]!))
+    ],
     leftOut
   }
+}
+
+/** Systematic errors of the series that is taken off, with their sign turned: a source that both share cancels in part. */
+function systematicFactors({ sharedRates }: SubtractedSeries, mjd: number[]): Running['factors'] {
+  if (!sharedRates || mjd.length === 0) return []
+  const middle = mean(mjd)
+  return sharedRates.filter(({ sigmaGtPerYear }) => sigmaGtPerYear !== 0).map(({ source, sigmaGtPerYear }) => ({
+    source, own: false, loading: Float64Array.from(mjd, t => -sigmaGtPerYear * (t - middle) / JULIAN_YEAR_DAYS)
+  }))
 }
 
 /** Variances that enter between two epochs that are kept enter at the later one. */

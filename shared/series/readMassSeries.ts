@@ -51,6 +51,8 @@ export interface MassSeriesReading {
   }
   /** Good rows in order of time. */
   rows: MassSeriesRow[]
+  /** Line in the file of each epoch that is stored. */
+  lineOf: number[]
   /** One entry for each row that cannot be used, in order of the file: rowsRead = rows.length + issues.length + leftOut.length. */
   issues: Issue[]
   /** Rows that were left out on purpose, and cells that were put right, as they were. */
@@ -116,10 +118,11 @@ export function* seriesSteps(table: Table, options: MassSeriesOptions): Steps<Ma
     columns: recognised.columns,
     chosen,
     rows,
+    lineOf: linesOf(rows, replayed, needsPeriods),
     issues,
     leftOut,
     edited,
-    notices: notices(rows, recipe, sortedRows),
+    notices: [...notices(rows, recipe, sortedRows), ...uncovered(replayed)],
     table: values,
     recipe,
     replayed,
@@ -144,6 +147,20 @@ function tableOf(rows: readonly MassSeriesRow[]): SeriesTable {
     value: rows.map(row => row.value),
     sigma: rows.length > 0 && rows[0]!.sigma !== null ? rows.map(row => row.sigma!) : null
   }
+}
+
+/** Lines of the epochs that stay: summed rates have one epoch more than rows, and a step may have left some out. */
+function linesOf(rows: readonly MassSeriesRow[], { leftOut }: Replayed, summed: boolean): number[] {
+  const gone = new Set(leftOut.map(({ mjd }) => mjd))
+  const epochs = summed && rows.length > 0 ? [{ mjd: rows[0]!.startMjd, row: rows[0]!.row }, ...rows.map(({ endMjd, row }) => ({ mjd: endMjd, row }))] : rows
+  return epochs.filter(({ mjd }) => !gone.has(mjd)).map(({ row }) => row)
+}
+
+/** Epochs that a step left out, as one notice. */
+function uncovered({ leftOut }: Replayed): Issue[] {
+  if (leftOut.length === 0) return []
+  const first = leftOut.slice(0, 3).map(({ message }) => message).join(' ')
+  return [{ code: 'not-covered', message: `${leftOut.length === 1 ? 'One epoch is' : `${leftOut.length} epochs are`} left out, since nothing is carried on beyond a series that is taken off. ${first}${leftOut.length > 3 ? ' …' : ''}` }]
 }
 
 /** Size of the step from a unit of the file to gigatonnes (per year for a rate), its sign left out. */

@@ -18,7 +18,16 @@ export const correctionKinds = ['isostatic', 'surface-water', 'soil-water', 'sno
 export type CorrectionKind = typeof correctionKinds[number]
 
 /** Another series, on its own epochs, in Gt. */
-export interface SubtractedSeries { mjd: number[], massGt: number[], sigmaGt: number[] | null }
+export interface SubtractedSeries {
+  mjd: number[]
+  massGt: number[]
+  sigmaGt: number[] | null
+  /** Its systematic errors, Gt per year: the same sources as in other series, with the sign turned by subtraction. */
+  sharedRates?: { source: string, sigmaGtPerYear: number }[]
+}
+
+/** The stored version that a subtracted series is. */
+export interface SubtractedVersion { versionId: string, dataSha256: string }
 
 /**
  * One step from the values of a file to gigatonnes. Plain data: it is stored with the version as JSON and can be replayed. A step with
@@ -32,7 +41,7 @@ export type RecipeStep =
   | { kind: 'area', parameter: Parameter }
   | { kind: 'integrate', perPeriod: boolean }
   | { kind: 'subtract-rate', on: boolean, what: CorrectionKind, name: string, gtPerYear: Parameter }
-  | { kind: 'subtract-series', on: boolean, what: CorrectionKind, name: string, series: SubtractedSeries, maxGapDays: number }
+  | { kind: 'subtract-series', on: boolean, what: CorrectionKind, name: string, series: SubtractedSeries, maxGapDays: number, of?: SubtractedVersion }
 
 export interface Recipe { version: 1, steps: RecipeStep[] }
 

@@ -40,6 +40,35 @@ describe('a fit over the API', () => {
   })
 })
 
+describe('another series that is taken off', () => {
+  it('is a step with its version and hash, by which the values can be made again', async () => {
+    const [whole, lake] = [await makeRegion(lead, place, 'basin', square(40, 10)), await makeRegion(lead, place, 'lake', square(40, 10, 0.2))]
+    const other = await makeVersion(lead, lake.id, monthlyCsv(3, -2, 0))
+    const conversion = { quantity: 'mass', unit: 'Gt', subtract: [{ what: 'surface-water', versionId: other.id }] }
+    const version = await lead.get('seriesCreate', { params: { id: whole.id }, body: { ...seriesFacts, columns: {}, conversion }, file: { name: 'mass.csv', content: monthlyCsv(4, -12, 0) } })
+    // Three years of the other series: the fourth year is left out, and the trend is −12 − (−2).
+    const { massGt, sigmaGt, recipe } = await lead.get('seriesVersionRead', { params: { id: version.id } })
+    expect(version.count).toBe(36)
+    expect((massGt.at(-1)! - massGt[0]!) / (35 / 12)).toBeCloseTo(-10, 2)
+    expect(sigmaGt![0]).toBeCloseTo(Math.hypot(2, 2), 12)
+    const steps = (recipe.options as { recipe: { steps: { kind: string, of?: object }[] } }).recipe.steps
+    expect(steps.at(-1)).toMatchObject({ kind: 'subtract-series', of: { versionId: other.id, dataSha256: other.dataSha256 } })
+    expect((recipe.leftOutBySteps as unknown[]).length).toBe(12)
+
+    const off = await lead.get('seriesCreate', { params: { id: whole.id }, body: { ...seriesFacts, columns: {}, conversion: { ...conversion, subtract: [{ ...conversion.subtract[0], on: false }] } }, file: { name: 'mass.csv', content: monthlyCsv(4, -12, 0) } })
+    expect(off.count).toBe(48)
+  })
+
+  it('of another account is not there', async () => {
+    const elsewhere = addWorkspace(dataDir, 'Elsewhere')
+    const stranger = await newcomer(url, dataDir, { place: elsewhere, role: 'lead' })
+    const theirs = await makeVersion(stranger, (await makeRegion(stranger, elsewhere, 'lake')).id)
+    const conversion = { quantity: 'mass', unit: 'Gt', subtract: [{ what: 'snow', versionId: theirs.id }] }
+    const problem = await lead.refused('seriesCreate', 422, { params: { id: regionId }, body: { ...seriesFacts, columns: {}, conversion }, file: { name: 'mass.csv', content: monthlyCsv(3, 1) } })
+    expect(problem.issues).toEqual([expect.objectContaining({ path: 'subtract/0' })])
+  })
+})
+
 describe('fields of a version', () => {
   const facts = { citation: 'A made-up report (2020)', method: 'mascons', instrument: 'ranging', contains: ['all'], gravimetry: 'yes', pole: 'yes', lengthOfDay: 'no' }
 

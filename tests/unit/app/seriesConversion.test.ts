@@ -30,6 +30,22 @@ describe('fields of a conversion', () => {
     })
   })
 
+  it('take a stored series off, and the preview tells which epochs it does not reach', () => {
+    const fields: ConversionFields = { ...start, subtract: [{ on: true, what: 'snow', versionId: 'v', maxGapDays: '40' }, { on: true, what: 'snow', versionId: '', maxGapDays: '40' }, { on: true, what: 'snow', versionId: 'v', maxGapDays: 'x' }] }
+    expect(Object.keys(readConversion(fields, readFigure).faults)).toEqual(['subtract/1', 'subtract/2'])
+    const { choice } = readConversion({ ...fields, subtract: fields.subtract.slice(0, 1) }, readFigure)
+    expect(() => recipeOfChoice(choice!, areaM2)).toThrow(expect.objectContaining({ issues: [expect.objectContaining({ path: 'subtract/0' })] }))
+    // MJD 55197 is 1 January 2010 (IERS).
+    const recipe = recipeOfChoice(choice!, areaM2, false, [{ versionId: 'v', dataSha256: 'a', name: 'Snow field, version 2', series: { mjd: [55197, 55228], massGt: [0, 31], sigmaGt: null, sharedRates: [] } }])
+    expect(recipe.steps.at(-1)).toMatchObject({ kind: 'subtract-series', of: { versionId: 'v', dataSha256: 'a' } })
+    const preview = read('date,mass (Gt)\n2009-12-01,100\n2010-01-01,100\n2010-01-11,100\n2010-03-01,100\n', {}, { recipe })
+    expect([...preview.massGt]).toEqual([100, 90])
+    expect(preview.head.map(row => row.row)).toEqual([3, 4])
+    expect(preview.notices.find(n => n.code === 'not-covered')!.message).toMatch(/2 epochs are left out/)
+    expect(fieldOfIssue('subtract/3')).toBe('subtract/3')
+    expect(fieldsOfDraft(JSON.parse(JSON.stringify(fields)))!.subtract).toHaveLength(3)
+  })
+
   it('say field by field what is missing or no number', () => {
     const { choice, faults } = readConversion(head({ unit: ' ', storage: '', storageSigma: 'x', areaSigma: '-1' }), readFigure)
     expect(choice).toBeNull()

@@ -170,6 +170,15 @@ describe('corrections', () => {
     expect(done.leftOut.map(l => l.message.split('“lakes” ')[1])).toEqual(['begins later.', 'has a gap of 365 days there, more than 92.', 'has a gap of 365 days there, more than 92.', 'has ended.'])
     expect(done.steps[1]!.sentence).toContain('4 epochs that it does not cover are left out')
   })
+
+  it('brings the systematic errors of the series along with their sign turned, so that a source of both cancels in part', () => {
+    const mjd = Array.from({ length: 25 }, (_, i) => 55000 + i * 30)
+    const other = { mjd, massGt: mjd.map(() => 1), sigmaGt: null, sharedRates: [{ source: 'isostatic adjustment model', sigmaGtPerYear: 3 }] }
+    const step: RecipeStep = { kind: 'subtract-series', on: true, what: 'leakage', name: 'around', series: other, maxGapDays: 62 }
+    const rates = systematicRates(replayRecipe(recipe(step), { mjd, startMjd: null, endMjd: null, value: mjd.map(() => 2), sigma: null }), 'own')
+    // The trend of a straight line is its slope: the error of the difference is −3 Gt per year.
+    expect(rates).toEqual([{ source: 'isostatic adjustment model', sigmaGtPerYear: expect.closeTo(-3, 10) as number }])
+  })
 })
 
 describe('uncertainty of a series', () => {
