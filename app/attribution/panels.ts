@@ -1,51 +1,43 @@
 import type { ComparedReport } from '#shared/attribution/compared'
 import type { ForwardReport, Ut1Report } from '#shared/attribution/poleAndUt1'
 import type { RotationQuantity } from '#shared/attribution/types'
+import { coveredMonths } from '#shared/figures/series/comparisonFigure'
+import { secularLine, secularPath } from '~/observed/secular'
 import type { PolePath } from '#shared/figures/drift/polePathFigure'
 import type { SeriesData } from '#shared/figures/series/data'
 
 const titles: Readonly<Record<RotationQuantity, string>> = { lod: 'Excess length of day', chi1: 'Excitation towards 0°', chi2: 'Excitation towards 90° E' }
 const symbols: Readonly<Record<RotationQuantity, string>> = { lod: 'ΔLOD', chi1: 'χ₁', chi2: 'χ₂' }
 
-/** Stretches of months that hold a value, MJD. */
-function covered(mjd: readonly number[], value: readonly (number | null)[]): [number, number][] {
-  const spans: [number, number][] = []
-  let open = false
-  mjd.forEach((t, i) => {
-    if (value[i] === null || value[i] === undefined) {
-      open = false
-      return
-    }
-    if (open) spans.at(-1)![1] = t
-    else spans.push([t, t])
-    open = true
-  })
-  return spans
-}
-
-/** Observed and model with its one-sigma above, residual below, and the months that each of them covers. */
-export function comparedPanels(mjd: readonly number[], quantity: RotationQuantity, data: ComparedReport): SeriesData[] {
+/**
+ * Observed and model with its one-sigma above, residual below, and the months that each of them covers; beside the pole, where the trend
+ * is in, the secular pole about its own mean.
+ */
+export function comparedPanels(mjd: readonly number[], quantity: RotationQuantity, data: ComparedReport, secular = false): SeriesData[] {
   const unit = `${symbols[quantity]}, ${data.unit}`
+  const line = secular && quantity !== 'lod' ? [secularLine(quantity, mjd.filter((_, j) => data.observed[j] !== null && data.model[j] !== null), 'about its mean')] : []
   return [
     {
       title: `${titles[quantity]}: observed and model`, unit,
-      series: [{ label: 'observed', role: 'observed', mjd, value: data.observed }, { label: 'model ± 1σ', role: 'model', mjd, value: data.model, sigma: data.modelSigma }],
-      coverage: [{ label: 'observed', spans: covered(mjd, data.observed) }, { label: 'model', spans: covered(mjd, data.model) }],
+      series: [{ label: 'observed', role: 'observed', mjd, value: data.observed }, { label: 'model ± 1σ', role: 'model', mjd, value: data.model, sigma: data.modelSigma }, ...line],
+      coverage: [{ label: 'observed', spans: coveredMonths(mjd, data.observed) }, { label: 'model', spans: coveredMonths(mjd, data.model) }],
     },
     { title: `${titles[quantity]}: residual`, unit, series: [{ label: 'residual', role: 'residual', mjd, value: data.residual }] },
   ]
 }
 
-/** Observed and predicted way over the pole plane: x is χ₁'s axis, towards 0°; −y is χ₂'s, towards 90° E. */
+/** Observed and predicted way over the pole plane, with the secular pole drawn beside them: x is χ₁'s axis, towards 0°; −y is χ₂'s, towards 90° E. */
 export function polePaths({ stretches }: ForwardReport): PolePath[] {
+  const all = stretches.flatMap(stretch => stretch.mjd)
+  const secular = all.length > 0 ? [secularPath(all[0]!, all.at(-1)!)] : []
   const minus = (values: (number | null)[]) => values.map(v => v === null ? null : -v)
-  return stretches.flatMap((stretch, i): PolePath[] => {
+  return [...secular, ...stretches.flatMap((stretch, i): PolePath[] => {
     const number = stretches.length > 1 ? ` ${i + 1}` : ''
     return [
       { label: `observed${number}`, role: 'observed', mjd: stretch.mjd, chi1: stretch.observedXMas, chi2: minus(stretch.observedYMas) },
       { label: `predicted${number}`, role: 'model', mjd: stretch.mjd, chi1: stretch.xMas, chi2: minus(stretch.yMas) },
     ]
-  })
+  })]
 }
 
 /** UT1 difference since the start of each stretch, ms, with its growing one-sigma. */

@@ -16,6 +16,7 @@ export function useAttribution(runId: string, observedId: () => string | null) {
     const asked = Number(route.query.prior)
     return route.query.prior !== undefined && asked >= 0.01 && asked <= 100 ? asked : 0.5
   })
+  const groups = computed(() => typeof route.query.groups === 'string' && route.query.groups ? route.query.groups : undefined)
   let asked: AbortController | null = null
 
   async function load() {
@@ -29,7 +30,7 @@ export function useAttribution(runId: string, observedId: () => string | null) {
     const own = asked = new AbortController()
     pending.value = true
     try {
-      const answer = await api('runAttribution', { params: { id: runId }, query: { observed, chain: chain.value, prior: prior.value }, signal: own.signal })
+      const answer = await api('runAttribution', { params: { id: runId }, query: { observed, chain: chain.value, prior: prior.value, groups: groups.value }, signal: own.signal })
       if (!own.signal.aborted) report.value = answer
     }
     catch (error) {
@@ -40,7 +41,7 @@ export function useAttribution(runId: string, observedId: () => string | null) {
     }
   }
   onMounted(() => void load())
-  watch([observedId, chain, prior], () => void load())
+  watch([observedId, chain, prior, groups], () => void load())
   onScopeDispose(() => asked?.abort())
-  return { report, fault, pending, chain, prior, load }
+  return { report, fault, pending, chain, prior, groups, load }
 }

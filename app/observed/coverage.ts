@@ -1,3 +1,5 @@
+import type { SeriesData } from '#shared/figures/series/data'
+
 /** Distance between epochs beyond which a line is broken. Missing values break it too; points of a thinned series are unevenly apart. */
 export function longestStep(mjd: readonly number[]): number {
   const steps = mjd.slice(1).map((t, i) => t - mjd[i]!).sort((a, b) => a - b)
@@ -15,4 +17,12 @@ export function coveredSpans({ mjd, value }: { mjd: readonly number[], value: re
     else spans.push([t, t])
   })
   return spans
+}
+
+/** Panels over one time axis with one strip for each quantity below them all, or a single one where all cover the same. */
+export function withSharedCoverage(panels: SeriesData[]): SeriesData[] {
+  const rows = panels.flatMap(panel => (panel.coverage ?? []).map(row => ({ ...row, label: panel.unit.split(',')[0]! })))
+  const same = new Set(rows.map(row => JSON.stringify(row.spans))).size < 2
+  const coverage = same ? rows.slice(0, 1).map(row => ({ ...row, label: 'values' })) : rows
+  return panels.map((panel, i) => ({ ...panel, coverage: i === 0 ? coverage : undefined }))
 }

@@ -1,7 +1,8 @@
 import type { AnswerOf } from '#shared/api/contract'
 import type { contracts } from '#shared/api/contracts'
 import type { FigureSeries, SeriesData } from '#shared/figures/series/data'
-import { coveredSpans } from './coverage'
+import { coveredSpans, withSharedCoverage } from './coverage'
+import { secularLine } from './secular'
 
 /** Columns of an observed series as a page gets them, or as a reader of files gives them. */
 export type ObservedColumns = Pick<AnswerOf<typeof contracts.observedRead>, 'mjd' | 'lodMs' | 'xMas' | 'yMas' | 'sigmaLodMs' | 'sigmaXMas' | 'sigmaYMas' | 'predicted'>
@@ -36,9 +37,10 @@ export function observedPanels(data: ObservedColumns): SeriesData[] {
     const seen = predicting ? part(0) : column
     const series = [line('observed', 'observed', seen)]
     if (predicting && column.some((v, i) => v !== null && data.predicted[i] === 1)) series.push(line('predicted, not used', 'residual', part(1)))
+    if (value === 'xMas' || value === 'yMas') series.push(secularLine(value === 'xMas' ? 'x' : 'y', data.mjd))
     return [{ title, unit, series, coverage: [{ label: 'values', spans: coveredSpans({ mjd: data.mjd, value: seen }) }] }]
   })
-  return [...coefficientPanels(data), ...found]
+  return withSharedCoverage([...coefficientPanels(data), ...found])
 }
 
 const coefficientKinds = [

@@ -4,6 +4,7 @@ import { defaultChain, readChain } from '#shared/observed/readChain'
 import { counted, listed } from '#shared/text/words'
 import { InputError, type Issue } from '#shared/types/issue'
 import { coveredSpans, longestStep } from './coverage'
+import { secularLine } from './secular'
 import type { FigureSeries, SeriesData } from '#shared/figures/series/data'
 import type { PlainChainResult, PlainPanel, PlainTrack } from '#shared/observed/chainPlain'
 import type { Chain, ChainQuantity, ChainStep } from '#shared/observed/chainTypes'
@@ -95,14 +96,15 @@ export function panelCharts(panel: PlainPanel, title: string): { part: PanelPart
   })
 }
 
-/** A chart of what a reduction left, with the time that it covers. */
-export function afterChart(quantity: ChainQuantity, track: PlainTrack): SeriesData {
+/** A chart of what a reduction left, with the time that it covers; beside the excitation of the pole, if asked for, the secular pole. */
+export function afterChart(quantity: ChainQuantity, track: PlainTrack, secular = false): SeriesData {
   const unit = quantity === 'lod' || quantity === 'ut1' ? 'ms' : 'mas'
   const chart = trackChart(track, quantity, unit, `${quantityTexts[quantity].name}, after the last step`, 'observed', 'observed, reduced')
-  return { ...chart, coverage: [{ label: 'values', spans: coveredSpans(track) }] }
+  const series = secular && (quantity === 'chi1' || quantity === 'chi2') ? [...chart.series, secularLine(quantity, track.mjd)] : chart.series
+  return { ...chart, series }
 }
 
 function trackChart(track: PlainTrack, quantity: ChainQuantity, unit: string, title: string, role: FigureSeries['role'], label: string): SeriesData {
   const { symbol } = quantityTexts[quantity]
-  return { title, unit: `${symbol}, ${unit}`, series: [{ label, role, mjd: track.mjd, value: track.value, maxGapDays: longestStep(track.mjd) }] }
+  return { title, unit: `${symbol}, ${unit}`, series: [{ label, role, mjd: track.mjd, value: track.value, maxGapDays: longestStep(track.mjd) }], coverage: [{ label: 'values', spans: coveredSpans(track) }] }
 }

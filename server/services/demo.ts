@@ -1,16 +1,22 @@
 import { writeFile, mkdir } from 'node:fs/promises'
 import { join } from 'node:path'
 import type { ScenarioDraft } from '#shared/api/schemas'
+import type { ChainStep } from '#shared/observed/chainTypes'
+import { defaultChain } from '#shared/observed/readChain'
 import type { Principal } from '#shared/permissions'
 import type { SeriesFacts } from '#shared/series/facts'
 import type { RegionKind, Role } from '#shared/types/domain'
 import { publishedBackground } from '#shared/text/background'
 import { schema } from '../database/client'
 import type { Upload } from '../utils/body'
+import { createFluid } from './angularMomentum'
+import { createChain } from './chains'
 import { newId } from './change'
 import type { Context } from './context'
+import { demoFluidFields, demoFluidText, demoGravityCsv, demoGravityFields } from './demoFluids'
 import { demoObservedCsv, demoRegions, demoSeriesCsv } from './demoData'
 import { publish } from './editions'
+import { createGravity } from './gravity'
 import { secretToken, sha256Hex } from './hash'
 import { createSeriesVersion } from './massSeries'
 import { createObserved } from './observed'
@@ -28,6 +34,7 @@ const people: { mailbox: string, name: string, role: Role, agency: 0 | 1 }[] = [
   { mailbox: 'glaciologist', name: 'Ilsa Tessen', role: 'glaciologist', agency: 1 },
   { mailbox: 'reader', name: 'Odo Larke', role: 'reader', agency: 1 },
 ]
+const orientationSeed = 77
 const noteOfInvention = 'Invented for the demonstration; made by a seeded generator.'
 
 /**
@@ -83,7 +90,8 @@ async function seedAccount(context: Context, workspaceId: string, agencies: read
     choices.push({ regionId: region.id, versionId: versionsOf(context, seriesOfRegion(context, region.id)!.id)[0]!.id, scale: 1 })
   }
   const lead = principals.get('lead')!
-  const observed = await createObserved(context, lead, workspaceId, await asUpload(context, demoObservedCsv(77), 'synthetic-orientation.csv'), {
+  await seedReductions(context, lead, workspaceId)
+  const observed = await createObserved(context, lead, workspaceId, await asUpload(context, demoObservedCsv(orientationSeed), 'synthetic-orientation.csv'), {
     name: 'Synthetic Earth orientation 2004–2024', reason: 'First version', source: 'Synthetic: made by a seeded generator, no observation.', licence: 'CC BY 4.0', independence: 'Synthetic', leaveOutBadRows: false,
   })
   const scenario = createScenario(context, lead, workspaceId, {
@@ -95,6 +103,23 @@ async function seedAccount(context: Context, workspaceId: string, agencies: read
     },
   })
   return scenario.id
+}
+
+/** Air, sea and gravity coefficients that belong to the synthetic orientation, and a chain under a name that takes air and sea out. */
+async function seedReductions(context: Context, lead: Principal, workspaceId: string) {
+  const facts = { source: noteOfInvention, licence: 'CC BY 4.0', leaveOutBadRows: false }
+  const fluids: ChainStep[] = []
+  for (const [i, component] of (['atmosphere', 'ocean'] as const).entries()) {
+    const name = component === 'atmosphere' ? 'Invented air' : 'Invented sea'
+    const { id } = await createFluid(context, lead, workspaceId, await asUpload(context, demoFluidText(component, orientationSeed, 200 + i), `invented-${component}.txt`), { ...facts, name, fields: demoFluidFields[component] })
+    fluids.push({ kind: 'angular-momentum', on: true, correction: id, mass: true, motion: true, trend: false })
+  }
+  await createGravity(context, lead, workspaceId, await asUpload(context, demoGravityCsv(300), 'invented-degree-2.csv'), {
+    ...facts, name: 'Invented gravity coefficients 2004–2024', independence: 'Invented', fields: demoGravityFields,
+  })
+  const usual = defaultChain()
+  const chain = { ...usual, steps: usual.steps.flatMap(step => step.kind === 'excitation' ? [step, ...fluids] : [step]) }
+  createChain(context, lead, workspaceId, { name: 'Tides, air and sea out', chain: { ...chain } })
 }
 
 /** Fields of an invented series: what a region of its kind holds. */

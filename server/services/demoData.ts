@@ -62,13 +62,12 @@ function uniform(seed: number) {
 }
 
 /** Gaussian numbers of mean 0 and variance 1 (Box and Muller, 1958). */
-function gaussian(seed: number) {
+export function gaussian(seed: number) {
   const next = uniform(seed)
   return () => Math.sqrt(-2 * Math.log(1 - next())) * Math.cos(2 * Math.PI * next())
 }
 
-const first = 2004
-const last = 2024
+export const [first, last] = [2004, 2024]
 
 /** Monthly mass of one region with its one-sigma, as the CSV that a specialist would bring. */
 export function demoSeriesCsv(region: DemoRegion, seed: number): string {
@@ -92,11 +91,20 @@ export function demoSeriesCsv(region: DemoRegion, seed: number): string {
  * decadal wander, a season and the fortnightly tide. It looks like the real one; it observes nothing.
  */
 export function demoObservedCsv(seed: number): string {
-  const draw = gaussian(seed)
   const lines = ['# Synthetic: made by a seeded generator for the demonstration, no observation', 'mjd,date,x_mas,y_mas,lod_ms,sigma_x,sigma_y,sigma_lod']
+  for (const { mjd, x, y, lod } of demoDays(seed)) lines.push(`${mjd},${isoDateFromMjd(mjd)},${x.toFixed(3)},${y.toFixed(3)},${lod.toFixed(4)},0.050,0.050,0.0100`)
+  return `${lines.join('\n')}\n`
+}
+
+/** Angle, radians, of a wave of some period in days with a phase. */
+export const turn = (days: number, period: number, phase: number) => 2 * Math.PI * days / period + phase
+
+/** Days of the synthetic orientation: pole in mas, length of day in ms, and the wander in it that its air makes. */
+export function demoDays(seed: number): { mjd: number, x: number, y: number, lod: number, wander: number }[] {
+  const draw = gaussian(seed)
   const from = mjdFromIsoDate(`${first}-01-01`)
   const to = mjdFromIsoDate(`${last}-12-31`)
-  const turn = (days: number, period: number, phase: number) => 2 * Math.PI * days / period + phase
+  const list: ReturnType<typeof demoDays> = []
   let slow = 0
   let wander = 0
   for (let mjd = from; mjd <= to; mjd++) {
@@ -108,7 +116,7 @@ export function demoObservedCsv(seed: number): string {
     const y = 335 + 1.4 * years - 145 * Math.sin(turn(days, 433, 0.4)) - 80 * Math.sin(turn(days, 365.25, 2.1)) + 0.05 * draw()
     const lod = 0.72 + 0.42 * Math.sin(turn(days, 5600, 2.4)) - 0.012 * years + slow + 0.34 * Math.cos(turn(days, 365.25, 0.6)) + 0.29 * Math.cos(turn(days, 182.62, 3.6))
       + 0.36 * Math.cos(turn(days, 13.6608, 1)) + 0.19 * Math.cos(turn(days, 27.5546, 2)) + wander
-    lines.push(`${mjd},${isoDateFromMjd(mjd)},${x.toFixed(3)},${y.toFixed(3)},${lod.toFixed(4)},0.050,0.050,0.0100`)
+    list.push({ mjd, x, y, lod, wander })
   }
-  return `${lines.join('\n')}\n`
+  return list
 }

@@ -7,8 +7,10 @@ export const attributionQuery = z.object({
   observed: ulid,
   /** The reduction of the observed series: “usual”, the id of a kept one, or JSON; the usual one where it is left out. */
   chain: chainText.optional(),
-  /** One-sigma of the prior of every factor, about 1. */
+  /** One-sigma of the prior, about 1, of every factor that has none of its own. */
   prior: z.coerce.number().min(0.01, 'must be at least 0.01').max(100).default(0.5),
+  /** Regions taken together and priors, as JSON: [{ "name", "regions": [keys of the run], "prior": { "mean", "sigma" } or null }]. */
+  groups: z.string().max(6000).optional(),
 })
 
 const column = z.array(z.number().nullable())

@@ -210,6 +210,7 @@ function sentencesOf({ correlation, lagMonths, bands: list, months, missing, bri
     ...(lagMonths && correlation && correlation.pValue < 0.05 && Math.abs(lagMonths.steps) >= 1
       ? [`The two agree best with the model ${Math.abs(lagMonths.steps).toFixed(1)} months ${lagMonths.steps > 0 ? 'late' : 'early'}${lagMonths.atEdge ? ', the longest lag that was tried' : ''}.`]
       : []),
+    ...(lagMonths && correlation && correlation.pValue < 0.05 && Math.abs(lagMonths.steps) < 1 ? ['No lag of a month or more, either way, makes the two agree better.'] : []),
     ...(missing > 0 ? [`${missing} month${missing === 1 ? '' : 's'} between ${missing === 1 ? 'has' : 'have'} no value${bridged > 0 ? `; ${bridged} of them ${bridged === 1 ? 'was' : 'were'} bridged by straight lines for the bands alone` : ''}.`] : [])
   ]
 }

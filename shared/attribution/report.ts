@@ -11,8 +11,11 @@ import { attributionBudget } from './budget.ts'
 import type { AttributionBudget } from './budget.ts'
 import { comparedQuantities } from './compared.ts'
 import type { ComparedReport } from './compared.ts'
+import { readGroups } from './groups.ts'
+import type { ScalingGroup } from './groups.ts'
 import { identifiability } from './identifiability.ts'
 import type { Identifiability } from './identifiability.ts'
+import { netRegions } from './netRegions.ts'
 import { observedMonths, observedTrends } from './observedMonths.ts'
 import type { ReducedMonths } from './observedMonths.ts'
 import { forwardReport, ut1Report } from './poleAndUt1.ts'
@@ -38,8 +41,10 @@ export interface AttributionTask {
   gravity?: GravityFields
   /** What the mass of each region was made from, for the warning about circular comparisons. */
   bases: { key: string, name: string, bases: Basis[] }[]
-  /** One-sigma of the prior of every factor, about 1. */
+  /** One-sigma of the prior, about 1, of every factor that has none of its own. */
   priorSigma: number
+  /** Regions that get one factor together, and priors of their own, as JSON that `readGroups` checks; absent: every region by itself. */
+  groups?: unknown
 }
 
 /** As JSON: null stands for an infinite condition. */
@@ -75,13 +80,14 @@ export interface AttributionReport {
  *
  * @throws InputError for a chain that does not hold for this series
  */
-export function attributionReport({ input, result, series, chain, chainName = null, corrections, gravity, bases, priorSigma }: AttributionTask): AttributionReport {
+export function attributionReport({ input, result, series, chain, chainName = null, corrections, gravity, bases, priorSigma, groups: given }: AttributionTask): AttributionReport {
   const reduced = runChain(series, chain, { corrections, gravity })
   const months = observedMonths(reduced, result.epochsMjd)
   const loose = observedMonths(reduced, result.epochsMjd, 'out')
   const { rates } = observedTrends(months)
-  const data = dataOf(input, result, months)
-  const looseData = dataOf(input, result, loose)
+  const groups = given === undefined ? [] : readGroups(given, netRegions(result).filter(region => region.scale !== 0))
+  const data = dataOf(input, result, months, groups)
+  const looseData = dataOf(input, result, loose, groups)
   const smoothed = chain.steps.some(step => step.on && step.kind === 'smoothing')
   const unseasoned = chain.steps.some(step => step.on && step.kind === 'seasons')
   const factors = (variant: ScalingVariant): ScalingReport => {
@@ -89,7 +95,7 @@ export function attributionReport({ input, result, series, chain, chainName = nu
     if ('reason' in source) return { scaling: null, reason: source.reason }
     if (smoothed) return { scaling: null, reason: 'The observed series is smoothed and the regions are not: switch the smoothing off to estimate factors.' }
     if (variant === 'annual' && unseasoned) return { scaling: null, reason: 'The seasons were taken out of the observed series.' }
-    const priors = Object.fromEntries(source.groups.map(({ key }) => [key, { mean: 1, sigma: priorSigma }]))
+    const priors = Object.fromEntries(source.groups.map(({ key }) => [key, groups.find((_, i) => keyOfGroup(i) === key)?.prior ?? { mean: 1, sigma: priorSigma }]))
     const scaling = estimateScaling(source, { band: variant === 'annual' ? 'annual' : 'interannual', trend: variant === 'interannual' ? 'in' : 'out', priors })
     return { scaling: { ...scaling, condition: Number.isFinite(scaling.condition) ? scaling.condition : null }, reason: null }
   }
@@ -114,10 +120,12 @@ export function attributionReport({ input, result, series, chain, chainName = nu
   }
 }
 
+const keyOfGroup = (i: number): string => `group ${i + 1}`
+
 /** Data of the estimates, or why there are none. */
-function dataOf(input: RunInput, result: RunResult, months: ReducedMonths & ObservedMonths): AttributionData | { reason: string } {
+function dataOf(input: RunInput, result: RunResult, months: ReducedMonths & ObservedMonths, groups: readonly ScalingGroup[]): AttributionData | { reason: string } {
   try {
-    return assembleAttribution(input, result, months)
+    return assembleAttribution(input, result, months, { groups: groups.map(({ name, regions }, i) => ({ key: keyOfGroup(i), name, regions })) })
   } catch (error) {
     if (error instanceof InputError) return { reason: error.issues[0]?.message ?? error.message }
     throw error

@@ -39,9 +39,10 @@ export function polePathFigure(paths: readonly PolePath[], options: FigureOption
     const style = lineStyle(path.role, palette)
     for (const { mjd, points } of stretches[i]!) {
       const drawn = points.map(at)
-      canvas.path(pathThrough(thinned(drawn)), { 'stroke': style.stroke, 'stroke-width': style.width, 'stroke-linejoin': 'round' })
+      canvas.path(pathThrough(thinned(drawn)), { 'stroke': style.stroke, 'stroke-width': style.width, 'stroke-dasharray': style.dashes, 'stroke-linejoin': 'round' })
       for (let k = 1; k < drawn.length; k += Math.max(1, Math.floor(drawn.length / 300))) segments.push([drawn[k - 1]!, drawn[k]!])
-      marks.push(...yearMarks(mjd, drawn))
+      // A straight line needs no years: those of the pole beside it say when.
+      if (path.role !== 'secular') marks.push(...yearMarks(mjd, drawn))
     }
     const last = stretches[i]!.at(-1)?.points.at(-1)
     if (last) canvas.add('circle', { cx: at(last)[0], cy: at(last)[1], r: 4, fill: style.stroke })

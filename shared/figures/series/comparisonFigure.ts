@@ -26,9 +26,26 @@ export function comparisonPanels(
         { label: options.observedLabel ?? 'observed', role: 'observed', mjd, value: data.observed },
         { label: options.sigma ? 'model ± 1σ' : 'model', role: 'model', mjd, value: data.model, sigma: options.sigma },
       ],
+      coverage: [{ label: 'observed', spans: coveredMonths(mjd, data.observed) }, { label: 'model', spans: coveredMonths(mjd, data.model) }],
     },
     { title: titles[quantity], unit: data.unit, series: [{ label: 'residual', role: 'residual', mjd, value: data.residual }] },
   ]
+}
+
+/** Stretches of months that hold a value, MJD: neighbours in a list of months belong together, a missing one parts them. */
+export function coveredMonths(mjd: readonly number[], value: readonly (number | null)[]): [number, number][] {
+  const spans: [number, number][] = []
+  let open = false
+  mjd.forEach((t, i) => {
+    if (value[i] === null || value[i] === undefined) {
+      open = false
+      return
+    }
+    if (open) spans.at(-1)![1] = t
+    else spans.push([t, t])
+    open = true
+  })
+  return spans
 }
 
 /** Observed and model over one another, the residual below on the same time axis. */
@@ -50,5 +67,5 @@ const runTitles: Record<ComparedQuantity | 'mass', { title: string, unit: string
 export function totalSeriesData(epochsMjd: number[], series: RunTotalSeries, quantity: ComparedQuantity | 'mass'): SeriesData {
   const value = { mass: series.massGt, lod: series.lodMicroseconds, chi1: series.chi1Mas, chi2: series.chi2Mas }[quantity]
   const sigma = { mass: null, lod: series.sigmaLodMicroseconds, chi1: series.sigmaChi1Mas, chi2: series.sigmaChi2Mas }[quantity]
-  return { ...runTitles[quantity], series: [{ label: sigma ? 'model ± 1σ' : 'model', role: 'model', mjd: epochsMjd, value, sigma }] }
+  return { ...runTitles[quantity], series: [{ label: sigma ? 'model ± 1σ' : 'model', role: 'model', mjd: epochsMjd, value, sigma }], coverage: [{ label: 'model', spans: coveredMonths(epochsMjd, value) }] }
 }

@@ -1,5 +1,5 @@
 /** What a line stands for; decides its colour, weight and dashes everywhere. */
-export type SeriesRole = 'observed' | 'model' | 'residual' | 'loss' | 'gain' | 'neutral'
+export type SeriesRole = 'observed' | 'model' | 'residual' | 'loss' | 'gain' | 'neutral' | 'secular'
 
 export interface FigureSeries {
   /** Written beside the line. */

@@ -12,5 +12,6 @@ export function lineStyle(role: SeriesRole, palette: Palette): LineStyle {
     case 'loss': return { stroke: palette.loss, width: 1.75 }
     case 'gain': return { stroke: palette.gain, width: 1.75 }
     case 'neutral': return { stroke: palette.ink, width: 1.5 }
+    case 'secular': return { stroke: palette.soft, width: 1.25, dashes: '1.5 3' }
   }
 }

@@ -94,7 +94,10 @@ describe('figures of an attribution', () => {
   })
   it('put y, which points to 90° W, on the axis to 90° E with its sign turned', () => {
     const stretch = { mjd: [1, 2], xMas: [1, 2], yMas: [3, null], observedXMas: [5, 6], observedYMas: [7, 8], freeWobbleMas: 1, rmsMas: 1 }
-    const [observed, predicted] = polePaths({ stretches: [stretch], sentence: '' })
+    const [secular, observed, predicted] = polePaths({ stretches: [{ ...stretch, mjd: [51544.5, 51544.5 + 3652.5] }], sentence: '' })
+    // IERS Conventions (2010), ch. 7, update of 2018: x = 55.0 + 1.677 (t − 2000), y = 320.5 + 3.460 (t − 2000) mas.
+    expect([secular!.label, secular!.chi1[0], secular!.chi2[0]]).toEqual(['secular pole', 55, -320.5])
+    expect(Array.from(secular!.chi2).at(-1)).toBeCloseTo(-355.1, 9)
     expect([observed!.chi2, predicted!.chi2, predicted!.chi1]).toEqual([[-7, -8], [-3, null], [1, 2]])
     expect(ut1Panel({ stretches: [], caution: '' })).toBeNull()
   })

@@ -127,4 +127,14 @@ describe('a prediction treated as the observation', () => {
     const flat = likeObserved({ ...chain(), steps: [{ kind: 'detrend', on: true }] }, months, value)
     expect(flat[120]! - flat[0]!).toBeCloseTo(value[120]! - value[0]! - 0.01 * (months[120]! - months[0]!) / 365.25, 3)
   })
+
+  it('takes regions together under one factor with a prior of its own, and refuses groups that are none', () => {
+    const together = attributionReport(task({ groups: [{ name: 'Both', regions: ['a', 'b'], prior: { mean: 1.2, sigma: 0.1 } }] }))
+    expect(together.scaling.interannual.scaling!.factors.map(({ name, prior }) => [name, prior])).toEqual([['Both', { mean: 1.2, sigma: 0.1 }]])
+    expect(together.identifiability!.groups.map(({ name }) => name)).toEqual(['Both'])
+    // The stronger of the two was made 1.3 times as large as reported; alone it is found, and so it is among the two.
+    const tight = attributionReport(task({ groups: [{ name: 'Region a', regions: ['a'], prior: { mean: 0, sigma: 0.001 } }] }))
+    expect(tight.scaling.interannual.scaling!.factors[0]!.posterior.value).toBeLessThan(0.5)
+    expect(() => attributionReport(task({ groups: [{ name: 'None', regions: ['z'] }] }))).toThrow(/groups do not hold/)
+  })
 })
