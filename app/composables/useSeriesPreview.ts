@@ -15,6 +15,8 @@ const isEmpty = (source: TableSource) => typeof source === 'string' ? source.tri
 export function useSeriesPreview(source: Ref<TableSource>, choices: Ref<ColumnChoices>, areaM2: Ref<number>, setting: Ref<PreviewSetting>) {
   const preview = shallowRef<Preview | Refusal | null>(null)
   const busy = ref(false)
+  /** Part of a long table that is read, 0 to 1; null where it is not known. */
+  const progress = ref<number | null>(null)
   let ticket = 0
   let worker: Worker | null = null
   let timer: ReturnType<typeof setTimeout> | undefined
@@ -23,7 +25,9 @@ export function useSeriesPreview(source: Ref<TableSource>, choices: Ref<ColumnCh
     if (worker) return worker
     worker = new Worker(new URL('../series/previewWorker.ts', import.meta.url), { type: 'module' })
     worker.onmessage = (event: MessageEvent<PreviewAnswer>) => {
-      if (event.data.ticket === ticket) take(event.data.preview)
+      if (event.data.ticket !== ticket) return
+      if ('progress' in event.data) progress.value = event.data.progress
+      else take(event.data.preview)
     }
     worker.onerror = () => {
       preview.value = { state: 'refused', message: 'The file could not be read in this browser. Cut it into parts.', issues: [], columns: [], chosen: null }
@@ -35,6 +39,7 @@ export function useSeriesPreview(source: Ref<TableSource>, choices: Ref<ColumnCh
   function take(next: Preview | Refusal | null) {
     preview.value = next
     busy.value = false
+    progress.value = null
   }
 
   function read() {
@@ -56,5 +61,5 @@ export function useSeriesPreview(source: Ref<TableSource>, choices: Ref<ColumnCh
       worker?.terminate()
     })
   }
-  return { preview, busy }
+  return { preview, busy, progress }
 }

@@ -1,23 +1,24 @@
 import { fitTrend } from '#shared/earth/time/trend'
 import type { OtherSeries } from '#shared/series/agreement'
 import { checkSeries, type Mark } from '#shared/series/checks'
-import { readMassSeries, type MassSeriesOptions, type MassSeriesReading, type MassSeriesRow } from '#shared/series/readMassSeries'
+import { readMassSeries, readMassSeriesPaced, type MassSeriesOptions, type MassSeriesReading, type MassSeriesRow } from '#shared/series/readMassSeries'
 import type { Recipe, StepDone } from '#shared/series/recipe'
+import type { PaceOptions } from '#shared/series/steps'
 import { readTable, type TableSource } from '#shared/series/table'
 import { InputError, type Issue } from '#shared/types/issue'
 import { wideColumns } from './wide'
 
 /** What somebody set by hand; what is left out is recognised. */
 export type ColumnChoices = Pick<MassSeriesOptions,
-  'epochColumn' | 'endColumn' | 'endDayIncluded' | 'valueColumn' | 'sigmaColumn' | 'epochFormat' | 'unit' | 'withdrawalPositive' | 'delimiter' | 'decimalComma' | 'header' | 'missingValues' | 'edits' | 'leaveOut'>
+  'epochColumn' | 'endColumn' | 'monthColumn' | 'dayColumn' | 'endDayIncluded' | 'valueColumn' | 'sigmaColumn' | 'epochFormat' | 'unit' | 'withdrawalPositive' | 'delimiter' | 'decimalComma' | 'header' | 'missingValues' | 'edits' | 'leaveOut'>
 /** What a reading needs beside the table and the choices. */
 export interface PreviewSetting {
   /** Name of the region, which a wide table may have as a column. */
   regionName?: string
   /** The way to gigatonnes where it is not that of a plain unit. */
   recipe?: Recipe | null
-  /** What the series is held against: the version before it. */
-  other?: OtherSeries | null
+  /** What the series is held against: earlier versions, and series of regions on the same ground. */
+  others?: readonly OtherSeries[]
 }
 
 export interface FileColumn { index: number, name: string, sample: string[] }
@@ -58,17 +59,39 @@ export interface Refusal { state: 'refused', message: string, issues: Issue[], c
 const ends = 4
 
 /** Reads a table as the server will, and keeps what a person needs to see of it. Pure, so that a worker can do it. */
-export function previewOf(source: TableSource, given: ColumnChoices, areaM2: number, { regionName = '', recipe = null, other = null }: PreviewSetting = {}): Preview | Refusal {
-  const wide = wideColumns(source, given, regionName)
-  const choices: ColumnChoices = { ...given, ...wide.choices }
-  let reading: MassSeriesReading
+export function previewOf(source: TableSource, given: ColumnChoices, areaM2: number, setting: PreviewSetting = {}): Preview | Refusal {
+  const { options, choices, names } = readingOptions(source, given, areaM2, setting)
   try {
-    reading = readMassSeries(source, { ...choices, areaM2, recipe })
+    return shownOf(readMassSeries(source, options), names, areaM2, setting)
   }
   catch (error) {
-    if (!(error instanceof InputError)) throw error
-    return { state: 'refused', message: error.message, issues: error.issues, columns: columnsOf(source, choices), chosen: recipe ? chosenOf(source, choices) : null }
+    return refusalOf(error, source, choices, setting)
   }
+}
+
+/** As `previewOf`, with progress, for a table that takes a while. */
+export async function previewPaced(source: TableSource, given: ColumnChoices, areaM2: number, setting: PreviewSetting, pace: PaceOptions): Promise<Preview | Refusal> {
+  const { options, choices, names } = readingOptions(source, given, areaM2, setting)
+  try {
+    return shownOf(await readMassSeriesPaced(source, options, pace), names, areaM2, setting)
+  }
+  catch (error) {
+    return refusalOf(error, source, choices, setting)
+  }
+}
+
+function readingOptions(source: TableSource, given: ColumnChoices, areaM2: number, { regionName = '', recipe = null }: PreviewSetting) {
+  const wide = wideColumns(source, given, regionName)
+  const choices: ColumnChoices = { ...given, ...wide.choices }
+  return { choices, names: wide.names, options: { ...choices, areaM2, recipe } }
+}
+
+function refusalOf(error: unknown, source: TableSource, choices: ColumnChoices, { recipe }: PreviewSetting): Refusal {
+  if (!(error instanceof InputError)) throw error
+  return { state: 'refused', message: error.message, issues: error.issues, columns: columnsOf(source, choices), chosen: recipe ? chosenOf(source, choices) : null }
+}
+
+function shownOf(reading: MassSeriesReading, names: string[], areaM2: number, { others = [] }: PreviewSetting): Preview {
   const { rows, mjd, massGt, sigmaGt } = reading
   const { lineOf } = reading
   // Summed rates have one epoch more than rows: each row's sum stands at its end. An epoch that a step left out has none.
@@ -79,7 +102,7 @@ export function previewOf(source: TableSource, given: ColumnChoices, areaM2: num
     return { row: row.row, epochText: row.epochText, valueText: row.valueText, sigma: row.sigma, mjd: mjd[i]!, massGt: massGt[i]!, sigmaGt: sigmaGt?.[i] ?? null }
   }
   const cut = kept.length <= 2 * ends ? kept.length : ends
-  const marks = checkSeries({ mjd, massGt, sigmaGt, rows: lineOf, areaM2, others: other ? [other] : [] })
+  const marks = checkSeries({ mjd, massGt, sigmaGt, rows: lineOf, areaM2, others })
   const marked = new Set(marks.flatMap(mark => mark.rows))
   return {
     state: 'read',
@@ -98,7 +121,7 @@ export function previewOf(source: TableSource, given: ColumnChoices, areaM2: num
     cells: Object.fromEntries(rows.filter(row => marked.has(row.row)).map(row => [row.row, row.valueText])),
     leftOut: reading.leftOut,
     edited: reading.edited,
-    sideBySide: wide.names.length > 1 ? wide.names : [],
+    sideBySide: names.length > 1 ? names : [],
     rowsRead: reading.rowsRead,
     trend: trendOf(mjd, massGt, sigmaGt),
   }
@@ -142,9 +165,9 @@ function columnsOf(source: TableSource, { delimiter, decimalComma, header }: Col
 
 /** The choices that the server is to read with: every one that the preview used. */
 export function columnsToSend({ chosen }: Preview) {
-  const { epochColumn, endColumn, endDayIncluded, valueColumn, sigmaColumn, epochFormat, unit, withdrawalPositive, delimiter, decimalComma, header, missingValues, edits, leaveOut } = chosen
+  const { epochColumn, endColumn, monthColumn, dayColumn, endDayIncluded, valueColumn, sigmaColumn, epochFormat, unit, withdrawalPositive, delimiter, decimalComma, header, missingValues, edits, leaveOut } = chosen
   return {
-    epochColumn, endColumn, endDayIncluded, valueColumn, sigmaColumn, epochFormat, unit, withdrawalPositive, delimiter, decimalComma, header,
+    epochColumn, endColumn, monthColumn, dayColumn, endDayIncluded, valueColumn, sigmaColumn, epochFormat, unit, withdrawalPositive, delimiter, decimalComma, header,
     ...(missingValues.length ? { missingValues } : {}), ...(edits.length ? { edits } : {}), ...(leaveOut.length ? { leaveOut } : {}),
   }
 }

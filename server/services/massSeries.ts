@@ -1,8 +1,9 @@
+import { setImmediate } from 'node:timers/promises'
 import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import type { Principal } from '#shared/permissions'
 import type { StoredSeries } from '#shared/series/conversionChoice'
-import { readMassSeries, type MassSeriesOptions } from '#shared/series/readMassSeries'
+import { readMassSeriesPaced, type MassSeriesOptions } from '#shared/series/readMassSeries'
 import { systematicRates, type SystematicRate } from '#shared/series/uncertainty'
 import { InputError } from '#shared/types/issue'
 import { eq } from 'drizzle-orm'
@@ -29,7 +30,7 @@ export async function createSeriesVersion(context: Context, principal: Principal
   const options = {
     ...columns, ...(sigmaColumn === undefined ? {} : { sigmaColumn }), areaM2: outline.areaM2, ...(recipeAsked ? { recipe: recipeAsked } : {}),
   } as MassSeriesOptions
-  const read = readMassSeries(await uploadTable(upload, sheet), options)
+  const read = await readMassSeriesPaced(await uploadTable(upload, sheet), options, { pause: () => setImmediate() })
   if (read.issues.length && !body.leaveOutBadRows) {
     throw new InputError(`${read.issues.length} of ${read.rowsRead} rows cannot be used. Nothing was stored.`, read.issues)
   }

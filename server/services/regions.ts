@@ -115,7 +115,7 @@ export function readRegion(context: Context, principal: Principal | null, id: st
   const names = new Map(others.map(r => [r.id, r.name]))
   const overlaps = overlapsOf(others.map(r => ({ id: r.id, geometry: latestOutline(context, r.id).geometry })))
     .filter(o => o.a === id || o.b === id)
-    .map(o => ({ id: o.a === id ? o.b : o.a, areaKm2: o.areaKm2 }))
+    .map(o => o.a === id ? { id: o.b, areaKm2: o.areaKm2, share: o.shareOfA, shareOfOther: o.shareOfB } : { id: o.a, areaKm2: o.areaKm2, share: o.shareOfB, shareOfOther: o.shareOfA })
   const series = seriesOfRegion(context, id)
   return {
     ...view,

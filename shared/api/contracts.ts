@@ -142,7 +142,7 @@ export const contracts = {
     id: 'regionRead', method: 'GET', path: '/api/v1/regions/{id}', action: 'region.read', summary: 'A region', params: byId,
     answer: region.extend({
       perGt, outlines: z.array(z.object({ n: z.int(), areaKm2: z.number(), sha256, createdAt: z.string(), createdBy: z.string().nullable() })),
-      versions: z.array(versionSummary), overlaps: z.array(z.object({ id: ulid, name: z.string(), areaKm2: z.number() })), settings: z.looseObject({}),
+      versions: z.array(versionSummary), overlaps: z.array(z.object({ id: ulid, name: z.string(), areaKm2: z.number(), share: z.number(), shareOfOther: z.number() })), settings: z.looseObject({}),
       /** Effect of one gigatonne gained with its derived quantities, by ocean response. */
       effects: z.array(perGt.extend({
         ocean: z.enum(oceanModes), deltaC21: z.number(), deltaS21: z.number(), geocentreMm: z.object({ x: z.number(), y: z.number(), z: z.number() }).nullable(),

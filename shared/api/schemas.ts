@@ -105,6 +105,8 @@ export const massColumns = z.object({
   sheet: z.string().min(1).max(200).optional(),
   /** Where each row's period ends, for rates and balances; null: rows have no end though a column looks like one. */
   endColumn: z.int().min(0).nullable().optional(), endDayIncluded: z.boolean().optional(),
+  /** Month, and day, in columns of their own beside the year in `epochColumn`; null: none though a column looks like one. */
+  monthColumn: z.int().min(0).nullable().optional(), dayColumn: z.int().min(0).nullable().optional(),
   /** Gigatonnes and heights of water; every other quantity and unit goes into `conversion`. */
   unit: z.enum(['Gt', 'mm-we', 'cm-we']).optional(),
   withdrawalPositive: z.boolean().optional(), delimiter: z.string().max(1).optional(), decimalComma: z.boolean().optional(),

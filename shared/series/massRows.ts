@@ -30,6 +30,9 @@ export interface RowLeftOut { row: number, reason: string }
 export interface RowChoices {
   epochColumn: number
   endColumn: number | null
+  /** Month, and day, beside the year in `epochColumn`. */
+  monthColumn: number | null
+  dayColumn: number | null
   valueColumn: number
   sigmaColumn: number | null
   epochFormat: EpochFormat
@@ -128,11 +131,12 @@ function edited(original: string[], edits: CellEdit[], done: RowsRead['edited'])
 function readRow(line: number, cells: string[], chosen: RowChoices, table: Table): MassSeriesRow | Issue {
   const fault = (index: number, code: string, message: string): Issue =>
     ({ row: line, column: nameOf(table, index), value: (cells[index] ?? '').trim().slice(0, 60), code, message })
-  const { epochColumn, endColumn, valueColumn, sigmaColumn, epochFormat } = chosen
-  const needed = Math.max(epochColumn, endColumn ?? 0, valueColumn, sigmaColumn ?? 0)
+  const { epochColumn, endColumn, monthColumn, dayColumn, valueColumn, sigmaColumn, epochFormat } = chosen
+  const needed = Math.max(epochColumn, endColumn ?? 0, monthColumn ?? 0, dayColumn ?? 0, valueColumn, sigmaColumn ?? 0)
   if (cells.length <= needed) return fault(needed, 'missing-cell', `The row has ${cells.length} cells; column ${needed + 1} is missing.`)
 
-  const epochText = cells[epochColumn]!.trim()
+  const parts = [epochColumn, monthColumn, dayColumn].flatMap(column => column === null ? [] : [cells[column]!.trim()])
+  const epochText = monthColumn === null ? parts[0]! : parts.map(part => /^\d$/.test(part) ? `0${part}` : part).join('-')
   const endText = endColumn === null ? null : cells[endColumn]!.trim()
   let epoch: ParsedEpoch
   try {
@@ -141,7 +145,7 @@ function readRow(line: number, cells: string[], chosen: RowChoices, table: Table
       : periodBetween(epochText, endText, epochFormat, table.decimalComma, chosen.endDayIncluded)
   } catch (error) {
     if (!(error instanceof RangeError)) throw error
-    return fault(epochColumn, isMissing(epochText) ? 'missing-epoch' : 'bad-epoch', `The epoch cannot be read: ${error.message}.`)
+    return fault(epochColumn, parts.some(part => isMissing(part)) ? 'missing-epoch' : 'bad-epoch', `The epoch cannot be read: ${error.message}.`)
   }
   const valueText = cells[valueColumn]!.trim()
   if (isMissing(valueText, chosen.missingValues)) return fault(valueColumn, 'missing-value', 'The row has no value.')

@@ -23,6 +23,9 @@ export interface MassSeriesOptions extends TableOptions {
   epochColumn?: number
   /** Where each row's period ends; null: rows have no end though a column looks like one. */
   endColumn?: number | null
+  /** Month, and day, in columns of their own beside the year in `epochColumn`; null: none though a column looks like one. */
+  monthColumn?: number | null
+  dayColumn?: number | null
   valueColumn?: number
   sigmaColumn?: number | null
   epochFormat?: EpochFormat
@@ -175,7 +178,7 @@ function gtPerUnitOf({ steps }: Recipe): number {
 
 function checkColumns(chosen: MassSeriesReading['chosen'], width: number): void {
   const issues: Issue[] = []
-  const used = (['epochColumn', 'endColumn', 'valueColumn', 'sigmaColumn'] as const).filter(name => chosen[name] !== null)
+  const used = (['epochColumn', 'endColumn', 'monthColumn', 'dayColumn', 'valueColumn', 'sigmaColumn'] as const).filter(name => chosen[name] !== null)
   for (const name of used) {
     const column = chosen[name]!
     if (!(Number.isInteger(column) && column >= 0 && column < width)) {
@@ -183,7 +186,7 @@ function checkColumns(chosen: MassSeriesReading['chosen'], width: number): void 
     }
   }
   if (new Set(used.map(name => chosen[name])).size < used.length) {
-    issues.push({ path: 'valueColumn', code: 'same-column', message: 'Epoch, end, value and one-sigma must be in different columns.' })
+    issues.push({ path: 'valueColumn', code: 'same-column', message: 'Epoch, end, month, day, value and one-sigma must be in different columns.' })
   }
   if (issues.length > 0) throw new InputError('The chosen columns do not fit the file', issues)
 }

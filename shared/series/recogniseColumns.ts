@@ -11,6 +11,9 @@ export interface ColumnChoices {
   epochColumn?: number
   /** Column in which the period ends that begins in `epochColumn`; null: there is none though a column looks like one. */
   endColumn?: number | null
+  /** Month, and day, in columns of their own beside the year in `epochColumn`; null: there is none though a column looks like one. */
+  monthColumn?: number | null
+  dayColumn?: number | null
   valueColumn?: number
   sigmaColumn?: number | null
   epochFormat?: EpochFormat
@@ -23,7 +26,7 @@ export interface ColumnChoices {
 export interface RecognisedColumns {
   columns: { index: number, name: string, sample: string[], guess: ColumnGuess }[]
   chosen: {
-    epochColumn: number, endColumn: number | null, valueColumn: number, sigmaColumn: number | null
+    epochColumn: number, endColumn: number | null, monthColumn: number | null, dayColumn: number | null, valueColumn: number, sigmaColumn: number | null
     epochFormat: EpochFormat, endDayIncluded: boolean, unit: MassUnit
   }
   /** Every column of numbers with its one-sigma: more than one where the table holds several regions side by side. */
@@ -58,17 +61,19 @@ export function recogniseMassColumns(table: Table, given: ColumnChoices): Recogn
     index, found: recogniseEpochFormat(cells(index), table.decimalComma, given.needsPeriods), named: epochName.test(name(index)) || beginName.test(name(index))
   }))
   const taken = new Set([given.valueColumn, given.sigmaColumn, given.endColumn])
+  const parted = given.endColumn ? null : yearMonthDay(table, given, cells, name)
   const epoch = given.epochColumn !== undefined
     ? epochs[given.epochColumn]
-    : best(epochs.filter(e => !taken.has(e.index) && e.found && !endName.test(name(e.index))), e => e.found!.share + (e.named ? 0.6 : 0) + (e.index === 0 ? 0.1 : 0))
+    : parted ? epochs[parted.year] : best(epochs.filter(e => !taken.has(e.index) && e.found && !endName.test(name(e.index))), e => e.found!.share + (e.named ? 0.6 : 0) + (e.index === 0 ? 0.1 : 0))
   const epochColumn = given.epochColumn ?? epoch?.index
   if (epochColumn === undefined) fail('no-epoch-column', 'No column of dates, months, decimal years or Modified Julian Dates was found.')
-  const epochFormat = given.epochFormat ?? epoch?.found?.format ?? 'iso-date'
-  const endColumn = given.endColumn !== undefined
+  const [monthColumn, dayColumn] = parted && parted.year === epochColumn ? [parted.month, parted.day] : [null, null]
+  const epochFormat = monthColumn !== null ? dayColumn !== null ? 'iso-date' : 'year-month' : given.epochFormat ?? epoch?.found?.format ?? 'iso-date'
+  const endColumn = monthColumn !== null ? null : given.endColumn !== undefined
     ? given.endColumn
     : epochs.find(e => e.index !== epochColumn && !taken.has(e.index) && endName.test(name(e.index)) && e.found?.format === epochFormat)?.index ?? null
 
-  const candidates = indices.filter(index => index !== epochColumn && index !== endColumn && numeric(index) > 0.5)
+  const candidates = indices.filter(index => index !== epochColumn && index !== endColumn && index !== monthColumn && index !== dayColumn && numeric(index) > 0.5)
   const sigmaColumn = given.sigmaColumn !== undefined
     ? given.sigmaColumn
     : candidates.find(index => index !== given.valueColumn && sigmaName.test(name(index))) ?? null
@@ -81,15 +86,34 @@ export function recogniseMassColumns(table: Table, given: ColumnChoices): Recogn
       index,
       name: name(index) || `column ${index + 1}`,
       sample: cells(index).slice(0, 3).map(cell => cell.trim().slice(0, 40)),
-      guess: index === epochColumn ? 'epoch' : index === endColumn ? 'end' : index === valueColumn ? 'value' : index === sigmaColumn ? 'sigma' : 'other'
+      guess: index === epochColumn || index === monthColumn || index === dayColumn ? 'epoch' : index === endColumn ? 'end' : index === valueColumn ? 'value' : index === sigmaColumn ? 'sigma' : 'other'
     })),
     chosen: {
-      epochColumn, endColumn, valueColumn, sigmaColumn, epochFormat,
+      epochColumn, endColumn, monthColumn, dayColumn, valueColumn, sigmaColumn, epochFormat,
       endDayIncluded: given.endDayIncluded ?? endsAreIncluded(table, epochColumn, endColumn, epochFormat),
       unit: given.unit ?? unitOf(name(valueColumn))
     },
     valueColumns: sideBySide(candidates, name)
   }
+}
+
+const yearName = /^(?:year|yr|yyyy|jahr|año|année|anno)$/i
+const monthName = /^(?:month|mon|mm|monat|mes|mois|mese)$/i
+const dayName = /^(?:day|dd|tag|día|dia|jour|giorno|day of month)$/i
+
+/** Columns named as year and month, and day, that hold whole numbers in their range; those that are given stand. */
+function yearMonthDay(table: Table, given: ColumnChoices, cells: (index: number) => string[], name: (index: number) => string): { year: number, month: number, day: number | null } | null {
+  if (given.monthColumn === null) return null
+  const holds = (index: number, low: number, high: number): boolean => {
+    const numbers = cells(index).filter(cell => !isMissing(cell)).map(cell => parseNumber(cell, table.decimalComma))
+    return numbers.length > 0 && numbers.filter(x => Number.isInteger(x) && x >= low && x <= high).length > 0.9 * numbers.length
+  }
+  const find = (named: RegExp, low: number, high: number): number | undefined =>
+    Array.from({ length: table.width }, (_, i) => i).find(index => named.test(name(index)) && index !== given.valueColumn && index !== given.sigmaColumn && holds(index, low, high))
+  const year = given.epochColumn ?? find(yearName, 1800, 2200)
+  const month = given.monthColumn ?? find(monthName, 1, 12)
+  if (year === undefined || month === undefined || (given.monthColumn === undefined && !holds(year, 1800, 2200))) return null
+  return { year, month, day: given.dayColumn !== undefined ? given.dayColumn : find(dayName, 1, 31) ?? null }
 }
 
 /** Columns of numbers that are neither errors nor descriptions, each with the column of errors that follows it or bears its name. */

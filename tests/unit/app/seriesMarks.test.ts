@@ -44,7 +44,7 @@ describe('marks of a preview', () => {
   it('hold the series against the version before it', () => {
     const own = read(table('0.1'))
     const turned = { name: 'version 1', mjd: [...own.mjd], massGt: [...own.massGt].map(mass => -mass) }
-    const marks = read(table('0.1'), {}, { other: turned }).marks
+    const marks = read(table('0.1'), {}, { others: [turned] }).marks
     expect(marks.find(mark => mark.kind === 'disagreement')?.message).toMatch(/version 1.*other way/)
   })
 })

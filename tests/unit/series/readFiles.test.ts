@@ -151,6 +151,28 @@ describe('wide tables', () => {
   })
 })
 
+describe('year, month and day in columns of their own', () => {
+  it('are recognised by their names and values', () => {
+    const read = readMassSeries('Year,Month,TWS (Gt),sigma\n2004,1,5,1\n2004,2,6,1\n2004,12,7,1\n')
+    expect(read.chosen).toMatchObject({ epochColumn: 0, monthColumn: 1, dayColumn: null, valueColumn: 2, sigmaColumn: 3, epochFormat: 'year-month' })
+    // The middle of January 2004, from MJD 53005 (IERS).
+    expect(read.mjd[0]).toBe(53005 + 15.5)
+    const daily = readMassSeries('mass;Jahr;Monat;Tag\n5;2004;2;29\n6;2004;3;1\n7;2004;2;30\n')
+    expect(daily.chosen).toMatchObject({ epochColumn: 1, monthColumn: 2, dayColumn: 3, valueColumn: 0, epochFormat: 'iso-date' })
+    // MJD 53064 is 29 February 2004 (53005 is 1 January).
+    expect(daily.mjd).toEqual([53064, 53065])
+    expect(daily.issues).toMatchObject([{ row: 4, code: 'bad-epoch' }])
+  })
+
+  it('are told by hand, or that there are none', () => {
+    const text = 'a,b,c\n2004,1,5\n2005,2,6\n2006,3,7\n'
+    expect(readMassSeries(text, { epochColumn: 0, monthColumn: 1, valueColumn: 2 }).mjd[1]).toBe(mjdFromIsoDate('2005-02-01') + 14)
+    expect(readMassSeries('year,month,Gt\n2004,1,5\n2005,2,6\n2006,3,7\n', { monthColumn: null }).chosen).toMatchObject({ epochFormat: 'decimal-year', monthColumn: null })
+    expect(codesOf(() => readMassSeries(text, { epochColumn: 0, monthColumn: 2, valueColumn: 2 }))).toEqual(['same-column'])
+    expect(codesOf(() => readMassSeries(text, { epochColumn: 0, monthColumn: 7, valueColumn: 2 }))).toEqual(['no-such-column'])
+  })
+})
+
 describe('every row is accounted for', () => {
   const cell = fc.oneof(
     fc.string({ maxLength: 6 }),
@@ -186,6 +208,14 @@ describe('every row is accounted for', () => {
       orRefused(() => accounted(readMassSeries(text, { ...chosen, epochColumn: 0, valueColumn: 1, sigmaColumn: null, endColumn: null, delimiter, header: true })))
       orRefused(() => accounted(readMassSeries({ cells: [['date', 'a', 'b', 'c'], ...rows] }, { ...chosen, epochColumn: 0, valueColumn: 1, sigmaColumn: 2, endColumn: 3, header: true })))
       orRefused(() => readMassTable(text, { ...chosen, epochColumn: 0, delimiter, header: true, series: [{ valueColumn: 1 }, { valueColumn: 2, sigmaColumn: 3 }] }).series.forEach(accounted))
+    }), { numRuns: 300 })
+  })
+
+  it('with year, month and day in columns of their own', () => {
+    const part = fc.constantFrom('2004', '2005', '1', '02', '12', '13', '30', '31', '', 'x', '1.5')
+    fc.assert(fc.property(fc.array(fc.array(part, { minLength: 1, maxLength: 4 }), { maxLength: 20 }), fc.boolean(), (rows, days) => {
+      const text = `year,month,day,mass\n${rows.map(row => row.join(',')).join('\n')}`
+      orRefused(() => accounted(readMassSeries(text, { epochColumn: 0, monthColumn: 1, dayColumn: days ? 2 : null, valueColumn: 3, sigmaColumn: null })))
     }), { numRuns: 300 })
   })
 
