@@ -139,6 +139,19 @@ export async function poppler() {
   if (missing().length) throw new StepError(`The tests of the PDF report need ${missing().join(', ')}. Install them (Debian: apt-get install poppler-utils) and run npm test again.`)
 }
 
+/** The program that writes and reads outlines beside ours in the tests of files; installed through apt where this process may. */
+export async function gdal() {
+  const present = () => !spawnSync('ogr2ogr', ['--version'], { stdio: 'ignore' }).error
+  if (present()) return
+  if (process.platform === 'linux' && process.getuid?.() === 0 && found('apt-get')) {
+    console.log('Installing gdal-bin through apt.')
+    const env = { DEBIAN_FRONTEND: 'noninteractive' }
+    await run('apt-get', ['update', '-q'], { env, quiet: true })
+    await run('apt-get', ['install', '-y', '-q', '--no-install-recommends', 'gdal-bin'], { env, quiet: true })
+  }
+  if (!present()) throw new StepError('The tests of outline files need ogr2ogr. Install it (Debian: apt-get install gdal-bin) and run npm test again.')
+}
+
 /** Prints a failure the way people can use it and ends the process. */
 export function fail(error) {
   console.error(error instanceof StepError ? `\n${error.message}` : error)

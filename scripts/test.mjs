@@ -2,7 +2,7 @@
 // The last line is “N passed, N failed”. A step that fails does not keep the others from running.
 import { existsSync, mkdirSync, readFileSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
-import { build, chromium, fail, install, poppler, requireNode, root, run, StepError } from './steps.mjs'
+import { build, chromium, fail, gdal, install, poppler, requireNode, root, run, StepError } from './steps.mjs'
 
 const program = (...path) => join(root, 'node_modules', ...path)
 const names = ['lint', 'types', 'unit', 'build', 'integration', 'browser']
@@ -78,6 +78,7 @@ const types = typesInBackground()
 await step('lint', lint)
 await step('unit', async () => {
   await poppler()
+  await gdal()
   return tests('unit')
 })
 await step('types', types)

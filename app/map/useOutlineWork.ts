@@ -99,7 +99,7 @@ export function useOutlineWork({ drawing, save, regions, workspace, blank, store
   })
 
   return {
-    active, region, form, outline, changed, ready, overlaps, kept, discarded,
+    active, region, form, outline, changed, ready, overlaps, kept, discarded, blank,
     draw: () => begin(null, drawing.start, null),
     edit: (item: RegionItem) => begin(item, () => drawing.edit(item.geometry as Outline), item.geometry as Outline),
     bring: (source: Outline, name: string) => {

@@ -5,7 +5,8 @@ import { setResponseHeader } from 'h3'
 function policy(nonce: string, dev: boolean) {
   return [
     'default-src \'self\'',
-    `script-src 'self' 'nonce-${nonce}'${dev ? ' \'unsafe-eval\'' : ''}`,
+    // WebAssembly may be compiled (a GeoPackage is read in the page); text may not be evaluated.
+    `script-src 'self' 'nonce-${nonce}' 'wasm-unsafe-eval'${dev ? ' \'unsafe-eval\'' : ''}`,
     dev ? 'style-src \'self\' \'unsafe-inline\'' : `style-src 'self' 'nonce-${nonce}'`,
     'style-src-attr \'unsafe-inline\'',
     'img-src \'self\' data: blob:',

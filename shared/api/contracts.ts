@@ -176,6 +176,15 @@ export const contracts = {
     query: fitQuery, answer: fitAnswer,
   }),
 
+  regionCreateMany: contract({
+    id: 'regionCreateMany', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions/batch', action: 'region.write', summary: 'Add several regions: all of them or, where one does not hold, none', params: inWorkspace,
+    body: z.object({ agencyId: ulid, regions: z.array(z.object({ name, kind: regionKind, note: prose.default(''), geometry })).min(1).max(limits.outlines) }),
+    answer: listOf(z.object({ id: ulid, revision, name: z.string() })), status: 201, maxBytes: limits.outlinesBytes,
+  }),
+  regionRemoveMany: contract({
+    id: 'regionRemoveMany', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions/bin', action: 'region.write', summary: 'Put several regions in the bin: all of them or none', params: inWorkspace,
+    body: z.object({ regions: z.array(z.object({ id: ulid, revision })).min(1).max(limits.outlines) }), answer: listOf(z.object({ id: ulid, revision })),
+  }),
   // Mass series
   seriesCreate: contract({
     id: 'seriesCreate', method: 'POST', path: '/api/v1/regions/{id}/series', action: 'region.write', summary: 'Store a new version of a region’s mass series', params: byId, bodyType: 'multipart',

@@ -18,6 +18,10 @@ export const limits = {
   epochs: 20000,
   /** Body of `evaluate`: 8 MiB, as architecture.md fixes. */
   evaluateBytes: 8 * 1024 * 1024,
+  /** Outlines stored in one go, as many as are read from one file. */
+  outlines: 500,
+  /** Body that holds them: 200 000 vertices with all their digits. */
+  outlinesBytes: 16 * 1024 * 1024,
   /** An original file: sixty years of daily Earth orientation are 3.5 MB. */
   originalBytes: 32 * 1024 * 1024,
 } as const

@@ -7,8 +7,14 @@ import { findJsonFault } from './jsonFault.ts'
 /** What an outline may hold. The vertex and byte limits keep one request from holding the server for seconds. */
 export const limits = { vertices: 200_000, bytes: 8 * 1024 * 1024, outlines: 500, issues: 50 } as const
 
-/** One region's outline from a file, with the name its attributes give. */
-export interface NamedOutline { name?: string, geometry: Outline }
+/** One region's outline from a file, with the name its attributes give and what else they say. */
+export interface NamedOutline { name?: string, attributes?: Record<string, string>, geometry: Outline }
+
+/** An outline of a file that cannot be taken, and why. */
+export interface FaultyOutline { name?: string, issues: Issue[] }
+
+/** What a file holds: outlines, outlines with faults, and the number of features that are no areas. */
+export interface OutlineFeatures { outlines: NamedOutline[], faulty: FaultyOutline[], leftOut: number }
 
 /**
  * Faults of a polygon or multipolygon: shape, numbers, latitude and longitude range, rings too short, open, without area or
@@ -46,6 +52,20 @@ export function readOutlines(input: unknown): NamedOutline[] {
 
 /** As `readOutlines`, and how many features were left out because they are not areas. */
 export function readOutlineFile(input: unknown): { outlines: NamedOutline[], leftOut: number } {
+  const { outlines, faulty, leftOut } = examine(input)
+  const issues = faulty.flatMap(item => item.issues).slice(0, limits.issues)
+  if (issues.length > 0) throw refusal(issues)
+  return { outlines, leftOut }
+}
+
+/** Every outline of a GeoJSON text or object, those with faults apart. Throws where none is left, as `readOutlineFile` does. */
+export function readOutlineFeatures(input: unknown): OutlineFeatures {
+  const found = examine(input)
+  if (found.outlines.length === 0) throw refusal(found.faulty.flatMap(item => item.issues).slice(0, limits.issues))
+  return found
+}
+
+function examine(input: unknown): OutlineFeatures {
   const root = typeof input === 'string' ? parseText(input) : input
   const found = collect(root)
   const vertices = found.list.reduce((sum, item) => sum + countPositions((item.geometry as JsonObject).coordinates, limits.vertices), 0)
@@ -53,12 +73,15 @@ export function readOutlineFile(input: unknown): { outlines: NamedOutline[], lef
   if (found.list.length > limits.outlines) {
     throw refusal([{ code: 'too-many-outlines', message: `There are ${found.list.length} outlines here; at most ${limits.outlines} are read at once.` }])
   }
-  const issues = found.list.flatMap(item => checkOutline(item.geometry, item.path)).slice(0, limits.issues)
-  if (issues.length > 0) throw refusal(issues)
-  return {
-    outlines: found.list.map(({ name, geometry, path }) => ({ ...(name ? { name } : {}), geometry: requireOutline(geometry, path) })),
-    leftOut: found.leftOut
+  const result: OutlineFeatures = { outlines: [], faulty: [], leftOut: found.leftOut }
+  for (const { properties, geometry, path } of found.list) {
+    const name = nameOf(properties)
+    const named = name ? { name } : {}
+    const issues = checkOutline(geometry, path)
+    if (issues.length > 0) result.faulty.push({ ...named, issues })
+    else result.outlines.push({ ...named, ...attributesOf(properties), geometry: checkShape(geometry, path, limits.issues).outline! })
   }
+  return result
 }
 
 function parseText(text: string): unknown {
@@ -75,7 +98,7 @@ function parseText(text: string): unknown {
   }
 }
 
-interface Found { list: { name?: string, geometry: unknown, path: string }[], leftOut: number }
+interface Found { list: { properties?: unknown, geometry: unknown, path: string }[], leftOut: number }
 
 function collect(root: unknown): Found {
   const found: Found = { list: [], leftOut: 0 }
@@ -90,7 +113,7 @@ function collect(root: unknown): Found {
   return found
 }
 
-function take(node: unknown, path: string, name: string | undefined, found: Found): void {
+function take(node: unknown, path: string, properties: unknown, found: Found): void {
   const at = (part: string): string => path === '' ? part : `${path}/${part}`
   const type = isObject(node) ? node.type : undefined
   if (!isObject(node) || typeof type !== 'string') {
@@ -102,10 +125,10 @@ function take(node: unknown, path: string, name: string | undefined, found: Foun
     node.features.forEach((feature, k) => take(feature, at(`features/${k}`), undefined, found))
   }
   else if (type === 'Feature') {
-    take(node.geometry ?? null, at('geometry'), nameOf(node.properties), found)
+    take(node.geometry ?? null, at('geometry'), node.properties, found)
   }
   else if (type === 'Polygon' || type === 'MultiPolygon') {
-    found.list.push({ ...(name ? { name } : {}), geometry: node, path })
+    found.list.push({ properties, geometry: node, path })
   }
   else if (['Point', 'MultiPoint', 'LineString', 'MultiLineString', 'GeometryCollection'].includes(type)) {
     found.leftOut++
@@ -120,6 +143,15 @@ function nameOf(properties: unknown): string | undefined {
   const written = Object.keys(properties).filter(name => String(properties[name] ?? '').trim() !== '')
   const key = written.find(name => /^(name|title|label|region|basin|id)$/i.test(name)) ?? written.find(name => /(?:^|_)name(?:_|$)/i.test(name))
   return key === undefined ? undefined : String(properties[key]).trim().slice(0, 120)
+}
+
+/** Attributes that can be shown: texts and numbers, so many as a list to choose from may hold. */
+function attributesOf(properties: unknown): { attributes?: Record<string, string> } {
+  if (!isObject(properties)) return {}
+  const entries = Object.entries(properties)
+    .filter(([, value]) => (typeof value === 'string' && value.trim() !== '') || typeof value === 'number')
+    .slice(0, 50).map(([key, value]) => [key.slice(0, 60), String(value).trim().slice(0, 120)])
+  return entries.length > 0 ? { attributes: Object.fromEntries(entries) as Record<string, string> } : {}
 }
 
 /** GeoJSON is WGS 84 longitude and latitude; files of before 2016 may name another system. */

@@ -13,15 +13,20 @@ const leastShare = 1e-6
  * parts, poles and the antimeridian are as everywhere else. Exact for edges straight in longitude and latitude.
  */
 export function overlapsOf(items: readonly { id: string, geometry: Outline }[]): OutlineOverlap[] {
+  return [...overlapsInTurn(items)].flat()
+}
+
+/** As `overlapsOf`, one of the `first` outlines after the other with all that follow it: the caller may rest in between. */
+export function* overlapsInTurn(items: readonly { id: string, geometry: Outline }[], first = items.length): Generator<OutlineOverlap[]> {
   const spreads = items.map(item => spreadOf(item.geometry))
-  const found: OutlineOverlap[] = []
-  for (let i = 0; i < items.length; i++) {
+  for (let i = 0; i < first; i++) {
+    const found: OutlineOverlap[] = []
     for (let j = i + 1; j < items.length; j++) {
       const overlap = pairOverlap(items[i]!.id, spreads[i]!, items[j]!.id, spreads[j]!)
       if (overlap) found.push(overlap)
     }
+    yield found
   }
-  return found
 }
 
 /** Ground that one outline shares with each of some others; `b` names the other. As `overlapsOf`, without the pairs among the others. */

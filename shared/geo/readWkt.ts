@@ -1,6 +1,6 @@
 import type { Outline, Position } from '../types/domain.ts'
 import { InputError } from '../types/issue.ts'
-import { limits, readOutlineFile, type NamedOutline } from './outline.ts'
+import { limits, readOutlineFeatures, type OutlineFeatures } from './outline.ts'
 
 /** Whether a text begins as well-known text of an area does. */
 export function looksLikeWkt(text: string): boolean {
@@ -14,13 +14,13 @@ const likeWgs84 = new Set(['4326', '4979', '4258', '4269', '4283', '7844'])
  * Outlines of well-known text (OGC 06-103r4, 7.2): POLYGON and MULTIPOLYGON with or without Z and M, one after another, SRID before
  * them as in EWKT. Longitude first, WGS 84. Throws InputError with the place of the fault, and for another SRID by its number.
  */
-export function readWkt(text: string): { outlines: NamedOutline[], leftOut: number } {
+export function readWkt(text: string): OutlineFeatures {
   if (text.length > limits.bytes) throw new InputError('The text is over 8 MiB. Simplify the outline and try again.', [], 413)
   const reader = new WktReader(text.replace(/^\uFEFF/, ''))
   const geometries: Outline[] = []
   do geometries.push(reader.geometry())
   while (!reader.atEnd())
-  return readOutlineFile({ type: 'FeatureCollection', features: geometries.map(geometry => ({ type: 'Feature', properties: null, geometry })) })
+  return readOutlineFeatures({ type: 'FeatureCollection', features: geometries.map(geometry => ({ type: 'Feature', properties: null, geometry })) })
 }
 
 class WktReader {

@@ -84,6 +84,7 @@ async function freshEdition() {
 }
 
 const newRegion = (kind: string) => () => ({ params: workspace(), body: { name: 'Walked', kind, agencyId: place.agencyId, geometry: square(10, 10) } })
+const newRegions = (kind: string) => () => ({ params: workspace(), body: { agencyId: place.agencyId, regions: [{ name: 'Walked', kind, geometry: square(10, 10) }] } })
 const newSeries = (id: string) => ({ params: { id }, body: { ...seriesFacts, columns: {} }, file: { name: 'mass.csv', content: monthlyCsv(3, -2) } })
 async function binned(kind: 'lake' | 'glacier-region') {
   const id = await freshRegion(kind)
@@ -128,6 +129,10 @@ const steps: Step[] = [
   { route: 'regionRemove', case: 'ice', rule: 'ice', make: async () => ({ params: { id: await freshRegion('glacier-region') }, query: { revision: 1 } }) },
   { route: 'regionRestore', case: 'liquid water', rule: 'liquid', make: () => binned('lake') },
   { route: 'regionRestore', case: 'ice', rule: 'ice', make: () => binned('glacier-region') },
+  { route: 'regionCreateMany', case: 'liquid water', rule: 'liquid', make: newRegions('soil-water') },
+  { route: 'regionCreateMany', case: 'ice', rule: 'ice', make: newRegions('ice-sector') },
+  { route: 'regionRemoveMany', case: 'liquid water', rule: 'liquid', make: async () => ({ params: workspace(), body: { regions: [{ id: await freshRegion('lake'), revision: 1 }] } }) },
+  { route: 'regionRemoveMany', case: 'ice', rule: 'ice', make: async () => ({ params: workspace(), body: { regions: [{ id: await freshRegion('glacier-region'), revision: 1 }] } }) },
   { route: 'regionTotal', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'errorSourceList', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'regionPrediction', rule: 'science', make: () => ({ params: { id: shared.liquid } }) },

@@ -17,7 +17,7 @@ export function projectionOf(prj: string): Projection {
   if (!modern && !/TOWGS84\s*\[/i.test(prj)) throw refuse('and how its datum lies in WGS 84 is not known here')
   const geographic = /^\s*GEOG(?:CS|CRS)/i.test(prj)
   try {
-    const converter = proj4(prj, 'EPSG:4326')
+    const converter = proj4(prj.replace(/PROJECTION\["(?:Lambert_)?Cylindrical_Equal_Area"/i, 'PROJECTION["cea"'), 'EPSG:4326')
     const toLonLat = ([x, y]: readonly number[]): Position => {
       const [lon, lat] = converter.forward([x!, y!])
       return [lon!, lat!]
@@ -32,7 +32,7 @@ export function projectionOf(prj: string): Projection {
 /** Degrees by which a straight edge of the file may stray from its image between two vertices: about a metre. */
 const strayDeg = 1e-5
 const mostHalvings = 8
-/** Digits of a degree that are kept: about 1 cm. */
+/** Parts of a degree that are kept of what was converted: about 1 cm. */
 const kept = 1e7
 
 /** An outline in the file's coordinates as longitude and latitude; where a straight edge of the file bends, vertices are put in. */
@@ -40,6 +40,7 @@ export function convertOutline(outline: Outline, { toLonLat, geographic, name }:
   const convert = (point: readonly number[]): Position => {
     const [lon, lat] = toLonLat(point)
     if (!Number.isFinite(lon) || !Number.isFinite(lat)) throw new InputError(`The coordinates ${point[0]}, ${point[1]} have no place in ${name}, the system that the file names.`, [], 422)
+    if (lon === point[0] && lat === point[1]) return [lon, lat]
     return [Math.round(lon * kept) / kept + 0, Math.round(lat * kept) / kept + 0]
   }
   const ringOf = (ring: readonly Position[]): Position[] => {

@@ -1,7 +1,7 @@
 import { kml } from '@tmcw/togeojson'
 import { DOMParser, ParseError } from '@xmldom/xmldom'
 import type { Feature, Geometry, Position } from 'geojson'
-import { limits, readOutlineFile } from '#shared/geo/outline'
+import { limits, readOutlineFeatures } from '#shared/geo/outline'
 import { InputError } from '#shared/types/issue'
 import type { ReadOutlines } from '../readPasted'
 
@@ -10,7 +10,7 @@ export function readKml(text: string): ReadOutlines {
   if (text.length > limits.bytes) throw new InputError('The text is over 8 MiB. Simplify the outline and try again.', [], 413)
   const { features } = kml(parse(text) as unknown as Document)
   const areas = features.map((feature): Feature<Geometry | null> => ({ ...feature, geometry: feature.geometry && joined(feature.geometry) }))
-  return { ...readOutlineFile({ type: 'FeatureCollection', features: areas }), typed: false }
+  return { ...readOutlineFeatures({ type: 'FeatureCollection', features: areas }), typed: false }
 }
 
 function parse(text: string) {

@@ -1,5 +1,5 @@
 import { open } from 'shapefile'
-import { limits, readOutlineFile } from '#shared/geo/outline'
+import { limits, readOutlineFeatures } from '#shared/geo/outline'
 import type { Outline } from '#shared/types/domain'
 import { InputError } from '#shared/types/issue'
 import type { ReadOutlines } from '../readPasted'
@@ -27,8 +27,8 @@ export async function readShapefile({ shp, dbf, prj, cpg }: ShapefileParts): Pro
     features.push({ type: 'Feature', properties: value.properties, geometry: convertOutline(geometry as Outline, projection) })
   }
   if (!features.length) throw new InputError('There is no area in the shapefile.', [], 422)
-  const read = readOutlineFile({ type: 'FeatureCollection', features })
-  return { outlines: read.outlines, leftOut: leftOut + read.leftOut, typed: false }
+  const read = readOutlineFeatures({ type: 'FeatureCollection', features })
+  return { ...read, leftOut: leftOut + read.leftOut, typed: false }
 }
 
 const damaged = () => new InputError('The shapefile is damaged or cut off.', [], 422)

@@ -6,7 +6,7 @@ import { readBytes, readText } from '../../../app/map/files/readBrought'
 import { polygonsOf } from '../../../shared/geo/parts'
 import { looksLikeWkt, readWkt } from '../../../shared/geo/readWkt'
 import { spreadOf } from '../../../shared/geo/spread'
-import { outlineAsGeoJson, outlineAsKml, outlineAsWkt } from '../../../shared/geo/writeOutline'
+import { outlinesAsGeoJson, outlinesAsKml, outlinesAsWkt } from '../../../shared/geo/writeOutline'
 import type { Outline, Position } from '../../../shared/types/domain'
 
 const fixture = (name: string) => new Uint8Array(readFileSync(fileURLToPath(new URL(`../../fixtures/outlines/${name}`, import.meta.url))))
@@ -106,9 +106,9 @@ describe('well-known text', () => {
 
 describe('an outline that is written', () => {
   it.each(source.features.map(feature => [feature.properties.name, feature.geometry] as const))('comes back from each format: %s', async (name, geometry) => {
-    for (const text of [outlineAsGeoJson(geometry, name), outlineAsKml(geometry, name)]) {
-      expect((await readText(text, 'lat-lon')).outlines).toEqual([{ name, geometry }])
+    for (const text of [outlinesAsGeoJson([{ name, geometry }]), outlinesAsKml([{ name, geometry }])]) {
+      expect((await readText(text, 'lat-lon')).outlines).toEqual([{ name, geometry, attributes: { name } }])
     }
-    expect((await readText(outlineAsWkt(geometry), 'lat-lon')).outlines).toEqual([{ geometry }])
+    expect((await readText(outlinesAsWkt([{ name, geometry }]), 'lat-lon')).outlines).toEqual([{ geometry }])
   })
 })
