@@ -17,6 +17,49 @@ function headOf(source: TableSource): TableSource {
   return source.slice(0, end)
 }
 
+export interface RegionColumn { valueColumn: number, sigmaColumn: number | null, name: string, regionId: string | null }
+
+/**
+ * Columns of values of a wide table, each with the region whose name it bears: the longest name that stands in the column's, and no
+ * region twice. Throws nothing: a table that is none has no columns.
+ */
+export function regionColumns(source: TableSource, regions: readonly { id: string, name: string }[]): RegionColumn[] {
+  let columns: Omit<RegionColumn, 'regionId'>[]
+  try {
+    columns = recogniseMassColumns(readTable(headOf(source)), {}).valueColumns
+  }
+  catch (error) {
+    if (error instanceof InputError) return []
+    throw error
+  }
+  const byLength = [...regions].sort((a, b) => b.name.length - a.name.length)
+  const taken = new Set<string>()
+  const named = new Map<number, string>()
+  // Whole names first, so that “Basin” does not take the column of “Basin North”.
+  for (const fits of [(column: string, name: string) => column === name, (column: string, name: string) => column.includes(name)]) {
+    for (const column of columns) {
+      if (named.has(column.valueColumn)) continue
+      const found = byLength.find(({ id, name }) => bare(name) !== '' && !taken.has(id) && fits(bare(column.name), bare(name)))
+      if (!found) continue
+      named.set(column.valueColumn, found.id)
+      taken.add(found.id)
+    }
+  }
+  return columns.map(({ valueColumn, sigmaColumn, name }) => ({ valueColumn, sigmaColumn, name, regionId: named.get(valueColumn) ?? null }))
+}
+
+/** Names of all columns of a table; empty for one that is none. */
+export function namesOfColumns(source: TableSource): string[] {
+  try {
+    const table = readTable(headOf(source))
+    return Array.from({ length: table.width }, (_, index) => table.header?.[index]?.trim() || `column ${index + 1}`)
+  }
+  catch (error) {
+    if (error instanceof InputError) return []
+    throw error
+  }
+}
+
 /** Letters and digits of a name, for comparing names of columns and regions. */
 const bare = (name: string) => name.toLowerCase().replace(/[^\p{L}\p{N}]+/gu, ' ').trim()
 

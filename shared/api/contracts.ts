@@ -195,6 +195,17 @@ export const contracts = {
     }),
     answer: versionSummary, status: 201, maxBytes: limits.originalBytes,
   }),
+  seriesTableCreate: contract({
+    id: 'seriesTableCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/series-table', action: 'region.write',
+    summary: 'Store a new version of the mass series of several regions from one table with a column for each; all of them or none', params: inWorkspace, bodyType: 'multipart',
+    body: versionFacts.omit({ name: true }).extend({
+      facts: seriesFacts.nullable().default(null),
+      columns: massColumns, conversion: massConversion.nullable().default(null), leaveOutBadRows: z.boolean().default(false),
+      sharedRates: z.array(z.object({ source: name, sigmaGtPerYear: z.number().min(0) })).max(20).default([]),
+      series: z.array(z.object({ regionId: ulid, valueColumn: columnIndex, sigmaColumn: columnIndex.nullable().default(null), unit: massColumns.shape.unit })).min(1).max(200),
+    }),
+    answer: listOf(versionSummary.extend({ regionId: ulid })), status: 201, maxBytes: limits.originalBytes,
+  }),
   seriesVersionRead: contract({
     id: 'seriesVersionRead', method: 'GET', path: '/api/v1/series-versions/{id}', action: 'region.read', summary: 'Values of a series version', params: byId,
     answer: versionSummary.extend({

@@ -86,6 +86,7 @@ async function freshEdition() {
 const newRegion = (kind: string) => () => ({ params: workspace(), body: { name: 'Walked', kind, agencyId: place.agencyId, geometry: square(10, 10) } })
 const newRegions = (kind: string) => () => ({ params: workspace(), body: { agencyId: place.agencyId, regions: [{ name: 'Walked', kind, geometry: square(10, 10) }] } })
 const newSeries = (id: string) => ({ params: { id }, body: { ...seriesFacts, columns: {} }, file: { name: 'mass.csv', content: monthlyCsv(3, -2) } })
+const newTable = (regionId: string) => ({ params: { workspace: place.workspaceId }, body: { ...seriesFacts, columns: {}, series: [{ regionId, valueColumn: 1, sigmaColumn: 2 }] }, file: { name: 'mass.csv', content: monthlyCsv(3, -2) } })
 async function binned(kind: 'lake' | 'glacier-region') {
   const id = await freshRegion(kind)
   const { revision } = await lead.get('regionRemove', { params: { id }, query: { revision: 1 } })
@@ -138,6 +139,8 @@ const steps: Step[] = [
   { route: 'regionPrediction', rule: 'science', make: () => ({ params: { id: shared.liquid } }) },
   { route: 'regionFit', rule: 'science', make: () => ({ params: { id: shared.liquid } }) },
   { route: 'seriesCreate', case: 'liquid water', rule: 'liquid', make: async () => newSeries(await freshRegion('lake')) },
+  { route: 'seriesTableCreate', case: 'liquid water', rule: 'liquid', make: async () => newTable(await freshRegion('lake')) },
+  { route: 'seriesTableCreate', case: 'ice', rule: 'ice', make: async () => newTable(await freshRegion('glacier-region')) },
   { route: 'seriesCreate', case: 'ice', rule: 'ice', make: async () => newSeries(await freshRegion('glacier-region')) },
   { route: 'seriesVersionList', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'seriesVersionRead', rule: 'science', make: () => ({ params: { id: shared.version } }) },

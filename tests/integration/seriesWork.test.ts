@@ -69,6 +69,37 @@ describe('another series that is taken off', () => {
   })
 })
 
+describe('one table for several regions', () => {
+  const table = `date,East,East sigma,West\n${Array.from({ length: 24 }, (_, i) => `${2004 + Math.floor(i / 12)}-${String(i % 12 + 1).padStart(2, '0')}-15,${-i},1,${2 * i}`).join('\n')}\n`
+  const two = async () => Promise.all([makeRegion(lead, place, 'basin', square(60, 10)), makeRegion(lead, place, 'ice-sector', square(-40, 75))])
+  const send = (series: object[], content = table, more: object = {}) => ({ params: { workspace: place.workspaceId }, body: { ...seriesFacts, columns: {}, series, ...more }, file: { name: 'wide.csv', content } })
+
+  it('makes a version of each from its own column, of one file', async () => {
+    const [east, west] = await two()
+    const { items } = await lead.get('seriesTableCreate', send([{ regionId: west!.id, valueColumn: 3 }, { regionId: east!.id, valueColumn: 1, sigmaColumn: 2 }]))
+    expect(items.map(item => [item.regionId, item.n, item.count])).toEqual([[west!.id, 1, 24], [east!.id, 1, 24]])
+    expect(items[0]!.originalSha256).toBe(items[1]!.originalSha256)
+    const [w, e] = await Promise.all(items.map(item => lead.get('seriesVersionRead', { params: { id: item.id } })))
+    expect([w!.massGt[5], w!.sigmaGt, e!.massGt[5], e!.sigmaGt![5]]).toEqual([10, null, -5, 1])
+  })
+
+  it('stores all or none, and says which column has what wrong', async () => {
+    const [east, west] = await two()
+    const gappy = table.replace(',4\n', ',\n')
+    const both = [{ regionId: east!.id, valueColumn: 1 }, { regionId: west!.id, valueColumn: 3 }]
+    const problem = await lead.refused('seriesTableCreate', 422, send(both, gappy))
+    expect(problem.issues).toEqual([expect.objectContaining({ row: 4, column: 'West', code: 'missing-value' })])
+    expect((await lead.get('regionRead', { params: { id: east!.id } })).versions).toEqual([])
+    const { items } = await lead.get('seriesTableCreate', send(both, gappy, { leaveOutBadRows: true }))
+    expect(items.map(item => item.count)).toEqual([24, 23])
+    await lead.refused('seriesTableCreate', 422, send([both[0]!, both[0]!]))
+    // A hydrologist may not bring ice: nothing of the table is stored.
+    const hydrologist = await newcomer(url, dataDir, { place, role: 'hydrologist' })
+    await hydrologist.refused('seriesTableCreate', 403, send(both))
+    expect((await lead.get('regionRead', { params: { id: east!.id } })).versions).toHaveLength(1)
+  })
+})
+
 describe('fields of a version', () => {
   const facts = { citation: 'A made-up report (2020)', method: 'mascons', instrument: 'ranging', contains: ['all'], gravimetry: 'yes', pole: 'yes', lengthOfDay: 'no' }
 

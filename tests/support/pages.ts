@@ -33,6 +33,7 @@ export async function pageVisits(lead: Client, admin: Client): Promise<Record<st
     '/regions': { as: 'lead', path: '/regions' },
     '/regions/[id]': { as: 'lead', path: `/regions/${region}` },
     '/regions/[id]/series': { as: 'lead', path: `/regions/${region}/series` },
+    '/regions/table': { as: 'lead', path: '/regions/table' },
     '/regions/[id]/fit': { as: 'lead', path: `/regions/${region}/fit?acceleration=true&alias=true` },
     '/regions/[id]/sea-level': { as: 'lead', path: `/regions/${region}/sea-level` },
     '/observations': { as: 'lead', path: '/observations' },
