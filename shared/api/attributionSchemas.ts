@@ -30,7 +30,7 @@ const scaling = z.looseObject({
 
 /** The engine's own types say the rest; the schema documents the parts that readers of the API need. */
 export const attributionAnswer = z.looseObject({
-  chain: z.looseObject({}), chainName: z.string().nullable(), chartNote: z.string(), notRemoved: z.array(z.string()), epochsMjd: z.array(z.number()),
+  chain: z.looseObject({}), chainName: z.string().nullable(), from: z.enum(['rotation', 'gravity']), chartNote: z.string(), notRemoved: z.array(z.string()), epochsMjd: z.array(z.number()),
   compared: z.record(z.string(), z.looseObject({ unit: z.enum(['ms', 'mas']), observed: column, model: column, residual: column })),
   leftOut: z.array(z.object({ quantity: z.enum(['lod', 'chi1', 'chi2']), reason: z.string() })),
   budget: z.looseObject({ rows: z.array(row), model: row, observed: row, residual: row, closure: z.looseObject({ quoted: z.boolean() }), sentences: z.array(z.string()) }),

@@ -30,6 +30,7 @@ const quantity = z.looseObject({
   trends: z.object({ observed: measured, model: measured, residual: measured }),
 }).nullable()
 export const comparison = z.looseObject({
+  from: z.literal('gravity').optional(),
   span: z.object({ fromMjd: z.number(), toMjd: z.number() }), epochsMjd: z.array(z.number()),
   lod: quantity, chi1: quantity, chi2: quantity, notRemoved: z.array(z.string()), warnings: z.array(warning),
   reduction: z.looseObject({ name: z.string().nullable(), chain: z.looseObject({}), chartNote: z.string(), steps: z.array(z.object({ title: z.string(), sentence: z.string(), source: z.string() })) }).optional(),

@@ -46,6 +46,7 @@ export function compareReduced(result: RunResult, series: ObservedSeries, { name
   if (lod && !gravity) warn('core', 'Decadal changes in length of day come mostly from the Earth’s core; surface mass explains a small part. A small explained share is not an error.')
   if (result.background.length > 0) warn('background-apart', 'Background rows are not in the model of this comparison; they stand beside it in the budget.')
   return {
+    ...(gravity ? { from: 'gravity' as const } : {}),
     span: common.length > 0 ? { fromMjd: common[0]!.startMjd, toMjd: common.at(-1)!.endMjd } : { ...result.span },
     epochsMjd: common.map(month => month.middleMjd), lod, chi1, chi2, noise: 'ar1', notRemoved: reduced.notRemoved, warnings,
     reduction: { name, chain, chartNote: reduced.chartNote, steps: reduced.steps.filter(step => step.on).map(({ title, sentence, source }) => ({ title, sentence, source })) }

@@ -2,6 +2,7 @@ import { runChain } from '../observed/chain.ts'
 import { circularityWarnings } from '../observed/circularity.ts'
 import type { Basis } from '../observed/circularity.ts'
 import type { Chain, FluidCorrection } from '../observed/chainTypes.ts'
+import { asGravitySees } from '../observed/gravityBackground.ts'
 import type { GravityFields } from '../observed/gravityTypes.ts'
 import { InputError } from '../types/issue.ts'
 import type { ObservedSeries, RunInput, RunResult, RunWarning } from '../types/run.ts'
@@ -56,6 +57,8 @@ export interface AttributionReport {
   chain: Chain
   /** Name that the chain is kept under; null where it is kept under none. */
   chainName: string | null
+  /** What was observed: rotation itself, or gravity coefficients that stand for it. */
+  from: 'rotation' | 'gravity'
   chartNote: string
   notRemoved: string[]
   epochsMjd: number[]
@@ -80,7 +83,8 @@ export interface AttributionReport {
  *
  * @throws InputError for a chain that does not hold for this series
  */
-export function attributionReport({ input, result, series, chain, chainName = null, corrections, gravity, bases, priorSigma, groups: given }: AttributionTask): AttributionReport {
+export function attributionReport({ input: entered, result, series, chain, chainName = null, corrections, gravity, bases, priorSigma, groups: given }: AttributionTask): AttributionReport {
+  const { input, warnings } = series.from === 'gravity' ? asGravitySees(entered) : { input: entered, warnings: [] }
   const reduced = runChain(series, chain, { corrections, gravity })
   const months = observedMonths(reduced, result.epochsMjd)
   const loose = observedMonths(reduced, result.epochsMjd, 'out')
@@ -103,6 +107,7 @@ export function attributionReport({ input, result, series, chain, chainName = nu
   return {
     chain,
     chainName,
+    from: series.from === 'gravity' ? 'gravity' : 'rotation',
     chartNote: reduced.chartNote,
     notRemoved: reduced.notRemoved,
     epochsMjd: result.epochsMjd,
@@ -116,7 +121,7 @@ export function attributionReport({ input, result, series, chain, chainName = nu
     forward: forwardReport(input, result, series, chain),
     ut1: ut1Report(result),
     circularity: circularityWarnings(series.from === 'gravity' ? 'gravity' : 'rotation', bases),
-    warnings: reduced.warnings
+    warnings: [...warnings, ...reduced.warnings]
   }
 }
 

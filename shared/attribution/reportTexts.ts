@@ -5,12 +5,13 @@ const percent = ({ value, sigma }: Rate): string => `${formatMeasured(value * 10
 const rate = (figure: Rate, unit: string): string => formatMeasured(figure.value, figure.sigma, { unit }).text
 
 /** The finding of an attribution in one sentence: shares for the pole alone, rates side by side for the day. */
-export function attributionSentence({ model, observed }: Pick<AttributionBudget, 'model' | 'observed'>, span: { fromMjd: number, toMjd: number }): string {
+export function attributionSentence({ model, observed }: Pick<AttributionBudget, 'model' | 'observed'>, span: { fromMjd: number, toMjd: number }, from: 'rotation' | 'gravity' = 'rotation'): string {
+  const gravity = from === 'gravity'
   const shares = model.ofObservedDrift
   const [calculated, seen] = [model.lodMicrosecondsPerYear, observed.lodMicrosecondsPerYear]
   const parts = [
-    shares ? `regions and background account for ${percent(shares.shareAlong)} of the observed drift of the pole along its direction and ${percent(shares.shareAcross)} across it` : '',
-    calculated && seen ? `the day is calculated to change by ${rate(calculated, 'µs per year')} where ${rate(seen, 'µs per year')} is observed` : ''
+    shares ? `regions and background account for ${percent(shares.shareAlong)} of the ${gravity ? 'drift of the pole that gravity stands for,' : 'observed drift of the pole'} along its direction and ${percent(shares.shareAcross)} across it` : '',
+    calculated && seen ? `the day is calculated to change by ${rate(calculated, 'µs per year')} where ${gravity ? `gravity stands for ${rate(seen, 'µs per year')}` : `${rate(seen, 'µs per year')} is observed`}` : ''
   ].filter(Boolean)
   return parts.length > 0
     ? `Over ${formatSpan(span.fromMjd, span.toMjd)}, ${parts.join(', and ')}.`

@@ -67,7 +67,8 @@ export function excitationFromGravity(series: GravitySeries, fields: GravityFiel
       `The Earth’s yielding was taken out of the coefficients: 1 + k′₂ = ${LOAD_FACTOR} for the pole and ${fields.axialLoadFactor} for the day.`,
       `Net factors: ${formatNumber(factors.netPole, 4)} over C − A for the pole, ${formatNumber(factors.netAxial, 4)} over ${settings.core === 'coupled' ? 'the whole Earth’s C' : 'the mantle’s C'} for the day.`,
       `Reference radius ${formatNumber(fields.radiusM, 1)} m.`,
-      'Winds and currents leave no mark in gravity: this is the mass term alone.'
+      'Winds and currents leave no mark in gravity: this is the mass term alone.',
+      'What moves inside the Earth, as in isostatic adjustment, is no load: divided by 1 + k′₂ like one, it comes out larger than it is.'
     ],
     warnings: gravityWarnings(fields)
   }

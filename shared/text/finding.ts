@@ -66,23 +66,24 @@ function scaled(measured: Measured, factor: number): Measured {
   return { value: measured.value * factor, sigmaWhite: measured.sigmaWhite * factor, sigma: measured.sigma * factor }
 }
 
-function dayRemainder(lod: ComparisonQuantity | null): string | null {
+function dayRemainder(lod: ComparisonQuantity | null, gravity: boolean): string | null {
   if (!lod) return null
   const observed = scaled(lod.trends.observed, 1000)
   const residual = scaled(lod.trends.residual, 1000)
+  if (gravity) return `The observed gravity stands for a change of the length of day of ${perYear(observed, 'µs', true)}; ${perYear(residual, 'µs', true)} is left when the model is taken away.`
   return `The observed length of day changed by ${perYear(observed, 'µs', true)}; `
     + `${perYear(residual, 'µs', true)} is left when the model is taken away, most of it from the Earth’s core.`
 }
 
-function poleRemainder(chi1: ComparisonQuantity | null, chi2: ComparisonQuantity | null): string | null {
+function poleRemainder(chi1: ComparisonQuantity | null, chi2: ComparisonQuantity | null, gravity: boolean): string | null {
   if (!chi1 || !chi2) return null
   const observed = driftOf(chi1.trends.observed, chi2.trends.observed)
   const residual = driftOf(chi1.trends.residual, chi2.trends.residual)
   const say = (drift: ReturnType<typeof driftOf>) => `${perYear(drift.cm, 'cm')}${stands(drift.cm) ? towards(drift.direction) : ''}`
-  return `The observed pole moved ${say(observed)}; ${say(residual)} is left when the model is taken away.`
+  return `${gravity ? 'The observed gravity stands for a pole that moved' : 'The observed pole moved'} ${say(observed)}; ${say(residual)} is left when the model is taken away.`
 }
 
 /** What observation leaves unexplained over the common span, as sentences; empty where the series holds neither quantity. */
 export function remainderSentences(comparison: Comparison): string[] {
-  return [dayRemainder(comparison.lod), poleRemainder(comparison.chi1, comparison.chi2)].filter(text => text !== null)
+  return [dayRemainder(comparison.lod, comparison.from === 'gravity'), poleRemainder(comparison.chi1, comparison.chi2, comparison.from === 'gravity')].filter(text => text !== null)
 }

@@ -216,6 +216,8 @@ export interface ComparisonQuantity {
 
 /** A run beside an observed series: monthly means over the common span. Null quantity: the series does not hold it. */
 export interface Comparison {
+  /** Set where the observed side is what gravity coefficients stand for; absent: rotation itself. */
+  from?: 'gravity'
   span: { fromMjd: number, toMjd: number }
   epochsMjd: number[]
   lod: ComparisonQuantity | null

@@ -75,6 +75,7 @@ export function compareRun(result: RunResult, observed: ObservedSeries, options:
     warn('coarse-pole', `The pole is given every ${Math.round(medianStep(series.mjd))} days: excitation is damped at periods under ${Math.round(13 * medianStep(series.mjd))} days.`)
   }
   return {
+    ...(gravity ? { from: 'gravity' as const } : {}),
     span: months.length > 0 ? { fromMjd: months[0]!.startMjd, toMjd: months.at(-1)!.endMjd } : { ...result.span },
     epochsMjd: months.map(month => month.middleMjd),
     lod,

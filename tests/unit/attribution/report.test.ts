@@ -137,4 +137,18 @@ describe('a prediction treated as the observation', () => {
     expect(tight.scaling.interannual.scaling!.factors[0]!.posterior.value).toBeLessThan(0.5)
     expect(() => attributionReport(task({ groups: [{ name: 'None', regions: ['z'] }] }))).toThrow(/groups do not hold/)
   })
+
+  it('holds gravity coefficients against a model without tidal braking, which moves no mass', () => {
+    const rates = { lodMsPerCentury: { value: 2.3, sigma: 0.1 }, chi1MasPerYear: null, chi2MasPerYear: null }
+    const braking = { key: 'tidal-braking', name: 'Tidal braking', source: 'test', core: 'coupled' as const, ...rates }
+    const rebound = { key: 'isostatic-adjustment', name: 'Isostatic adjustment', source: 'test', core: 'coupled' as const, ...rates }
+    const account = { ...input, background: [braking, rebound] }
+    const rotation = attributionReport(task({ input: account }))
+    const gravity = attributionReport(task({ input: account, series: { ...series, from: 'gravity' } }))
+    expect(rotation.budget.rows.map(row => row.key)).toEqual(['a', 'b', 'tidal-braking', 'isostatic-adjustment'])
+    expect(gravity.budget.rows.map(row => row.key)).toEqual(['a', 'b', 'isostatic-adjustment'])
+    expect(gravity.warnings.map(({ code }) => code)).toContain('torque-left-out')
+    // 2.3 ms per century are 23 µs a year.
+    expect(rotation.budget.model.lodMicrosecondsPerYear!.value - gravity.budget.model.lodMicrosecondsPerYear!.value).toBeCloseTo(23, 9)
+  })
 })
