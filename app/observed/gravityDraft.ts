@@ -1,3 +1,4 @@
+import { formatNumber } from '#shared/format/numbers'
 import { isGravityTable, readGravityCoefficients } from '#shared/observed/gravityCoefficients'
 import { gravityQuestions, type GravityFields, type GravitySeries } from '#shared/observed/gravityTypes'
 import { InputError, type Issue } from '#shared/types/issue'
@@ -49,7 +50,7 @@ export function gravityFieldsOf(answers: GravityAnswers): GravityFields {
 export function gravityAnswerLines(fields: GravityFields): { question: string, answer: string }[] {
   return gravityQuestions.map(({ field, question, choices }) => {
     const value = String(fields[field as keyof GravityFields])
-    return { question, answer: choices?.find(choice => choice.value === value)?.text ?? `${value} m` }
+    return { question, answer: choices?.find(choice => choice.value === value)?.text ?? `${formatNumber(Number(value), 1)} m` }
   })
 }
 

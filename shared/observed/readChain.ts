@@ -44,6 +44,13 @@ export function defaultChain(): Chain {
   }
 }
 
+/** How a chain is called where it is stated: by the name that it is kept under, as the usual one, or as one of its own. */
+export function titleOfChain({ name, chain }: { name: string | null, chain: Chain }): string {
+  const works = ({ from, to, includePredictions, steps }: Chain): string =>
+    JSON.stringify([from, to, includePredictions, steps.filter(step => step.on && !(step.kind === 'background' && step.rows.length === 0)).map(step => Object.entries(step).sort())])
+  return name ? `the chain “${name}”` : works(chain) === works(defaultChain()) ? 'the usual chain' : 'a chain without a name'
+}
+
 /** The chain that does what the options of `reduceObserved` ask for. */
 export function chainOf(options: ReduceOptions): Chain {
   const settings: ReduceSettings = reduceSettings(options)

@@ -1,5 +1,6 @@
 import { formatArea, formatDate, formatInstant, formatMeasured, formatNumber, formatShare, formatSpan } from '#shared/format/numbers'
 import { print } from '#shared/design/tokens'
+import { titleOfChain } from '#shared/observed/readChain'
 import { cautions, cautionsFor } from '#shared/text/cautions'
 import { constantRows } from '#shared/text/constants'
 import { methodSections, settingsLine } from '#shared/text/method'
@@ -57,7 +58,7 @@ export function reductionBlocks({ comparison }: ReportData): Block[] {
   if (!reduction) return []
   const [first, ...rest] = reduction.steps.map(({ sentence, source }, i): Block => ({ text: [`${i + 1}. ${sentence} `, { text: source, color: print.soft }], margin: [0, 0, 0, 3] }))
   return [
-    together(sectionHead('Reduction of the observed series', reduction.name ? `chain “${reduction.name}”; ${reduction.chartNote}` : reduction.chartNote), first ?? paragraph('Nothing is taken away.')),
+    together(sectionHead('Reduction of the observed series', `${titleOfChain(reduction)}; ${reduction.chartNote}`), first ?? paragraph('Nothing is taken away.')),
     ...rest,
     paragraph('The same chain as JSON, to be used again:', { margin: [0, 4, 0, 2], fontSize: size.small, color: print.soft }),
     // A break after every value: one long word would not be broken.

@@ -2,7 +2,7 @@ import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { afterAll, describe, expect, it } from 'vitest'
 import type { Chain } from '#shared/observed/chainTypes'
-import { defaultChain } from '#shared/observed/readChain'
+import { defaultChain, titleOfChain } from '#shared/observed/readChain'
 import { computeRun } from '#shared/earth/time/run'
 import { schema } from '../../../server/database/client'
 import { binChain, changeChain, createChain, listChains, namedChain } from '../../../server/services/chains'
@@ -73,6 +73,8 @@ describe('a comparison with a reduced series', () => {
     expect(plain.reduction).toBeUndefined()
     expect(compared.reduction).toMatchObject({ name: 'Season out', chain: bare, chartNote: expect.stringContaining('seasons removed') as string })
     expect(compared.reduction!.steps.map(step => step.title)).toEqual(['Seasons', 'Monthly means'])
+    expect([titleOfChain(compared.reduction!), titleOfChain({ name: null, chain: bare }), titleOfChain({ name: null, chain: { ...defaultChain(), steps: [...defaultChain().steps, { kind: 'detrend', on: false }] } })])
+      .toEqual(['the chain “Season out”', 'a chain without a name', 'the usual chain'])
     // The rms of 0.4 ms amplitude is 0.28 ms; of 0.02 ms a year over five years, 0.03 ms.
     expect(plain.lod!.rmsObserved).toBeGreaterThan(0.27)
     expect(compared.lod!.rmsObserved).toBeLessThan(0.04)
