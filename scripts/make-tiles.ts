@@ -1,8 +1,9 @@
-// Makes the map's vector tiles from Natural Earth, the same bytes every time:
+// Makes the map's vector tiles, and the land that outlines are snapped to and cut by, from Natural Earth, the same bytes every time:
 //   node scripts/run-ts.mjs scripts/make-tiles.ts
 import { createHash } from 'node:crypto'
 import { mkdirSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
+import { packLand } from '../shared/geo/landFile.ts'
 import { readLandShapes } from './tiles/land.ts'
 import { deepestZoom, makeTiles } from './tiles/tiles.ts'
 
@@ -19,8 +20,10 @@ for (const { z, x, y, bytes } of makeTiles(shapes)) {
   count++
   size += bytes.length
 }
+const source = `Natural Earth 1:50m land, npm world-atlas ${shapes.version}, land-50m.json`
+writeFileSync(join(folder, 'land.json'), packLand(shapes.land, source))
 writeFileSync(join(folder, 'manifest.json'), `${JSON.stringify({
-  source: `Natural Earth 1:50m land, npm world-atlas ${shapes.version}, land-50m.json`,
+  source,
   sourceSha256: shapes.sha256,
   zooms: [0, deepestZoom],
   tiles: count,

@@ -5,6 +5,7 @@ import { PbfReader } from 'pbf'
 import { describe, expect, it } from 'vitest'
 import { readLandShapes } from '../../../scripts/tiles/land.ts'
 import { deepestZoom, makeTiles } from '../../../scripts/tiles/tiles.ts'
+import { packLand, unpackLand } from '../../../shared/geo/landFile.ts'
 import { isInsideRing } from '../../../shared/geo/pointInRing.ts'
 import { ringPath } from '../../../shared/earth/rings.ts'
 import { polygonsOf } from '../../../shared/geo/parts.ts'
@@ -45,6 +46,15 @@ describe('the land of the map', () => {
         expect(Math.abs(to[0] - from[0])).toBeLessThan(20)
       }
     }
+  })
+})
+
+describe('the land that ships for snapping and cutting', () => {
+  it('is what the maker makes, and as large as what it was made from', () => {
+    const text = read('land.json').toString('utf8')
+    expect(text).toBe(packLand(shapes.land, JSON.parse(text).source as string))
+    const area = (polygons: number[][][][]): number => polygons.reduce((sum, rings) => sum + spreadOf({ type: 'Polygon', coordinates: rings as [number, number][][] }).areaM2, 0)
+    expect(area(polygonsOf(unpackLand(JSON.parse(text)))) / area(polygonsOf(shapes.land))).toBeCloseTo(1, 6)
   })
 })
 
