@@ -1,5 +1,5 @@
 import { bboxClip, difference, feature, featureCollection, intersect } from '@turf/turf'
-import type { Feature, MultiPolygon, Polygon } from 'geojson'
+import type { Feature, FeatureCollection, MultiPolygon, Polygon } from 'geojson'
 import type { Outline, Position } from '../types/domain.ts'
 import { InputError } from '../types/issue.ts'
 import { cutAtAntimeridian } from './cut.ts'
@@ -24,7 +24,7 @@ export function outsideOf(outline: Outline, other: Outline): Outline | null {
   return combine(outline, other, difference)
 }
 
-type Operation = typeof intersect
+type Operation = (features: FeatureCollection<Polygon | MultiPolygon>) => Feature<Polygon | MultiPolygon> | null
 
 function combine(outline: Outline, other: Outline, operation: Operation): Outline | null {
   const lands = polygonsOf(cutOnce(other))

@@ -30,12 +30,18 @@ export function beginRing(draft: Draft): Draft {
 }
 
 export function addVertex(draft: Draft, place: Position): Draft {
+  return addPlaces(draft, [roundPlace(place)])
+}
+
+/** Adds places as they are, to the last digit: those of a line that is shared. */
+export function addPlaces(draft: Draft, places: readonly Position[]): Draft {
   if (!draft.open) return draft
-  const last = draft.rings.at(-1) ?? []
-  const rounded = roundPlace(place)
-  const previous = last.at(-1)
-  if (previous && previous[0] === rounded[0] && previous[1] === rounded[1]) return draft
-  return withRing(draft, draft.rings.length - 1, [...last, rounded])
+  const ring = [...draft.rings.at(-1) ?? []]
+  for (const place of places) {
+    const previous = ring.at(-1)
+    if (!previous || previous[0] !== place[0] || previous[1] !== place[1]) ring.push(place)
+  }
+  return ring.length === (draft.rings.at(-1)?.length ?? 0) ? draft : withRing(draft, draft.rings.length - 1, ring)
 }
 
 /** Takes the last vertex of the ring being drawn back. */
@@ -51,8 +57,9 @@ export function finishRing(draft: Draft): Draft {
   return { ...draft, rings: last.length < 3 ? draft.rings.slice(0, -1) : draft.rings, open: false }
 }
 
-export function moveVertex(draft: Draft, { ring, vertex }: VertexPlace, place: Position): Draft {
-  return withRing(draft, ring, draft.rings[ring]!.map((old, k) => k === vertex ? roundPlace(place) : old))
+/** `exact` keeps every digit of a place on a shared line. */
+export function moveVertex(draft: Draft, { ring, vertex }: VertexPlace, place: Position, exact = false): Draft {
+  return withRing(draft, ring, draft.rings[ring]!.map((old, k) => k === vertex ? (exact ? place : roundPlace(place)) : old))
 }
 
 /** Sets a new vertex on the edge that begins at `after`. */

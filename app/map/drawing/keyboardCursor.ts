@@ -1,10 +1,9 @@
 import { onScopeDispose, ref, shallowRef, watch, type Ref, type ShallowRef } from 'vue'
-import type { Map as Chart } from 'maplibre-gl'
 import type { Position } from '#shared/types/domain'
-import { toPlace, toScreen } from '../view'
 import { insertVertex, moveVertex } from './draft'
 import { handleAt } from './handles'
 import type { Hands } from './hands'
+import type { Surface } from './surface'
 
 export interface KeyboardCursor {
   /** Where the crosshair is; null while it is hidden. */
@@ -23,10 +22,10 @@ const reach = 14
 const margin = 40
 
 /**
- * Drawing by keys on the focused map: arrows move a crosshair, Enter sets a vertex (on the first one it finishes, a second time
+ * Drawing by keys on the focused map or another surface: arrows move a crosshair, Enter sets a vertex (on the first one it finishes, a second time
  * in one place too), Backspace takes the last back. While editing, Enter picks a vertex or the middle of an edge up and sets it down.
  */
-export function keyboardCursor(map: Readonly<Ref<Chart | null>>, hands: Hands): KeyboardCursor {
+export function keyboardCursor(surface: Readonly<Ref<Surface | null>>, hands: Hands): KeyboardCursor {
   const place = shallowRef<Position | null>(null)
   const onScreen = shallowRef<{ x: number, y: number } | null>(null)
   const shown = ref(false)
@@ -37,40 +36,45 @@ export function keyboardCursor(map: Readonly<Ref<Chart | null>>, hands: Hands): 
     place.value = onScreen.value = null
   }
   const follow = (): void => {
-    if (place.value && map.value) onScreen.value = toScreen(map.value, place.value)
+    if (place.value && surface.value) onScreen.value = surface.value.toScreen(place.value)
   }
 
-  const go = (chart: Chart, [dx, dy]: [number, number], pixels: number): void => {
-    const { clientWidth, clientHeight } = chart.getContainer()
-    const from = (place.value && toScreen(chart, place.value)) ?? { x: clientWidth / 2, y: clientHeight / 2 }
+  const go = (sheet: Surface, [dx, dy]: [number, number], pixels: number): void => {
+    const { width, height } = sheet.size()
+    const from = (place.value && sheet.toScreen(place.value)) ?? { x: width / 2, y: height / 2 }
     const to = shown.value ? { x: from.x + dx * pixels, y: from.y + dy * pixels } : from
-    const next = toPlace(chart, to)
+    const next = sheet.toPlace(to)
     shown.value = true
     if (next) place.value = next
-    if (holding.value && hands.chosen.value && place.value) hands.underway.value = moveVertex(hands.draft.value, hands.chosen.value, place.value)
-    const beside = to.x < margin || to.y < margin || to.x > clientWidth - margin || to.y > clientHeight - margin
-    if (place.value && (beside || !next)) chart.panBy([dx * 120, dy * 120], { duration: 0 })
+    follow()
+    const snap = onScreen.value ? hands.snapAt(sheet, onScreen.value, false) : null
+    if (holding.value && hands.chosen.value && place.value) {
+      hands.underway.value = snap ? moveVertex(hands.draft.value, hands.chosen.value, snap.place, true) : moveVertex(hands.draft.value, hands.chosen.value, place.value)
+    }
+    const beside = to.x < margin || to.y < margin || to.x > width - margin || to.y > height - margin
+    if (place.value && (beside || !next)) sheet.panBy(dx * 120, dy * 120)
     follow()
   }
 
-  const setHere = (chart: Chart): void => {
+  const setHere = (sheet: Surface): void => {
     if (!place.value || !onScreen.value) return hands.finish()
     const ring = hands.draft.value.rings.at(-1) ?? []
     const near = (vertex: Position | undefined): boolean => {
-      const screen = vertex && toScreen(chart, vertex)
+      const screen = vertex && sheet.toScreen(vertex)
       return !!screen && Math.hypot(screen.x - onScreen.value!.x, screen.y - onScreen.value!.y) < reach
     }
+    const snap = hands.snapAt(sheet, onScreen.value, false)
     if (ring.length >= 3 && (near(ring[0]) || near(ring.at(-1)))) hands.finish()
-    else if (!near(ring.at(-1))) hands.add(place.value)
+    else if (!near(ring.at(-1))) hands.add(snap?.place ?? place.value, snap)
   }
 
-  const pickOrDrop = (chart: Chart): void => {
+  const pickOrDrop = (sheet: Surface): void => {
     if (holding.value) {
       if (hands.underway.value) hands.set(hands.underway.value)
       holding.value = false
       return
     }
-    const handle = onScreen.value && handleAt(chart, hands.draft.value, onScreen.value, reach)
+    const handle = onScreen.value && handleAt(sheet, hands.draft.value, onScreen.value, reach)
     if (!handle) return
     hands.chosen.value = handle.at
     if (handle.kind === 'middle') {
@@ -80,25 +84,25 @@ export function keyboardCursor(map: Readonly<Ref<Chart | null>>, hands: Hands): 
     holding.value = true
   }
 
-  const enter = (chart: Chart): void => {
-    if (hands.state.value === 'drawing') setHere(chart)
-    else pickOrDrop(chart)
+  const enter = (sheet: Surface): void => {
+    if (hands.state.value === 'drawing') setHere(sheet)
+    else pickOrDrop(sheet)
   }
 
   const onKey = (event: KeyboardEvent): void => {
-    const chart = map.value
-    if (!chart || !hands.active.value) return
+    const sheet = surface.value
+    if (!sheet || !hands.active.value) return
     const command = event.ctrlKey || event.metaKey
     const key = event.key.toLowerCase()
-    if (steps[event.key] && !command) go(chart, steps[event.key]!, event.shiftKey ? stepPixels.shift : event.altKey ? stepPixels.alt : stepPixels.plain)
-    else if (event.key === 'Enter') enter(chart)
+    if (steps[event.key] && !command) go(sheet, steps[event.key]!, event.shiftKey ? stepPixels.shift : event.altKey ? stepPixels.alt : stepPixels.plain)
+    else if (event.key === 'Enter') enter(sheet)
     else if (event.key === 'Escape') {
       holding.value = false
       hands.escape()
     }
     else if (event.key === 'Backspace' || event.key === 'Delete') hands.remove()
-    else if ((event.key === '+' || event.key === '=') && !command) chart.zoomIn()
-    else if (event.key === '-' && !command) chart.zoomOut()
+    else if ((event.key === '+' || event.key === '=') && !command) sheet.closer()
+    else if (event.key === '-' && !command) sheet.farther()
     else if (command && key === 'z') (event.shiftKey ? hands.forth : hands.back)()
     else if (command && key === 'y') hands.forth()
     else return
@@ -106,19 +110,24 @@ export function keyboardCursor(map: Readonly<Ref<Chart | null>>, hands: Hands): 
     event.stopPropagation()
   }
 
-  watch(map, (chart, before) => {
-    before?.getCanvasContainer().removeEventListener('keydown', onKey, true)
-    if (!chart) return
-    chart.getCanvasContainer().addEventListener('keydown', onKey, true)
-    chart.on('move', follow)
+  let unfollow: (() => void) | null = null
+  watch(surface, (sheet, before) => {
+    before?.element.removeEventListener('keydown', onKey as EventListener, true)
+    unfollow?.()
+    unfollow = null
+    hide()
+    if (!sheet) return
+    sheet.element.addEventListener('keydown', onKey as EventListener, true)
+    unfollow = sheet.onView(follow)
+    sheet.engage(hands.active.value)
   }, { immediate: true })
   watch(hands.active, (on) => {
     if (!on) hide()
-    if (on) map.value?.keyboard.disable()
-    else map.value?.keyboard.enable()
-    if (on) map.value?.doubleClickZoom.disable()
-    else map.value?.doubleClickZoom.enable()
+    surface.value?.engage(on)
   })
-  onScopeDispose(() => map.value?.getCanvasContainer().removeEventListener('keydown', onKey, true))
+  onScopeDispose(() => {
+    surface.value?.element.removeEventListener('keydown', onKey as EventListener, true)
+    unfollow?.()
+  })
   return { place, onScreen, shown, holding, hide }
 }
