@@ -135,17 +135,19 @@ function within([lon, lat]: readonly [number, number] | Position): Position {
 /** A straight edge is stored as drawn edges of at most this length, degrees, so that both sides share every place on it. */
 const followDeg = 0.25
 const mostFollowed = 20_000
+/** A line is not followed where it is this many times as long as the straight way: that was not meant. */
+const mostDetour = 3
 
 /**
  * The places between two on the same line, along it and by the shorter way where it is closed, so that a border set by its two ends is
- * shared to the last place. Empty where they lie on different lines.
+ * shared to the last place. Empty where they lie on different lines, or where the line goes a long way round.
  */
 export function alongLine(from: Snap, to: Snap): Position[] {
   if (from.line !== to.line || from.at === to.at) return []
-  const { places, closed } = from.line
+  const { closed } = from.line
   const ways = closed ? [walk(from, to, 1), walk(from, to, -1)] : [walk(from, to, to.at > from.at ? 1 : -1)]
   const shortest = ways.sort((a, b) => lengthDeg(a) - lengthDeg(b))[0]!
-  if (shortest.length > mostFollowed || places.length < 2) return []
+  if (shortest.length > mostFollowed || lengthDeg(shortest) > mostDetour * arcDeg(from.place, to.place)) return []
   return shortest.slice(1, -1)
 }
 
