@@ -21,8 +21,8 @@ export interface Visit { page: Page, context: BrowserContext, faults: string[], 
  * A fresh visitor whose every misstep is written down: errors on the console (hydration mismatches among them) and in scripts,
  * requests to other hosts, refusals by the Content-Security-Policy, answers of 500 and files that are missing.
  */
-export async function visit(browser: Browser, url: string, { look = 'light', width = 1280, height = 900 }: { look?: Look, width?: number, height?: number } = {}): Promise<Visit> {
-  const context = await browser.newContext({ baseURL: url, colorScheme: look, viewport: { width, height }, reducedMotion: 'reduce', acceptDownloads: true })
+export async function visit(browser: Browser, url: string, { look = 'light', width = 1280, height = 900, touch = false }: { look?: Look, width?: number, height?: number, touch?: boolean } = {}): Promise<Visit> {
+  const context = await browser.newContext({ baseURL: url, colorScheme: look, viewport: { width, height }, reducedMotion: 'reduce', acceptDownloads: true, hasTouch: touch })
   const faults: string[] = []
   await context.addInitScript('document.addEventListener("securitypolicyviolation", e => console.error(`policy violation: ${e.violatedDirective} ${e.blockedURI} ${e.sample}`))')
   context.on('request', (request) => {
