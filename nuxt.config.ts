@@ -28,6 +28,8 @@ export default defineNuxtConfig({
     dataDir: '.data',
     // 'auto': the demo is seeded into an empty database on a loopback host; 'off' never.
     demo: 'auto',
+    // NUXT_MAIL_URL, NUXT_MAIL_FROM, NUXT_MAIL_SITE: all three, or no mail is sent.
+    mail: { url: '', from: '', site: '' },
   },
   app: {
     head: {
@@ -65,7 +67,7 @@ export default defineNuxtConfig({
       },
       '/tiles/**': { headers: { 'cache-control': 'public, max-age=86400' } },
     },
-    externals: { external: ['better-sqlite3', 'pdfmake', 'piscina'] },
+    externals: { external: ['better-sqlite3', 'nodemailer', 'pdfmake', 'piscina'] },
   },
   vite: {
     build: { chunkSizeWarningLimit: 1500 },

@@ -3,7 +3,7 @@ import { iceKinds, liquidKinds, type RegionKind, type Role } from './types/domai
 /** What can be done. The table below is the only place that says by whom. */
 export const actions = [
   'public.read',
-  'account.read',
+  'account.read', 'account.manage',
   'evaluate',
   'workspace.read',
   'region.read', 'region.write',
@@ -27,13 +27,19 @@ export interface Resource {
 
 export interface Membership { workspaceId: string, agencyId: string | null, role: Role }
 
-/** Who asks: a session today, a token with the same shape tomorrow. */
+/** What a token may do: read, or all that its person may. */
+export const tokenScopes = ['read', 'write'] as const
+export type TokenScope = typeof tokenScopes[number]
+
+/** Who asks: a person through a session, or a program through a token of that person. */
 export interface Principal {
   userId: string
   name: string
   email: string
   operator: boolean
   memberships: Membership[]
+  /** Set where a token asks. */
+  token?: { name: string, scope: TokenScope }
 }
 
 type Rule = 'yes' | 'own' | 'liquid' | 'ice'
@@ -58,7 +64,14 @@ const table: Partial<Record<Action, Partial<Record<Role, Rule>>>> = {
 }
 
 const anyone: readonly Action[] = ['public.read']
-const signedIn: readonly Action[] = ['account.read', 'evaluate']
+const signedIn: readonly Action[] = ['account.read', 'account.manage', 'evaluate']
+/** Actions that store nothing: all that a token for reading may. */
+const reading: readonly Action[] = actions.filter(action => /\.(?:read|list|export)$/.test(action) || action === 'evaluate')
+
+/** A token never reaches further than its scope, nor to the account that it belongs to: it makes no tokens and changes no password. */
+function tokenReaches({ scope }: { scope: TokenScope }, action: Action): boolean {
+  return action !== 'account.manage' && (scope === 'write' || reading.includes(action))
+}
 
 function holds(rule: Rule | undefined, principal: Principal, resource: Resource): boolean {
   switch (rule) {
@@ -77,7 +90,7 @@ function holds(rule: Rule | undefined, principal: Principal, resource: Resource)
  */
 export function can(principal: Principal | null, action: Action, resource: Resource = {}): boolean {
   if (anyone.includes(action)) return true
-  if (!principal) return false
+  if (!principal || (principal.token && !tokenReaches(principal.token, action))) return false
   if (signedIn.includes(action)) return true
   if (action === 'instance.operate') return principal.operator
   return principal.memberships

@@ -1,5 +1,6 @@
 import { sql } from 'drizzle-orm'
 import { blob, index, integer, primaryKey, real, sqliteTable, text, uniqueIndex } from 'drizzle-orm/sqlite-core'
+import type { TokenScope } from '#shared/permissions'
 import type { Role, RegionKind } from '#shared/types/domain'
 
 const id = () => text().primaryKey()
@@ -52,10 +53,10 @@ export const membership = sqliteTable('membership', {
   ...mutable(),
 }, t => [uniqueIndex('membership_one').on(t.workspaceId, t.userId, t.role).where(sql`${t.deletedAt} is null`)])
 
-/** One-time links: the first operator of an instance, and people asked into a workspace. */
+/** One-time links: the first operator of an instance, people asked into a workspace, and people who need a new password. */
 export const invitation = sqliteTable('invitation', {
   hash: text().primaryKey(),
-  kind: text().$type<'operator' | 'member'>().notNull(),
+  kind: text().$type<'operator' | 'member' | 'password'>().notNull(),
   email: text(),
   workspaceId: text().references(() => workspace.id),
   agencyId: text().references(() => agency.id),
@@ -65,6 +66,31 @@ export const invitation = sqliteTable('invitation', {
   expiresAt: instant().notNull(),
   usedAt: instant(),
 })
+
+/** What a program signs in with. The secret itself is not kept. */
+export const token = sqliteTable('token', {
+  id: id(),
+  hash: text().notNull(),
+  userId: text().notNull().references(() => user.id, { onDelete: 'cascade' }),
+  name: text().notNull(),
+  scope: text().$type<TokenScope>().notNull(),
+  createdAt: instant().notNull(),
+  expiresAt: instant().notNull(),
+  lastUsedAt: instant(),
+}, t => [uniqueIndex('token_hash').on(t.hash), index('token_user').on(t.userId)])
+
+/** Mail on its way: stored with the change that it tells of, sent afterwards. The text goes once it is sent, for it may hold a link. */
+export const outbox = sqliteTable('outbox', {
+  id: id(),
+  recipient: text().notNull(),
+  subject: text().notNull(),
+  text: text().notNull(),
+  createdAt: instant().notNull(),
+  sentAt: instant(),
+  tries: integer().notNull().default(0),
+  nextTryAt: instant().notNull(),
+  fault: text(),
+}, t => [index('outbox_open').on(t.sentAt, t.nextTryAt)])
 
 export const region = sqliteTable('region', {
   id: id(),

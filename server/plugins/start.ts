@@ -4,6 +4,7 @@ import { openStore, type Store } from '../database/client'
 import { seedDemo } from '../services/demo'
 import { earthModelFrom } from '../services/earthModelFile'
 import { Jobs } from '../services/jobs'
+import { mailFrom, type Mail, type MailSettings } from '../services/mail'
 import { createThrottle, firstOperatorToken } from '../services/people'
 import type { Context } from '../services/context'
 import { setContext } from '../utils/context'
@@ -26,22 +27,25 @@ export default defineNitroPlugin((nitroApp) => {
   const jobs = new Jobs(runtimeFile('workers', 'run.mjs'), optionalFile('earth', 'fields.bin'))
   nitroApp.hooks.hook('close', async () => {
     setContext(undefined)
+    await mail?.close()
     await jobs.close()
     store.close()
   })
   // Nitro does not wait for plugins: until all is ready, routes answer 503 “starting”.
-  void begin(store, jobs, config.demo !== 'off')
+  let mail: Mail | null = null
+  void begin(store, jobs, config.demo !== 'off', config.mail).then((context) => { mail = context.mail })
 })
 
-async function begin(store: Store, jobs: Jobs, demo: boolean) {
+async function begin(store: Store, jobs: Jobs, demo: boolean, mail: MailSettings): Promise<Context> {
   try {
     const host = process.env.NITRO_HOST || process.env.HOST!
+    const now = () => new Date().toISOString()
     const context: Context = {
-      ...store, jobs,
+      ...store, jobs, now,
       earth: await earthModelFrom(optionalFile('earth', 'fields.bin')),
-      now: () => new Date().toISOString(),
       demo: demo && loopback(host),
       throttle: createThrottle(),
+      mail: await mailFrom({ ...store, now }, mail),
       passwords: { hash: hashPassword, verify: verifyPassword },
     }
     jobs.resume(context)
@@ -49,6 +53,7 @@ async function begin(store: Store, jobs: Jobs, demo: boolean) {
     setContext(context)
     const token = firstOperatorToken(context)
     if (token) console.log(`[counterpoise] No people yet. Open this one-time link to make the first operator:\n  http://${host}:${process.env.PORT || 3000}/invitation/${token}`)
+    return context
   }
   catch (error) {
     console.error('[counterpoise] The server could not start:', error)

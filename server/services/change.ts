@@ -42,10 +42,12 @@ export function change<T>(context: Context, principal: Principal | null, target:
       throw new Problem(409, 'revision', `Somebody changed this meanwhile: it is at revision ${target.row.revision}, you had ${target.revision}. Load it again; what you entered is still on your screen.`)
     }
     const { result, before, after } = fn(tx)
-    appendLog(context, tx, { actorId: actor.userId, actor: actor.name, target, before, after })
+    appendLog(context, tx, { actorId: actor.userId, actor: actorName(actor), target, before, after })
     return result
   }, { behavior: 'immediate' })
 }
+
+const actorName = ({ name, token }: Principal) => token ? `${name}, token “${token.name}”` : name
 
 interface LogEntry { actorId: string | null, actor: string, target: Omit<ChangeTarget, 'action'>, before?: unknown, after?: unknown }
 

@@ -7,6 +7,7 @@ import { Problem } from '../utils/problem'
 import { appendLog, change, newId } from './change'
 import type { Context } from './context'
 import { secretToken, sha256Hex } from './hash'
+import { linkLetter } from './letters'
 
 const inviteLifetimeMs = 7 * 24 * 3600 * 1000
 const failures = { most: 8, windowMs: 10 * 60 * 1000 }
@@ -46,12 +47,12 @@ export async function checkPassword(context: Context, throttle: Throttle, addres
   return user
 }
 
-interface Invite { kind: 'operator' | 'member', email: string | null, workspaceId: string | null, agencyId: string | null, role: typeof schema.invitation.$inferInsert['role'] }
+interface Invite { kind: 'operator' | 'member' | 'password', email: string | null, workspaceId: string | null, agencyId: string | null, role: typeof schema.invitation.$inferInsert['role'] }
 
-function storeInvitation(context: Context, tx: Reader, invite: Invite, createdBy: string | null) {
+export function storeInvitation(context: Context, tx: Reader, invite: Invite, createdBy: string | null, lifetimeMs = inviteLifetimeMs) {
   const token = secretToken()
   const now = context.now()
-  const expiresAt = new Date(Date.parse(now) + inviteLifetimeMs).toISOString()
+  const expiresAt = new Date(Date.parse(now) + lifetimeMs).toISOString()
   tx.insert(schema.invitation).values({ hash: sha256Hex(token), ...invite, createdAt: now, createdBy, expiresAt }).run()
   return { token, expiresAt }
 }
@@ -65,11 +66,17 @@ export function firstOperatorToken(context: Context): string | null {
   })
 }
 
-function openInvitation(context: Context, token: string) {
+export function openInvitation(context: Context, token: string) {
   const row = context.db.select().from(schema.invitation).where(eq(schema.invitation.hash, sha256Hex(token))).get()
   if (!row || row.usedAt) throw new Problem(404, 'invitation', 'This link was used already or never existed. Ask for a new one.')
   if (row.expiresAt < context.now()) throw new Problem(410, 'invitation', 'This link has run out. Ask for a new one.')
   return row
+}
+
+/** A link works once, however quickly it is opened twice. */
+export function markUsed(context: Context, tx: Reader, hash: string) {
+  const used = tx.update(schema.invitation).set({ usedAt: context.now() }).where(and(eq(schema.invitation.hash, hash), isNull(schema.invitation.usedAt))).run()
+  if (used.changes !== 1) throw new Problem(404, 'invitation', 'This link was used already.')
 }
 
 export function invitationView(context: Context, token: string) {
@@ -91,9 +98,7 @@ export async function acceptInvitation(context: Context, throttle: Throttle, add
   const passwordHash = known?.passwordHash ?? await context.passwords.hash(body.password)
 
   return context.db.transaction((tx) => {
-    const used = tx.update(schema.invitation).set({ usedAt: context.now() })
-      .where(and(eq(schema.invitation.hash, invitation.hash), isNull(schema.invitation.usedAt))).run()
-    if (used.changes !== 1) throw new Problem(404, 'invitation', 'This link was used already.')
+    markUsed(context, tx, invitation.hash)
     const userId = known?.id ?? newId()
     const name = known?.name ?? body.name!
     if (!known) {
@@ -164,13 +169,19 @@ export function requireAgency(context: Context, workspaceId: string, agencyId: s
 
 export function inviteMember(context: Context, principal: Principal | null, workspaceId: string, body: BodyOf<typeof contracts.memberInvite>, origin: string) {
   if (body.agencyId) requireAgency(context, workspaceId, body.agencyId)
-  return change(context, principal, { action: 'member.manage', verb: 'asked in', entity: 'member', id: body.email, workspaceId }, (tx) => {
+  const { mail } = context
+  const answer = change(context, principal, { action: 'member.manage', verb: 'asked in', entity: 'member', id: body.email, workspaceId }, (tx) => {
     const { token, expiresAt } = storeInvitation(context, tx, { kind: 'member', email: body.email, workspaceId, agencyId: body.agencyId, role: body.role }, principal!.userId)
-    return { result: { link: `${origin}/invitation/${token}`, expiresAt }, after: { email: body.email, role: body.role } }
+    const link = `${mail?.site ?? origin}/invitation/${token}`
+    const workspace = tx.select().from(schema.workspace).where(eq(schema.workspace.id, workspaceId)).get()!
+    mail?.put(tx, linkLetter('member', body.email, link, expiresAt, `${workspace.name}, as ${body.role}, by ${principal!.name}.`))
+    return { result: { link, expiresAt, mailed: mail !== null }, after: { email: body.email, role: body.role } }
   })
+  void mail?.send()
+  return answer
 }
 
-function membershipRow(context: Context, id: string) {
+export function membershipRow(context: Context, id: string) {
   const row = context.db.select().from(schema.membership).where(and(eq(schema.membership.id, id), isNull(schema.membership.deletedAt))).get()
   if (!row) throw new Problem(404, 'not-found', 'There is no such member.')
   return row

@@ -27,7 +27,7 @@ const places: Record<string, (context: Context, params: Params) => Place> = {
  */
 export function workspaceOfRoute(context: Context, contract: Contract, params: Params = {}): string | undefined {
   if (params.workspace) return params.workspace
-  if (contract.action === 'public.read' || !contract.params) return undefined
+  if (contract.action === 'public.read' || contract.action.startsWith('account.') || !contract.params) return undefined
   const collection = contract.path.split('/')[3]!
   const place = places[collection]
   if (!place) throw new Error(`${contract.id}: nothing says in which workspace a row of /${collection} lies`)

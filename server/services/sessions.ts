@@ -1,8 +1,8 @@
-import { and, eq, gt, isNull } from 'drizzle-orm'
+import { and, eq, gt, isNull, ne } from 'drizzle-orm'
 import type { z } from 'zod'
 import type { me } from '#shared/api/schemas'
 import type { Principal } from '#shared/permissions'
-import { schema } from '../database/client'
+import { schema, type Reader } from '../database/client'
 import type { Context } from './context'
 import { secretToken, sha256Hex } from './hash'
 
@@ -21,6 +21,13 @@ export function startSession(context: Context, userId: string): string {
 
 export function endSession(context: Context, token: string) {
   context.db.delete(schema.session).where(eq(schema.session.hash, sha256Hex(token))).run()
+}
+
+/** Sets a password and ends the person's sessions, all but the one whose secret is given. */
+export function setPassword(tx: Reader, userId: string, passwordHash: string, keepSession: string | null = null) {
+  tx.update(schema.user).set({ passwordHash }).where(eq(schema.user.id, userId)).run()
+  const others = keepSession ? ne(schema.session.hash, sha256Hex(keepSession)) : undefined
+  tx.delete(schema.session).where(and(eq(schema.session.userId, userId), others)).run()
 }
 
 /** Who a session's secret stands for; null when it ended, ran out or never was. */

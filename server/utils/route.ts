@@ -8,6 +8,7 @@ import { schema } from '../database/client'
 import { sha256Hex } from '../services/hash'
 import { workspaceOfRoute } from '../services/rowWorkspace'
 import { principalOfSession } from '../services/sessions'
+import { principalOfToken } from '../services/tokens'
 import { readJson, readMultipart, type Upload } from './body'
 import { useContext } from './context'
 import { Problem, problemBody } from './problem'
@@ -37,12 +38,16 @@ export function route<C extends Contract>(contract: C, handle: (call: RouteCall<
     try {
       const context = useContext()
       const principal = await principalOf(event, context)
-      if (!principal && contract.action !== 'public.read') throw new Problem(401, 'sign-in', 'This needs an account: sign in first.')
+      if (!principal && contract.action !== 'public.read') {
+        throw bearerToken(event) === null
+          ? new Problem(401, 'sign-in', 'This needs an account: sign in first.')
+          : new Problem(401, 'token', 'This token is not known here, was revoked, or has run out.')
+      }
 
       const params = parse(contract.params, getRouterParams(event, { decode: true }), 404)
       const workspaceId = workspaceOfRoute(context, contract, params as Record<string, string> | undefined)
       if (workspaceId && !principal?.memberships.some(m => m.workspaceId === workspaceId)) throw new Problem(404, 'not-found', 'There is no such thing here.')
-      if (!can(principal, contract.action, { workspaceId })) throw new Problem(403, 'role', 'Your role in this workspace does not allow this.')
+      if (!can(principal, contract.action, { workspaceId })) throw refusedTo(principal)
 
       const query = parse(contract.query, getQuery(event), 422)
       let body: unknown
@@ -115,7 +120,7 @@ function withRevision(event: H3Event, value: unknown): unknown {
 /** A POST with an Idempotency-Key is done once: the same request again gets the first answer. */
 function remember(event: H3Event, context: Context, principal: Principal | null, contract: Contract, text: string) {
   const key = getRequestHeader(event, 'idempotency-key')
-  if (!key || !principal || contract.method !== 'POST' || contract.bodyType === 'multipart') return null
+  if (!key || !principal || contract.method !== 'POST' || contract.secret || contract.bodyType === 'multipart') return null
   if (key.length > 200) throw new Problem(422, 'idempotency-key', 'An Idempotency-Key has at most 200 characters.')
   const request = sha256Hex(`${contract.id}\n${event.path}\n${text}`)
   const found = context.db.select().from(schema.idempotency).where(and(eq(schema.idempotency.userId, principal.userId), eq(schema.idempotency.key, key))).get()
@@ -136,7 +141,19 @@ function checkAnswer(contract: Contract, answer: unknown) {
   if (!parsed.success) throw new Error(`answer of ${contract.id} breaks its contract: ${parsed.error.message}`)
 }
 
+function refusedTo(principal: Principal | null): Problem {
+  return principal?.token
+    ? new Problem(403, 'scope', 'This token’s scope, or the role of its person, does not allow this.')
+    : new Problem(403, 'role', 'Your role in this workspace does not allow this.')
+}
+
+function bearerToken(event: H3Event): string | null {
+  return /^Bearer +(\S+)$/i.exec(getRequestHeader(event, 'authorization') ?? '')?.[1] ?? null
+}
+
 async function principalOf(event: H3Event, context: Context): Promise<Principal | null> {
+  const bearer = bearerToken(event)
+  if (bearer !== null) return principalOfToken(context, bearer)
   const token = await sessionToken(event)
   return token ? principalOfSession(context, token) : null
 }

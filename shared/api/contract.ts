@@ -22,6 +22,8 @@ export interface Contract<
   /** Media type of the answer; JSON when left out. */
   answerType?: string
   status?: number
+  /** The answer holds a secret: it is not kept for a repeated request. */
+  secret?: boolean
   /** Largest body in bytes. */
   maxBytes?: number
 }

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { epochFormats } from '../series/epochColumn.ts'
+import { tokenScopes } from '../permissions.ts'
 import { oceanModes } from '../types/domain.ts'
 import { attributionAnswer, attributionQuery } from './attributionSchemas.ts'
 import { chainAnswer, chainBody, chainQuery, chainText, savedChain } from './chainSchemas.ts'
@@ -39,7 +40,10 @@ const password = z.string().min(10, 'must have at least 10 characters').max(200)
 const versionFacts = z.object({
   name, reason: prose.default(''), source: prose, licence: prose.default(''), independence: prose.default(''),
 })
-const invited = z.object({ link: z.string(), expiresAt: z.string() })
+const oneTimeLink = z.object({ link: z.string(), expiresAt: z.string() })
+/** `mailed`: the link is on its way by mail as well. */
+const invited = oneTimeLink.extend({ mailed: z.boolean() })
+const token = z.object({ id: ulid, name: z.string(), scope: z.enum(tokenScopes), createdAt: z.string(), expiresAt: z.string(), lastUsedAt: z.string().nullable() })
 const columnIndex = z.int().min(0)
 const observedOptions = versionFacts.extend({
   /** For a table (CSV): which column is what. Left out, columns are recognised by name. */
@@ -74,7 +78,7 @@ export const contracts = {
   invitationRead: contract({
     id: 'invitationRead', method: 'GET', path: '/api/v1/invitations/{token}', action: 'public.read', summary: 'What a one-time link is for',
     params: z.object({ token: z.string().max(100) }),
-    answer: z.object({ kind: z.enum(['operator', 'member']), email: z.string().nullable(), workspaceName: z.string().nullable(), role: role.nullable(), knownAccount: z.boolean() }),
+    answer: z.object({ kind: z.enum(['operator', 'member', 'password']), email: z.string().nullable(), workspaceName: z.string().nullable(), role: role.nullable(), knownAccount: z.boolean() }),
   }),
   invitationAccept: contract({
     id: 'invitationAccept', method: 'POST', path: '/api/v1/invitations/{token}', action: 'public.read', summary: 'Use a one-time link',
@@ -82,17 +86,46 @@ export const contracts = {
     body: z.object({ email: z.email().max(254).optional(), name: name.optional(), password: password.optional(), workspaceName: name.optional(), agencyName: name.optional() }),
     answer: me,
   }),
+  passwordForgotten: contract({
+    id: 'passwordForgotten', method: 'POST', path: '/api/v1/password-resets', action: 'public.read',
+    summary: 'Ask for a one-time link to a new password by mail; the answer is the same whether or not there is such an account',
+    body: z.object({ email: z.email().max(254) }), answer: z.object({ mail: z.boolean() }),
+  }),
+  passwordChange: contract({
+    id: 'passwordChange', method: 'POST', path: '/api/v1/account/password', action: 'account.manage', summary: 'Change one’s own password; ends all other sessions',
+    body: z.object({ current: z.string().min(1).max(200), password }), answer: nothing, status: 204,
+  }),
+  tokenList: contract({ id: 'tokenList', method: 'GET', path: '/api/v1/tokens', action: 'account.manage', summary: 'One’s own tokens', answer: listOf(token) }),
+  tokenCreate: contract({
+    id: 'tokenCreate', method: 'POST', path: '/api/v1/tokens', action: 'account.manage', summary: 'Make a token for a program; its secret is in this answer and nowhere else',
+    body: z.object({ name, scope: z.enum(tokenScopes), days: z.int().min(1).max(366) }), answer: token.extend({ secret: z.string() }), status: 201, secret: true,
+  }),
+  tokenRevoke: contract({
+    id: 'tokenRevoke', method: 'DELETE', path: '/api/v1/tokens/{id}', action: 'account.manage', summary: 'Revoke one of one’s own tokens', params: byId, answer: nothing, status: 204,
+  }),
+  invitationList: contract({
+    id: 'invitationList', method: 'GET', path: '/api/v1/workspaces/{workspace}/invitations', action: 'member.manage', summary: 'Invitations that nobody used yet', params: inWorkspace,
+    answer: listOf(z.object({ id: sha256, email: z.string(), role, agencyName: z.string().nullable(), createdAt: z.string(), createdBy: z.string().nullable(), expiresAt: z.string() })),
+  }),
+  invitationWithdraw: contract({
+    id: 'invitationWithdraw', method: 'DELETE', path: '/api/v1/workspaces/{workspace}/invitations/{id}', action: 'member.manage', summary: 'Withdraw an invitation: its link no longer works',
+    params: z.object({ workspace: ulid, id: sha256 }), answer: nothing, status: 204,
+  }),
   memberList: contract({
     id: 'memberList', method: 'GET', path: '/api/v1/workspaces/{workspace}/members', action: 'member.manage', summary: 'People of a workspace', params: inWorkspace,
     answer: listOf(z.object({ id: ulid, revision, userId: ulid, name: z.string(), email: z.string(), role, agencyId: ulid.nullable(), agencyName: z.string().nullable() })),
   }),
   memberInvite: contract({
     id: 'memberInvite', method: 'POST', path: '/api/v1/workspaces/{workspace}/members', action: 'member.manage', summary: 'Ask somebody in by a one-time link', params: inWorkspace,
-    body: z.object({ email: z.email().max(254), role, agencyId: ulid.nullable() }), answer: invited, status: 201,
+    body: z.object({ email: z.email().max(254), role, agencyId: ulid.nullable() }), answer: invited, status: 201, secret: true,
   }),
   memberChange: contract({
     id: 'memberChange', method: 'PATCH', path: '/api/v1/members/{id}', action: 'member.manage', summary: 'Change a role', params: byId,
     body: z.object({ revision, role, agencyId: ulid.nullable() }), answer: changed,
+  }),
+  memberPasswordLink: contract({
+    id: 'memberPasswordLink', method: 'POST', path: '/api/v1/members/{id}/password-link', action: 'member.manage',
+    summary: 'Make a one-time link to a new password for a member who belongs to no other workspace', params: byId, answer: oneTimeLink, status: 201, secret: true,
   }),
   memberRemove: contract({
     id: 'memberRemove', method: 'DELETE', path: '/api/v1/members/{id}', action: 'member.manage', summary: 'Remove somebody from a workspace', params: byId,
@@ -138,6 +171,15 @@ export const contracts = {
     id: 'regionCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions', action: 'region.write', summary: 'Add a region', params: inWorkspace,
     body: z.object({ name, kind: regionKind, agencyId: ulid, note: prose.default(''), geometry }), answer: region, status: 201, maxBytes: limits.evaluateBytes,
   }),
+  regionCreateMany: contract({
+    id: 'regionCreateMany', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions/batch', action: 'region.write', summary: 'Add several regions: all of them or, where one does not hold, none', params: inWorkspace,
+    body: z.object({ agencyId: ulid, regions: z.array(z.object({ name, kind: regionKind, note: prose.default(''), geometry })).min(1).max(limits.outlines) }),
+    answer: listOf(z.object({ id: ulid, revision, name: z.string() })), status: 201, maxBytes: limits.outlinesBytes,
+  }),
+  regionRemoveMany: contract({
+    id: 'regionRemoveMany', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions/bin', action: 'region.write', summary: 'Put several regions in the bin: all of them or none', params: inWorkspace,
+    body: z.object({ regions: z.array(z.object({ id: ulid, revision })).min(1).max(limits.outlines) }), answer: listOf(z.object({ id: ulid, revision })),
+  }),
   regionRead: contract({
     id: 'regionRead', method: 'GET', path: '/api/v1/regions/{id}', action: 'region.read', summary: 'A region', params: byId,
     answer: region.extend({
@@ -176,15 +218,6 @@ export const contracts = {
     query: fitQuery, answer: fitAnswer,
   }),
 
-  regionCreateMany: contract({
-    id: 'regionCreateMany', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions/batch', action: 'region.write', summary: 'Add several regions: all of them or, where one does not hold, none', params: inWorkspace,
-    body: z.object({ agencyId: ulid, regions: z.array(z.object({ name, kind: regionKind, note: prose.default(''), geometry })).min(1).max(limits.outlines) }),
-    answer: listOf(z.object({ id: ulid, revision, name: z.string() })), status: 201, maxBytes: limits.outlinesBytes,
-  }),
-  regionRemoveMany: contract({
-    id: 'regionRemoveMany', method: 'POST', path: '/api/v1/workspaces/{workspace}/regions/bin', action: 'region.write', summary: 'Put several regions in the bin: all of them or none', params: inWorkspace,
-    body: z.object({ regions: z.array(z.object({ id: ulid, revision })).min(1).max(limits.outlines) }), answer: listOf(z.object({ id: ulid, revision })),
-  }),
   // Mass series
   seriesCreate: contract({
     id: 'seriesCreate', method: 'POST', path: '/api/v1/regions/{id}/series', action: 'region.write', summary: 'Store a new version of a region’s mass series', params: byId, bodyType: 'multipart',

@@ -48,7 +48,7 @@ function operation(c: Contract, components: Components): Json {
     tags: [c.path.split('/')[3]],
     parameters: [...parameters(c.params, 'path', components), ...parameters(c.query, 'query', components)],
     ...(c.body ? { requestBody: requestBody(c, components) } : {}),
-    ...(open ? { security: [] } : {}),
+    ...(open ? { security: [] } : c.action === 'account.manage' ? { security: [{ session: [] }] } : {}),
     responses: {
       [String(c.status ?? 200)]: empty
         ? { description: 'Done' }
@@ -69,11 +69,14 @@ export function openApiDocument(): Json {
     openapi: '3.1.0',
     info: { title: 'Counterpoise', version: '1', description: 'Regional mass change and what it does to the Earth’s spin and pole. Units and signs stand in every name: Gt, mas, microseconds, mm.' },
     servers: [{ url: '/' }],
-    security: [{ session: [] }],
+    security: [{ session: [] }, { token: [] }],
     paths,
     components: {
       schemas,
-      securitySchemes: { session: { type: 'apiKey', in: 'cookie', name: 'counterpoise-session' } },
+      securitySchemes: {
+        session: { type: 'apiKey', in: 'cookie', name: 'counterpoise-session' },
+        token: { type: 'http', scheme: 'bearer', description: 'A token that a person makes on their account page, for reading or for all that the person may; never for the account itself.' },
+      },
     },
   }
 }

@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto'
 import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { ulid } from 'ulid'
@@ -22,6 +23,7 @@ type Who = typeof everybody[number]
 const rules = {
   open: 'yes yes yes yes yes yes yes yes',
   signedIn: 'yes yes yes yes yes yes 401 yes',
+  nobodyElse: '404 404 404 404 404 404 401 404',
   members: '404 yes yes yes yes yes 401 404',
   people: '404 yes 403 403 403 403 401 404',
   changeLog: '404 yes yes 403 403 403 401 404',
@@ -77,6 +79,7 @@ async function freshInvitation() {
   const { link } = await clients.administrator.get('memberInvite', { params: workspace(), body: { email: `${ulid().toLowerCase()}@walk.example`, role: 'reader', agencyId: null } })
   return link.split('/').at(-1)!
 }
+const freshToken = async (client: Client) => (await client.get('tokenCreate', { body: { name: 'walk', scope: 'read', days: 1 } })).id
 async function freshEdition() {
   const slug = `walk-${ulid().toLowerCase()}`
   await lead.get('editionCreate', { params: { id: shared.runId }, body: { slug, title: 'Walk', licence: '', observedId: null } })
@@ -106,6 +109,15 @@ const steps: Step[] = [
   { route: 'sessionDelete', rule: 'open', fresh: true, make: () => ({}) },
   { route: 'invitationRead', rule: 'open', make: async () => ({ params: { token: await freshInvitation() } }) },
   { route: 'invitationAccept', rule: 'open', fresh: true, make: async () => ({ params: { token: await freshInvitation() }, body: { name: 'New', password: 'a long enough one' } }) },
+  { route: 'passwordForgotten', rule: 'open', make: () => ({ body: { email: 'nobody-known@walk.example' } }) },
+  { route: 'passwordChange', rule: 'signedIn', make: who => ({ body: { current: demoPassword, password: who === 'nobody' ? 'a long enough one' : demoPassword } }) },
+  { route: 'tokenList', rule: 'signedIn', make: () => ({}) },
+  { route: 'tokenCreate', rule: 'signedIn', make: () => ({ body: { name: 'walk', scope: 'read', days: 1 } }) },
+  { route: 'tokenRevoke', case: 'own', rule: 'signedIn', make: async who => ({ params: { id: who === 'nobody' ? ulid() : await freshToken(clients[who]) } }) },
+  { route: 'tokenRevoke', case: 'of another', rule: 'nobodyElse', make: async who => ({ params: { id: await freshToken(who === 'lead' ? clients.reader : lead) } }) },
+  { route: 'invitationList', rule: 'people', make: () => ({ params: workspace() }) },
+  { route: 'invitationWithdraw', rule: 'people', make: async () => ({ params: { ...workspace(), id: createHash('sha256').update(await freshInvitation()).digest('hex') } }) },
+  { route: 'memberPasswordLink', rule: 'people', make: () => ({ params: { id: freshMember() } }) },
   { route: 'memberList', rule: 'people', make: () => ({ params: workspace() }) },
   { route: 'memberInvite', rule: 'people', make: () => ({ params: workspace(), body: { email: `${ulid()}@walk.example`, role: 'reader', agencyId: null } }) },
   { route: 'memberChange', rule: 'people', make: () => ({ params: { id: freshMember() }, body: { revision: 1, role: 'lead', agencyId: null } }) },

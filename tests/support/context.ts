@@ -21,6 +21,7 @@ export function temporaryContext(): Context & { dispose: () => void } {
     demo: false,
     get jobs(): never { throw new Error('this context has no workers') },
     throttle: createThrottle(),
+    mail: null,
     passwords: { hash: async password => `plain:${password}`, verify: async (hash, password) => hash === `plain:${password}` },
     dispose: () => {
       store.close()

@@ -22,6 +22,8 @@ export async function pageVisits(lead: Client, admin: Client): Promise<Record<st
   const { link } = await admin.get('memberInvite', { params, body: { email: 'walked@demo.example', role: 'reader', agencyId: null } })
   return {
     '/': { as: 'nobody', path: '/' },
+    '/forgotten': { as: 'nobody', path: '/forgotten' },
+    '/account': { as: 'lead', path: '/account' },
     '/sign-in': { as: 'nobody', path: '/sign-in' },
     '/signed-in': { as: 'lead', path: '/signed-in' },
     '/invitation/[token]': { as: 'nobody', path: new URL(link).pathname },
