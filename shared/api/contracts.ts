@@ -13,7 +13,7 @@ import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
   agency, draftOverlap, edition, geometry, jobView, limits, listOf, markDecisions, massColumns, massConversion, me, name, observedData, observedSummary, page, perGt, prose,
-  region, regionKind, regionTotal, revision, role, runSummary, scenario, scenarioDraft, seriesFacts, sha256, trendSummary, ulid, versionSummary,
+  region, regionKind, regionMonths, regionTotal, revision, role, runSummary, scenario, scenarioDraft, seriesFacts, sha256, trendSummary, ulid, versionSummary,
 } from './schemas.ts'
 
 const inWorkspace = z.object({ workspace: ulid })
@@ -162,6 +162,10 @@ export const contracts = {
   regionTotal: contract({
     id: 'regionTotal', method: 'GET', path: '/api/v1/workspaces/{workspace}/regions/total', action: 'region.read',
     summary: 'What the latest trends of all regions add up to, shared errors once, with the overlaps to be known before any sum', params: inWorkspace, answer: regionTotal,
+  }),
+  regionMonths: contract({
+    id: 'regionMonths', method: 'GET', path: '/api/v1/workspaces/{workspace}/regions/months', action: 'region.read',
+    summary: 'Monthly mass of every region that has a series, relative to its own mean, Gt; null in a gap', params: inWorkspace, answer: regionMonths,
   }),
   errorSourceList: contract({
     id: 'errorSourceList', method: 'GET', path: '/api/v1/workspaces/{workspace}/error-sources', action: 'region.read',

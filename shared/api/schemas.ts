@@ -190,6 +190,11 @@ export const regionTotal = z.object({
   fromMjd: finite.nullable(), toMjd: finite.nullable(), oneSpan: z.boolean(),
   overlaps: z.array(namedOverlap),
 })
+/** Monthly mass of regions on one row of months (2004-03); a region's values start at `first` of them. */
+export const regionMonths = z.object({
+  maxGapDays: finite, months: z.array(z.string()),
+  regions: z.array(z.object({ id: ulid, first: z.int(), massGt: z.array(finite.nullable()), sigmaGt: z.array(finite.nullable()) })),
+})
 export const runSummary = z.object({
   id: ulid, scenarioId: ulid, n: z.int(), name: z.string(), inputSha256: sha256, resultSha256: sha256, engine: z.string(),
   createdAt: z.string(), createdBy: z.string().nullable(),

@@ -146,6 +146,7 @@ const steps: Step[] = [
   { route: 'regionCreateMany', case: 'ice', rule: 'ice', make: newRegions('ice-sector') },
   { route: 'regionRemoveMany', case: 'liquid water', rule: 'liquid', make: async () => ({ params: workspace(), body: { regions: [{ id: await freshRegion('lake'), revision: 1 }] } }) },
   { route: 'regionRemoveMany', case: 'ice', rule: 'ice', make: async () => ({ params: workspace(), body: { regions: [{ id: await freshRegion('glacier-region'), revision: 1 }] } }) },
+  { route: 'regionMonths', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'regionTotal', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'errorSourceList', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'regionPrediction', rule: 'science', make: () => ({ params: { id: shared.liquid } }) },
