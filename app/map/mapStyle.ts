@@ -1,6 +1,7 @@
 import type { ExpressionSpecification, LayerSpecification, StyleSpecification } from 'maplibre-gl'
 import type { Palette } from '#shared/design/tokens'
 import { graticule } from './graticule'
+import { placeNames } from './placeNames'
 import { collection } from './regionSources'
 
 export type MapProjection = 'globe' | 'flat'
@@ -18,6 +19,7 @@ export function mapStyle(palette: Palette, projection: MapProjection, origin: st
     sources: {
       earth: { type: 'vector', tiles: [`${origin}/tiles/{z}/{x}/{y}.pbf`], minzoom: 0, maxzoom: 5 },
       graticule: { type: 'geojson', data: graticule() },
+      places: { type: 'geojson', data: placeNames() },
       ...Object.fromEntries(sourceIds.map(id => [id, { type: 'geojson' as const, data: collection([]), tolerance: 0.2 }]))
     },
     layers: mapLayers(palette)
@@ -26,7 +28,7 @@ export function mapStyle(palette: Palette, projection: MapProjection, origin: st
 
 /** Layers from the ground up. A change of theme sets their paint anew. */
 export function mapLayers(palette: Palette): LayerSpecification[] {
-  return [...groundLayers(palette), ...overlayLayers(palette), ...regionLayers(palette), ...draftLayers(palette)]
+  return [...groundLayers(palette), ...nameLayers(palette), ...overlayLayers(palette), ...regionLayers(palette), ...draftLayers(palette)]
 }
 
 function groundLayers(palette: Palette): LayerSpecification[] {
@@ -39,6 +41,28 @@ function groundLayers(palette: Palette): LayerSpecification[] {
     },
     { id: 'graticule', type: 'line', source: 'graticule', paint: { 'line-color': palette.soft, 'line-width': 0.5, 'line-opacity': 0.3 } }
   ]
+}
+
+/** Names of the Earth, softer than those of the regions and giving way to every other label. */
+function nameLayers(palette: Palette): LayerSpecification[] {
+  const kind: ExpressionSpecification = ['get', 'kind']
+  return [{
+    id: 'place-name', type: 'symbol', source: 'places', filter: ['>=', ['zoom'], ['get', 'from']],
+    layout: {
+      'text-field': ['get', 'name'],
+      'text-font': ['Noto Sans'],
+      'text-size': ['match', kind, 'ocean', 12, 'continent', 12, 'river', 10, 11],
+      'text-letter-spacing': ['match', kind, 'ocean', 0.18, 'continent', 0.18, 'sea', 0.08, 0.02],
+      'text-max-width': 7,
+      'text-padding': 6,
+      'symbol-sort-key': ['get', 'rank']
+    },
+    paint: {
+      'text-color': palette.soft,
+      'text-halo-color': ['match', kind, ['ocean', 'sea', 'lake'], palette.sea, palette.land],
+      'text-halo-width': 1.2
+    }
+  }]
 }
 
 /** Lines of equal effect: solid above zero, dashed below, heavy at zero. Their labels give way to those of the regions. */
