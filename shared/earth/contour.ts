@@ -21,6 +21,9 @@ export interface ContourRing extends RingPath {
   pole: 'north' | 'south' | null
 }
 
+/** A cell of a grid, and the mass in it beyond an even spread over the outline, per unit of the outline's mass. */
+export interface CellExcess { contour: Contour, excess: number }
+
 /** Everything that the engine needs to know of an outline. */
 export interface Contour {
   /** Area on the WGS 84 ellipsoid, m²: the one that is shown, and that turns heights into mass. */
@@ -35,6 +38,8 @@ export interface Contour {
   vector: MeanVector
   rings: readonly ContourRing[]
   vertexCount: number
+  /** Where mass does not lie evenly (`withPattern`): already in `means` and `vector`; absent for an even spread. */
+  cells?: readonly CellExcess[]
 }
 
 interface Enclosed { ring: ContourRing, areaSr: number, areaM2: number, integrals: RingIntegrals }

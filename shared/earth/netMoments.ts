@@ -24,7 +24,8 @@ export function netMoments(contour: Contour, model: EarthModel, mode: OceanMode)
   const stack = model.fields?.stacks[mode]
   if (!stack) throw new ModeNotAvailableError(mode)
   // The mean of the sensitivity K: exact for g, a contour sum for K − g, in the order of `functionals`.
-  const extra = contourMeans(stack, contour)
+  const extra = Float64Array.from(contourMeans(stack, contour))
+  for (const { contour: cell, excess } of contour.cells ?? []) contourMeans(stack, cell).forEach((mean, k) => { extra[k] = extra[k]! + excess * mean })
   return {
     xz: own.xz + extra[0]!, yz: own.yz + extra[1]!, p2: own.p2 + extra[2]!,
     x: own.x + extra[3]!, y: own.y + extra[4]!, z: own.z + extra[5]!, mass: 0

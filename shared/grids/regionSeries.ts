@@ -14,6 +14,8 @@ import type { CellResponses, EffectOptions, Effects } from './cellResponse.ts'
 import { cellWeights } from './cellWeights.ts'
 import type { CellWeights } from './cellWeights.ts'
 import type { OpenGrid } from './heightGrid.ts'
+import { patternOf } from './pattern.ts'
+import type { FoundPattern } from './pattern.ts'
 
 export interface RegionSeriesOptions {
   /** Metres of water per unit of the grid; absent: by the variable's units. */
@@ -26,7 +28,12 @@ export interface RegionSeriesOptions {
   mostMissing?: number
   /** Computes the effect with the grid's own pattern as well. */
   effect?: EffectOptions
+  /** Finds how the mass lies in each region, for runs; `gridSha256` of the file. */
+  pattern?: { gridSha256: string }
 }
+
+/** Values of cells that are kept for patterns at once; more would not fit in memory. */
+const MOST_CELL_VALUES = 1e8
 
 /** A region's series from a grid. */
 export interface RegionGridSeries {
@@ -52,6 +59,8 @@ export interface RegionGridSeries {
   steps: string[]
   /** Effect at each epoch: with the grid's pattern, and with the mass spread evenly over the region. Null where it was not asked for. */
   effect: { pattern: Effects<number[]>, even: Effects<number[]> } | null
+  /** How the mass lies in the region; null where it was not asked for or does not change. */
+  pattern: FoundPattern | null
 }
 
 export interface GridRegion { id: string, geometry: Outline }
@@ -85,6 +94,8 @@ interface Gathered {
   sum: Float64Array
   missing: Float64Array
   effects: Effects<Float64Array> | null
+  /** Height × area of every cell at every epoch, for its pattern. */
+  volumes: Float32Array | null
 }
 
 function* regionSteps(grid: OpenGrid, regions: readonly GridRegion[], options: RegionSeriesOptions): Steps<RegionGridSeries[]> {
@@ -98,6 +109,7 @@ function* regionSteps(grid: OpenGrid, regions: readonly GridRegion[], options: R
     gathered.push(prepare(grid, region, epochs, options, known))
     yield 0.1 * gathered.length / regions.length
   }
+  if (options.pattern) keepVolumes(gathered, epochs)
   const blocks = wantedBlocks(grid, gathered)
   for (let b = 0; b < blocks.length; b++) {
     addBlock(grid, blocks[b]!, gathered)
@@ -126,8 +138,15 @@ function prepare(grid: OpenGrid, { id, geometry }: GridRegion, epochs: number, o
     valid: new Int32Array(n),
     sum: new Float64Array(epochs),
     missing: new Float64Array(epochs),
-    effects: options.effect ? { chi1Mas: new Float64Array(epochs), chi2Mas: new Float64Array(epochs), lodMicroseconds: new Float64Array(epochs), deltaJ2: new Float64Array(epochs) } : null
+    effects: options.effect ? { chi1Mas: new Float64Array(epochs), chi2Mas: new Float64Array(epochs), lodMicroseconds: new Float64Array(epochs), deltaJ2: new Float64Array(epochs) } : null,
+    volumes: null
   }
+}
+
+function keepVolumes(regions: Gathered[], epochs: number): void {
+  const values = epochs * regions.reduce((sum, region) => sum + region.factor.length, 0)
+  if (values > MOST_CELL_VALUES) throw problem('too-many-cells', `These regions have ${values / epochs} cells over ${epochs} epochs: take fewer regions at once.`)
+  for (const region of regions) region.volumes = new Float32Array(region.factor.length * epochs)
 }
 
 /** Blocks of the smallest part of the grid that holds all cells of all regions. */
@@ -158,7 +177,8 @@ function addBlock(grid: OpenGrid, { start, count }: Block, regions: readonly Gat
   const [t0, y0, x0] = [start[time]!, start[latitude]!, start[longitude]!]
   const [nt, ny, nx] = [count[time]!, count[latitude]!, count[longitude]!]
   for (const region of regions) {
-    const { weights, factor, responses, effects } = region
+    const { weights, factor, responses, effects, volumes } = region
+    const epochs = region.sum.length
     for (let i = 0; i < factor.length; i++) {
       const y = weights.row[i]! - y0
       const x = weights.column[i]! - x0
@@ -173,6 +193,7 @@ function addBlock(grid: OpenGrid, { start, count }: Block, regions: readonly Gat
         region.valid[i] = region.valid[i]! + 1
         const volume = value * factor[i]!
         region.sum[t0 + t] = region.sum[t0 + t]! + volume
+        if (volumes) volumes[i * epochs + t0 + t] = volume
         if (effects) for (const name of effectNames) effects[name][t0 + t] = effects[name][t0 + t]! + volume * responses!.cells[name][i]!
       }
     }
@@ -219,7 +240,8 @@ function finish(grid: OpenGrid, region: Gathered, metres: number, options: Regio
     effect: effects && {
       pattern: perEpoch(name => kept.map(t => effects[name][t]! * gtPerVolume)),
       even: perEpoch(name => massGt.map(m => m * responses!.even[name]))
-    }
+    },
+    pattern: region.volumes && patternOf({ values: region.volumes, epochs: region.sum.length }, weights, grid, time.mjd, kept, options.pattern!.gridSha256)
   }
 }
 

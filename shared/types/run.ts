@@ -1,3 +1,4 @@
+import type { CellPattern } from '../earth/cellPattern.ts'
 import type { Chain } from '../observed/chainTypes.ts'
 import type { SeriesFacts } from '../series/facts.ts'
 import type { CoreChoice, Measured, Outline, PhysicsSettings, RegionKind } from './domain.ts'
@@ -55,6 +56,8 @@ export interface RunRegionInput {
   /** Fields of the version; absent where none were given. */
   facts?: SeriesFacts
   series: MassSeries
+  /** How the mass lies in the region, of a series that comes from a grid; absent: evenly. */
+  pattern?: CellPattern
   /** Factor on the mass; 0 switches the region off and keeps its row. */
   scale: number
   /** Part of the mass change that reaches the sea, 0 to 1; the rest is kept on land as `restTo` says. Absent: 1. */
@@ -110,7 +113,18 @@ export interface DerivedRates {
 /** One choice of the model and how much another choice would change the sum's rates; never added to the data's errors. */
 export interface ModelUncertaintyRate { id: string, name: string, text: string, chi1MasPerYear: number, chi2MasPerYear: number, lodMicrosecondsPerYear: number }
 
+/** What a grid's pattern changes: effect of one gigatonne gained if it lay evenly, and how much lies elsewhere than that. */
+export interface EvenSpread {
+  basis: CellPattern['basis']
+  cells: number
+  /** Part of a gigatonne that the pattern puts elsewhere than an even spread would. */
+  movedPart: number
+  perGt: RunRegionResult['perGt']
+}
+
 export interface RunRegionResult extends BudgetRow {
+  /** Of a region whose series comes from a grid: `perGt` is with the pattern, this is without. Absent elsewhere. */
+  evenSpread?: EvenSpread
   /** Absent in runs of earlier engines. */
   derived?: DerivedRates
   /** Key of the region whose series this row counts elsewhere, on land or on ground it shares; the row is no region of its own. */

@@ -2,6 +2,7 @@ import { overlapsOf } from '../../geo/overlap.ts'
 import type { OutlineOverlap } from '../../geo/overlap.ts'
 import { InputError } from '../../types/issue.ts'
 import type { BudgetRow, OverlapChoice, RegionOverlap, RunInput, RunRegionInput, RunRegionResult, RunResult, RunTotalSeries } from '../../types/run.ts'
+import { movedPart, withPattern } from '../cellPattern.ts'
 import { contourOf } from '../contour.ts'
 import type { Contour } from '../contour.ts'
 import type { EarthModel } from '../earthModel.ts'
@@ -30,8 +31,11 @@ export interface FittedRegion {
   region: RunRegionInput
   /** The factor as it was sent. */
   scale: number
+  /** With the pattern of the mass in it, where its series has one. */
   contour: Contour
   response: ResponsePerGt
+  /** Response of an even spread; null where the mass is spread evenly anyway. */
+  even: ResponsePerGt | null
   /** The part that is kept on land; null where all of it reaches the sea. */
   kept: KeptOnLand | null
   /** Mass of this series that is taken off other regions, which hold it as well. */
@@ -104,12 +108,14 @@ function fitRegion(sent: RunRegionInput, settings: RunInput['settings'], model: 
   const given = series.sigmaGt ? inside.map(i => series.sigmaGt![i]!) : null
   const fit = mjd.length >= LEAST_EPOCHS ? fitTrend({ mjd, value, sigma: given }) : null
   const sigma = given ?? value.map(() => fit?.residualSigma ?? 0)
-  const contour = contourOf(region.geometry)
+  const outline = contourOf(region.geometry)
+  const contour = withPattern(outline, region.pattern)
   return {
     region,
     scale: sent.scale,
     contour,
     response: responseOf(contour, model, settings),
+    even: region.pattern ? responseOf(outline, model, settings) : null,
     kept: null,
     taken: [],
     fit,
@@ -145,6 +151,7 @@ function regionResult(f: FittedRegion, row: BudgetRow, months: readonly Calendar
     centroid: contour.centroid,
     scale: f.scale,
     perGt: { ...f.response },
+    ...(f.even ? { evenSpread: { basis: region.pattern!.basis, cells: region.pattern!.excess.length, movedPart: movedPart(region.pattern!), perGt: { ...f.even } } } : {}),
     massGt: monthly.value.map(value => value === null ? null : region.scale * value + 0),
     sigmaMassGt: monthly.variance.map((variance, j) => {
       if (variance === null) return null
@@ -171,7 +178,7 @@ function takenResult(f: FittedRegion, { effect, from }: TakenOff, total: BudgetR
 
 function elsewhereResult(f: FittedRegion, key: string, name: string, effect: EffectPerGt, place: Contour | null, total: BudgetRow, months: readonly CalendarMonth[]): RunRegionResult {
   const row = budgetRow(key, name, ratesOf([f]), [effect])
-  const own = regionResult(f, row, months)
+  const { evenSpread: _, ...own } = regionResult(f, row, months)
   const { massGt: factor, ...perGt } = effect
   return {
     ...own, ...sharesOf(row, total), keptFrom: f.region.key, perGt,
