@@ -178,6 +178,31 @@ export const seriesError = sqliteTable('series_error', {
   sigmaGtPerYear: real().notNull(),
 }, t => [primaryKey({ columns: [t.versionId, t.sourceId] })])
 
+/** A file of gridded heights of water, read once; its original lies with the others. */
+export const grid = sqliteTable('grid', {
+  id: id(),
+  workspaceId: text().notNull().references(() => workspace.id),
+  name: text().notNull(),
+  originalSha256: text().notNull().references(() => original.sha256),
+  originalName: text().notNull(),
+  bytes: integer().notNull(),
+  /** How a table is read, as JSON. */
+  options: text().notNull(),
+  /** What the file holds, as JSON. */
+  description: text().notNull(),
+  ...mutable(),
+}, t => [index('grid_workspace').on(t.workspaceId)])
+
+/** How the mass of a version lies in its region, of a version that was taken from a grid; canonical JSON. */
+export const gridPattern = sqliteTable('grid_pattern', {
+  versionId: text().primaryKey().references(() => seriesVersion.id),
+  gridId: text().notNull().references(() => grid.id),
+  pattern: text().notNull(),
+  sha256: text().notNull(),
+  /** Of the outline that the cells were cut with. */
+  outlineSha256: text().notNull(),
+})
+
 /** A reduction under a name: the chain as JSON, used on any observed series of the workspace. */
 export const chain = sqliteTable('chain', {
   id: id(),
@@ -236,7 +261,7 @@ export const withdrawal = sqliteTable('withdrawal', {
 export const job = sqliteTable('job', {
   id: id(),
   workspaceId: text().notNull().references(() => workspace.id),
-  kind: text().$type<'run'>().notNull(),
+  kind: text().$type<'run' | 'grid' | 'grid-series' | 'monte-carlo'>().notNull(),
   state: text().$type<'waiting' | 'running' | 'done' | 'failed' | 'cancelled'>().notNull(),
   progress: real().notNull().default(0),
   input: text().notNull(),

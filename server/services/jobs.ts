@@ -1,42 +1,59 @@
 import { EventEmitter } from 'node:events'
 import { dirname, join } from 'node:path'
+import { MessageChannel } from 'node:worker_threads'
 import { eq, inArray } from 'drizzle-orm'
 import Piscina from 'piscina'
 import type { Principal } from '#shared/permissions'
 import { InputError } from '#shared/types/issue'
-import type { RunInput, RunResult } from '#shared/types/run'
 import { schema } from '../database/client'
 import { Problem, problemBody, type ProblemBody } from '../utils/problem'
-import type { RunAnswer } from '../workers/run'
-import { appendLog, authorise, newId } from './change'
+import type { WorkerAnswer } from '../workers/parts/answer'
+import { authorise, newId } from './change'
 import type { Context } from './context'
-import { canonicalJson, sha256Hex } from './hash'
+import { jobKinds, type JobKindName, type JobOf } from './jobKinds'
+import { storeRun, type RunJobInput } from './runStore'
 
-type JobRow = typeof schema.job.$inferSelect
-interface RunJobInput { scenarioId: string, name: string, actor: { id: string, name: string }, input: RunInput }
+export type JobRow = typeof schema.job.$inferSelect
 
-export interface JobView { id: string, kind: string, state: JobRow['state'], progress: number, answer: { runId: string } | null, problem: ProblemBody | null, createdAt: string }
+export interface JobView {
+  id: string
+  kind: string
+  state: JobRow['state']
+  progress: number
+  answer: { runId: string } | null
+  gridId: string | null
+  problem: ProblemBody | null
+  createdAt: string
+}
 
 export function jobView(row: JobRow): JobView {
   return {
     id: row.id, kind: row.kind, state: row.state, progress: row.progress, createdAt: row.createdAt,
-    answer: row.answer ? JSON.parse(row.answer) as { runId: string } : null,
+    answer: row.kind === 'run' && row.answer ? JSON.parse(row.answer) as { runId: string } : null,
+    gridId: row.kind === 'grid' && row.answer ? (JSON.parse(row.answer) as { gridId: string }).gridId : null,
     problem: row.problem ? JSON.parse(row.problem) as ProblemBody : null,
   }
 }
 
+/** Parts of a job before and after the worker’s own. */
+const [STARTED, WORKED] = [0.1, 0.9]
+
 /** Heavy work in the background: a row in the database, a worker thread, and events for those who watch. */
 export class Jobs {
+  /** Jobs wait for one another; what a page waits for does not wait for them. */
   private readonly pool: Piscina
+  private readonly waitedFor: Piscina
   private readonly events = new EventEmitter().setMaxListeners(0)
   private readonly aborts = new Map<string, AbortController>()
   private context!: Context
 
   constructor(private readonly workerFile: string, private readonly fieldsPath: string | null) {
-    this.pool = new Piscina({ filename: workerFile, minThreads: 0, maxThreads: 1, idleTimeout: 60_000 })
+    const options = { filename: workerFile, minThreads: 0, maxThreads: 1, idleTimeout: 60_000 }
+    this.pool = new Piscina(options)
+    this.waitedFor = new Piscina(options)
   }
 
-  /** Takes up what an earlier process left waiting or half done: a run is pure, so it starts again from its frozen input. */
+  /** Takes up what an earlier process left waiting or half done: a job depends on its input alone, so it starts again. */
   resume(context: Context) {
     this.context = context
     const left = context.db.select().from(schema.job).where(inArray(schema.job.state, ['waiting', 'running'])).all()
@@ -44,10 +61,13 @@ export class Jobs {
   }
 
   startRun(principal: Principal, workspaceId: string, job: Omit<RunJobInput, 'actor'>): JobView {
+    return this.start(principal, workspaceId, 'run', job)
+  }
+
+  start<K extends JobKindName>(principal: Principal, workspaceId: string, kind: K, input: Omit<JobOf<K>, 'actor'>): JobView {
     const id = newId()
-    const input: RunJobInput = { ...job, actor: { id: principal.userId, name: principal.name } }
     this.context.db.insert(schema.job).values({
-      id, workspaceId, kind: 'run', state: 'waiting', input: JSON.stringify(input), createdAt: this.context.now(), createdBy: principal.userId,
+      id, workspaceId, kind, state: 'waiting', input: JSON.stringify({ ...input, actor: { id: principal.userId, name: principal.name } }), createdAt: this.context.now(), createdBy: principal.userId,
     }).run()
     void this.execute(id)
     return jobView(this.row(id))
@@ -55,13 +75,14 @@ export class Jobs {
 
   /** Work of seconds in a worker thread, waited for: `worker` names a file of server/workers. */
   async compute<T>(worker: string, task: unknown, signal?: AbortSignal): Promise<T> {
-    return await this.pool.run(task, { filename: join(dirname(this.workerFile), `${worker}.mjs`), signal }) as T
+    return await this.waitedFor.run(task, { filename: this.fileOf(worker), signal }) as T
   }
 
   /** A run that is waited for, as at first start. Fails where the job fails. */
   async runNow(principal: Principal, workspaceId: string, job: Omit<RunJobInput, 'actor'>): Promise<string> {
-    const result = resultOf(await this.pool.run({ input: job.input, fieldsPath: this.fieldsPath }) as RunAnswer)
-    return storeRun(this.context, workspaceId, { ...job, actor: { id: principal.userId, name: principal.name } }, result)
+    const input = { ...job, actor: { id: principal.userId, name: principal.name } }
+    const { worker, task } = jobKinds.run
+    return storeRun(this.context, workspaceId, input, resultOf(await this.pool.run(await task(this.context, input, this.fieldsPath), { filename: this.fileOf(worker) })))
   }
 
   row(id: string): JobRow {
@@ -93,7 +114,11 @@ export class Jobs {
   }
 
   async close() {
-    await this.pool.destroy()
+    await Promise.all([this.pool.destroy(), this.waitedFor.destroy()])
+  }
+
+  private fileOf(worker: string): string {
+    return join(dirname(this.workerFile), `${worker}.mjs`)
   }
 
   private set(id: string, values: Partial<JobRow>) {
@@ -104,14 +129,21 @@ export class Jobs {
   private async execute(id: string) {
     const abort = new AbortController()
     this.aborts.set(id, abort)
+    const { port1, port2 } = new MessageChannel()
     try {
-      const job = JSON.parse(this.row(id).input) as RunJobInput
-      this.set(id, { state: 'running', progress: 0.1 })
-      const result = resultOf(await this.pool.run({ input: job.input, fieldsPath: this.fieldsPath }, { signal: abort.signal }) as RunAnswer)
+      const row = this.row(id)
+      const kind = jobKinds[row.kind] as typeof jobKinds[JobKindName] & { task: (context: Context, input: unknown, fieldsPath: string | null) => object, store: (context: Context, row: JobRow, input: unknown, result: unknown) => object }
+      const input = JSON.parse(row.input) as unknown
+      this.set(id, { state: 'running', progress: STARTED })
+      port1.on('message', ({ progress }: { progress: number }) => {
+        if (this.aborts.has(id) && !abort.signal.aborted) this.set(id, { progress: STARTED + (WORKED - STARTED) * progress })
+      })
+      const task = { ...kind.task(this.context, input, this.fieldsPath), ...(kind.progress ? { port: port2 } : {}) }
+      const result = resultOf(await this.pool.run(task, { filename: this.fileOf(kind.worker), signal: abort.signal, transferList: kind.progress ? [port2] : [] }))
       if (this.row(id).state === 'cancelled') return
-      this.set(id, { progress: 0.9 })
-      const runId = storeRun(this.context, this.row(id).workspaceId, job, result)
-      this.set(id, { state: 'done', progress: 1, answer: JSON.stringify({ runId }), finishedAt: this.context.now() })
+      this.set(id, { progress: WORKED })
+      const answer = kind.store(this.context, this.row(id), input, result)
+      this.set(id, { state: 'done', progress: 1, answer: JSON.stringify(answer), finishedAt: this.context.now() })
     }
     catch (error) {
       if (this.row(id).state === 'cancelled') return
@@ -119,30 +151,14 @@ export class Jobs {
       if (problemBody(error).status === 500) console.error('[counterpoise] job failed:', error)
     }
     finally {
+      port1.close()
       this.aborts.delete(id)
     }
   }
 }
 
-function resultOf(answer: RunAnswer): RunResult {
+/** What a worker found, or its fault as an error. */
+export function resultOf<T>(answer: WorkerAnswer<T>): T {
   if ('fault' in answer) throw new InputError(answer.fault.message, answer.fault.issues, answer.fault.status)
   return answer.result
-}
-
-/** Writes an immutable run: input and result in canonical JSON with the hash of each. */
-export function storeRun(context: Context, workspaceId: string, job: RunJobInput, result: RunResult): string {
-  const id = newId()
-  const input = canonicalJson({ input: job.input, engine: result.engineVersion, earthModel: result.earthModelChecksum })
-  const text = canonicalJson(result)
-  context.db.transaction((tx) => {
-    const runs = tx.select({ n: schema.run.n }).from(schema.run).where(eq(schema.run.scenarioId, job.scenarioId)).all()
-    const n = Math.max(0, ...runs.map(r => r.n)) + 1
-    const row = { id, scenarioId: job.scenarioId, workspaceId, n, name: job.name, input, inputSha256: sha256Hex(input), result: text, resultSha256: sha256Hex(text), engine: result.engineVersion, node: `${process.version} ${process.arch}`, createdAt: context.now(), createdBy: job.actor.id }
-    tx.insert(schema.run).values(row).run()
-    appendLog(context, tx, {
-      actorId: job.actor.id, actor: job.actor.name, after: { scenario: job.name, n, inputSha256: row.inputSha256, resultSha256: row.resultSha256 },
-      target: { verb: 'run stored', entity: 'run', id, workspaceId },
-    })
-  }, { behavior: 'immediate' })
-  return id
 }

@@ -140,7 +140,7 @@ function sumBySource(rates: readonly SystematicRate[]): SystematicRate[] {
   return [...sums].map(([source, sigmaGtPerYear]) => ({ source, sigmaGtPerYear })).sort((a, b) => a.source.localeCompare(b.source))
 }
 
-function errorSourceId(context: Context, tx: Reader, workspaceId: string, name: string): string {
+export function errorSourceId(context: Context, tx: Reader, workspaceId: string, name: string): string {
   const known = tx.select().from(schema.errorSource).where(eq(schema.errorSource.workspaceId, workspaceId)).all().find(s => s.name === name)
   if (known) return known.id
   const id = newId()

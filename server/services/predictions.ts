@@ -1,3 +1,4 @@
+import { withPattern, type CellPattern } from '#shared/earth/cellPattern'
 import { contourOf } from '#shared/earth/contour'
 import { derivedOf } from '#shared/earth/derived'
 import { responseOf } from '#shared/earth/response'
@@ -12,15 +13,15 @@ export function defaultSettings(context: Context): PhysicsSettings {
   return { ocean: context.earth.defaultOcean, coefficients: 'gross-2007', core: 'decoupled' }
 }
 
-export function perGigatonne(context: Context, geometry: Outline, settings: PhysicsSettings) {
-  const { chi1Mas, chi2Mas, chi3, lodMicroseconds, barystaticMm, deltaJ2 } = responseOf(contourOf(geometry), context.earth, settings)
+export function perGigatonne(context: Context, geometry: Outline, settings: PhysicsSettings, pattern: CellPattern | null = null) {
+  const { chi1Mas, chi2Mas, chi3, lodMicroseconds, barystaticMm, deltaJ2 } = responseOf(withPattern(contourOf(geometry), pattern), context.earth, settings)
   return { chi1Mas, chi2Mas, chi3, lodMicroseconds, barystaticMm, deltaJ2 }
 }
 export type PerGt = ReturnType<typeof perGigatonne>
 
 /** Effect of a gigatonne with what derives from it, in each fingerprint mode; in the default mode where the Earth model holds no fields. */
-export function effectsByOcean(context: Context, geometry: Outline) {
-  const contour = contourOf(geometry)
+export function effectsByOcean(context: Context, geometry: Outline, pattern: CellPattern | null = null) {
+  const contour = withPattern(contourOf(geometry), pattern)
   const modes: OceanMode[] = context.earth.fields ? ['fingerprint', 'fingerprint-rotation'] : [context.earth.defaultOcean]
   return modes.map((ocean) => {
     const { chi1Mas, chi2Mas, chi3, lodMicroseconds, barystaticMm, deltaJ2 } = responseOf(contour, context.earth, { ...defaultSettings(context), ocean })

@@ -4,12 +4,14 @@ import type { BodyOf } from '#shared/api/contract'
 import { contourOf } from '#shared/earth/contour'
 import { overlapsOf } from '#shared/geo/overlap'
 import { requireOutline } from '#shared/geo/outline'
+import { patternLeftOut } from '#shared/text/gridPattern'
 import { can, type Principal } from '#shared/permissions'
 import type { OceanMode, Outline } from '#shared/types/domain'
 import { schema, type Reader } from '../database/client'
 import { Problem } from '../utils/problem'
 import { authorise, change, nameOfUser, newId } from './change'
 import type { Context } from './context'
+import { evenSpreadOf, patternIsOfOtherOutline, patternOfVersion } from './gridPatterns'
 import { canonicalJson, sha256Hex } from './hash'
 import { pageOf } from './paging'
 import { requireAgency } from './people'
@@ -50,7 +52,7 @@ export function derivedOfRegion(context: Context, outline: OutlineRow & { geomet
   const key = `${outline.sha256} ${versionId}`
   let value = cache.get(key)
   if (!value) {
-    const perGt = perGigatonne(context, outline.geometry, defaultSettings(context))
+    const perGt = perGigatonne(context, outline.geometry, defaultSettings(context), patternOfVersion(context, versionId, outline.sha256))
     const [lon, lat] = contourOf(outline.geometry).centroid
     value = { perGt, centroid: [lon, lat], trend: versionId ? trendOf(massSeries(context, versionId), perGt) : null }
     if (cache.size > 5000) cache.clear()
@@ -121,7 +123,7 @@ export function readRegion(context: Context, principal: Principal | null, id: st
     ...view,
     perGt: derivedOfRegion(context, outline, view.series?.latest.id ?? null).perGt,
     settings: { ...defaultSettings(context) },
-    effects: effectsByOcean(context, outline.geometry),
+    effects: effectsByOcean(context, outline.geometry, patternOfVersion(context, view.series?.latest.id ?? null, outline.sha256)),
     outlines: outlinesOf(context, id).map(o => ({ n: o.n, areaKm2: o.areaM2 / 1e6, sha256: o.sha256, createdAt: o.createdAt, createdBy: nameOfUser(context, o.createdBy) })),
     versions: series ? versionsOf(context, series.id).map(v => versionView(context, v)) : [],
     overlaps: overlaps.map(o => ({ ...o, name: names.get(o.id) ?? '' })),
@@ -167,7 +169,9 @@ export function predictRegion(context: Context, principal: Principal | null, id:
   const version = versionId ? versionRow(context, versionId) : series ? versionsOf(context, series.id)[0] : undefined
   if (!series || !version || version.seriesId !== series.id) throw new Problem(404, 'not-found', 'This region has no mass series yet.')
   const settings = { ...defaultSettings(context), ...(ocean ? { ocean } : {}) }
-  const perGt = perGigatonne(context, latestOutline(context, id).geometry, settings)
+  const outline = latestOutline(context, id)
+  const pattern = patternOfVersion(context, version.id, outline.sha256)
+  const perGt = perGigatonne(context, outline.geometry, settings, pattern)
   const mass = massSeries(context, version.id)
   const mean = mass.massGt.reduce((sum, m) => sum + m, 0) / mass.massGt.length
   const relative = mass.massGt.map(m => m - mean)
@@ -177,6 +181,11 @@ export function predictRegion(context: Context, principal: Principal | null, id:
     mjd: mass.mjd, massGt: mass.massGt, sigmaMassGt: mass.sigmaGt ?? mass.mjd.map(() => null),
     lodMicroseconds: relative.map(m => m * perGt.lodMicroseconds),
     chi1Mas: relative.map(m => m * perGt.chi1Mas), chi2Mas: relative.map(m => m * perGt.chi2Mas),
-    trend: trendView(trend), warnings: trend ? trend.warnings.map(w => w.message) : ['Fewer than three epochs: no trend.'],
+    trend: trendView(trend),
+    warnings: [
+      ...trend ? trend.warnings.map(w => w.message) : ['Fewer than three epochs: no trend.'],
+      ...patternIsOfOtherOutline(context, version.id, outline.sha256) ? [patternLeftOut] : [],
+    ],
+    evenSpread: pattern && evenSpreadOf(pattern, perGt, perGigatonne(context, outline.geometry, settings)),
   }
 }

@@ -13,6 +13,7 @@ const places: Record<string, (context: Context, params: Params) => Place> = {
   'regions': ({ db }, { id }) => db.select({ workspaceId: schema.region.workspaceId }).from(schema.region).where(eq(schema.region.id, id!)).get(),
   'series-versions': ({ db }, { id }) => db.select({ workspaceId: schema.series.workspaceId }).from(schema.seriesVersion)
     .innerJoin(schema.series, eq(schema.series.id, schema.seriesVersion.seriesId)).where(eq(schema.seriesVersion.id, id!)).get(),
+  'grids': ({ db }, { id }) => db.select({ workspaceId: schema.grid.workspaceId }).from(schema.grid).where(eq(schema.grid.id, id!)).get(),
   'observed': ({ db }, { id }) => db.select({ workspaceId: schema.series.workspaceId }).from(schema.series).where(eq(schema.series.id, id!)).get(),
   'chains': ({ db }, { id }) => db.select({ workspaceId: schema.chain.workspaceId }).from(schema.chain).where(eq(schema.chain.id, id!)).get(),
   'scenarios': ({ db }, { id }) => db.select({ workspaceId: schema.scenario.workspaceId }).from(schema.scenario).where(eq(schema.scenario.id, id!)).get(),

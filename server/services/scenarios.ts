@@ -9,6 +9,7 @@ import { schema } from '../database/client'
 import { Problem } from '../utils/problem'
 import { authorise, change, nameOfUser, newId } from './change'
 import type { Context } from './context'
+import { patternIsOfOtherOutline, patternOfVersion } from './gridPatterns'
 import { faultsOfChoices, overlapsOfDraft, settledOverlaps } from './overlaps'
 import { pageOf } from './paging'
 import { latestOutline, seriesOfRegion } from './regions'
@@ -148,11 +149,13 @@ export function freezeInput(context: Context, row: ScenarioRow): RunInput {
       const agency = context.db.select().from(schema.agency).where(eq(schema.agency.id, region.agencyId)).get()!
       const version = context.db.select().from(schema.seriesVersion).where(eq(schema.seriesVersion.id, choice.versionId)).get()!
       const outline = latestOutline(context, region.id)
+      const pattern = patternOfVersion(context, version.id, outline.sha256)
       return {
         key: `r${i + 1}`, name: region.name, kind: region.kind, agency: agency.name,
         geometry: outline.geometry, outlineSha256: outline.sha256,
         seriesVersion: version.n, seriesSha256: version.dataSha256, source: version.source, ...(version.facts ? { facts: factsOf(version)! } : {}),
-        series: massSeries(context, version.id), scale: choice.scale,
+        series: massSeries(context, version.id), scale: choice.scale, ...(pattern ? { pattern } : {}),
+        ...(patternIsOfOtherOutline(context, version.id, outline.sha256) ? { patternLeftOut: true as const } : {}),
         ...(choice.fractionToOcean !== undefined && choice.fractionToOcean < 1
           ? { fractionToOcean: choice.fractionToOcean, restTo: choice.restTo ? keyOf(draft, choice.restTo) : null }
           : {}),

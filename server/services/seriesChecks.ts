@@ -16,7 +16,7 @@ const mostKept = 500
  * What checks find in a series that is about to be stored, held against earlier versions and regions on the same ground, with the decisions that were taken.
  * A decision whose finding is gone was a correction; open findings are kept as open.
  */
-export function checksOf(context: Context, regionId: string, read: MassSeriesReading, areaM2: number, decisions: readonly MarkDecision[]) {
+export function checksOf(context: Context, regionId: string, read: Pick<MassSeriesReading, 'mjd' | 'massGt' | 'sigmaGt'> & { lineOf: number[] | null }, areaM2: number, decisions: readonly MarkDecision[]) {
   const others = [...earlierOf(context, regionId), ...sameGroundOf(context, regionId)]
   const { marks, gone } = settleMarks(checkSeries({ mjd: read.mjd, massGt: read.massGt, sigmaGt: read.sigmaGt, rows: read.lineOf, areaM2, others }), decisions)
   const kept = marks.slice(0, mostKept).map(mark => ({ ...mark, rows: mark.rows.slice(0, 20) }))

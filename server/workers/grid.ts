@@ -7,7 +7,7 @@ import { gridCandidates, openGrid, valuesAtEpoch, type GridCandidate, type OpenG
 import { regionSeriesPaced, type GridRegion, type RegionGridSeries } from '#shared/grids/regionSeries'
 import { scaleFactors, seaOfCells, seaOfMask } from '#shared/grids/seaMask'
 import type { PhysicsSettings } from '#shared/types/domain'
-import type { Issue } from '#shared/types/issue'
+import { InputError, type Issue } from '#shared/types/issue'
 import { earthModelFrom } from '../services/earthModelFile'
 import { answerOf, type WorkerAnswer } from './parts/answer'
 import { openGridFile, type OpenedGridFile } from './parts/openGridFile'
@@ -28,6 +28,7 @@ export type GridTask = GridSource & { port?: MessagePort } & (
     scale?: FurtherGrid | null
     /** Computes the effect with the grid's pattern as well. */
     effect?: { settings: PhysicsSettings, fieldsPath: string | null } | null
+    pattern?: { gridSha256: string }
   }
 )
 
@@ -55,9 +56,10 @@ async function work(task: GridTask): Promise<GridDescription | GridEpoch | Regio
   const pace = paceOf(task.port)
   let opened: OpenedGridFile | undefined
   try {
-    opened = await openGridFile(task.path, task.csv)
+    opened = await readable(() => openGridFile(task.path, task.csv))
     const { file } = opened
-    if (task.ask === 'describe') return describe(file, task.variable, opened)
+    const source = opened
+    if (task.ask === 'describe') return await readable(async () => describe(file, task.variable, source))
     const heights = openGrid(file, task.variable)
     if (task.ask === 'epoch') return epochOf(heights, task.epoch)
     const { sea = 'engine', effect } = task
@@ -66,12 +68,25 @@ async function work(task: GridTask): Promise<GridDescription | GridEpoch | Regio
       mostMissing: task.mostMissing,
       sea: sea === 'none' ? null : sea === 'engine' ? seaOfCells(loadOceanCells(), heights) : await further(sea, file, mask => seaOfMask(mask, heights, sea.of)),
       scale: task.scale ? await further(task.scale, file, factors => scaleFactors(factors, heights)) : null,
+      pattern: task.pattern,
       effect: effect ? { settings: effect.settings, model: await modelFrom(effect.fieldsPath) } : undefined,
     }, pace)
   }
   finally {
     opened?.close()
     pace.done()
+  }
+}
+
+/** A file that is damaged or cut short fails in many ways inside; whoever sent it is told that it cannot be read, and where. */
+async function readable<T>(read: () => Promise<T>): Promise<T> {
+  try {
+    return await read()
+  }
+  catch (error) {
+    if (error instanceof InputError) throw error
+    const message = error instanceof RangeError ? `The file is damaged or was cut short: ${error.message}.` : 'The file begins like NetCDF-4 but cannot be read: it is damaged or was cut short.'
+    throw new InputError('The grid cannot be read', [{ path: 'file', code: 'damaged', message }])
   }
 }
 

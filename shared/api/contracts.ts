@@ -9,6 +9,7 @@ import { evaluateAnswer, evaluateRequest } from './evaluateSchemas.ts'
 import { fitAnswer, fitQuery } from './fitSchemas.ts'
 import { fluidOptions, fluidSummary } from './fluidSchemas.ts'
 import { gravityFields } from './gravitySchemas.ts'
+import { evenSpread, gridAcceptance, gridDetail, gridLimits, gridMonth, gridOptions, gridSeriesPreview, gridSeriesRequest, gridSummary, monteCarloRequest, monteCarloView } from './gridSchemas.ts'
 import { reduceOptions, reducedSeries } from './reduceSchemas.ts'
 import { comparison, editionView, runView } from './runSchemas.ts'
 import {
@@ -214,6 +215,8 @@ export const contracts = {
     answer: z.object({
       version: versionSummary, settings: z.looseObject({}), perGt, mjd: z.array(z.number()), massGt: z.array(z.number()), sigmaMassGt: z.array(z.number().nullable()),
       lodMicroseconds: z.array(z.number()), chi1Mas: z.array(z.number()), chi2Mas: z.array(z.number()), trend: trendSummary.nullable(), warnings: z.array(z.string()),
+      /** Of a version from a grid: `perGt` is with the grid’s pattern, this is without. */
+      evenSpread: evenSpread.nullable(),
     }),
   }),
   regionFit: contract({
@@ -256,6 +259,34 @@ export const contracts = {
   }),
   originalRead: contract({
     id: 'originalRead', method: 'GET', path: '/api/v1/series-versions/{id}/original', action: 'region.read', summary: 'The original file as it was sent', params: byId, answer: bytes, answerType: 'application/octet-stream',
+  }),
+
+  // Grids of water-equivalent height
+  gridList: contract({ id: 'gridList', method: 'GET', path: '/api/v1/workspaces/{workspace}/grids', action: 'region.read', summary: 'Grids of water-equivalent height, newest first', params: inWorkspace, answer: listOf(gridSummary) }),
+  gridCreate: contract({
+    id: 'gridCreate', method: 'POST', path: '/api/v1/workspaces/{workspace}/grids', action: 'region.write', summary: 'Read a grid from NetCDF or CSV; answers with a job', params: inWorkspace, bodyType: 'multipart',
+    body: gridOptions, answer: jobView, status: 202, maxBytes: gridLimits.bytes,
+  }),
+  gridRead: contract({ id: 'gridRead', method: 'GET', path: '/api/v1/grids/{id}', action: 'region.read', summary: 'What a grid holds', params: byId, answer: gridDetail }),
+  gridRemove: contract({
+    id: 'gridRemove', method: 'DELETE', path: '/api/v1/grids/{id}', action: 'region.write', summary: 'Put a grid in the bin; series that were taken from it stay', params: byId,
+    query: z.object({ revision: z.coerce.number().int() }), answer: changed,
+  }),
+  gridRestore: contract({
+    id: 'gridRestore', method: 'POST', path: '/api/v1/grids/{id}/restore', action: 'region.write', summary: 'Take a grid out of the bin', params: byId, body: z.object({ revision }), answer: changed,
+  }),
+  gridMonth: contract({
+    id: 'gridMonth', method: 'GET', path: '/api/v1/grids/{id}/months/{n}', action: 'region.read', summary: 'One month of a grid for a map, about chosen regions or whole; cells are merged where there are too many', params: z.object({ id: ulid, n: z.coerce.number().int().min(0) }),
+    query: z.object({ variable: z.string().max(200).optional(), regions: z.string().max(8000).optional() }), answer: gridMonth,
+  }),
+  gridSeries: contract({
+    id: 'gridSeries', method: 'POST', path: '/api/v1/grids/{id}/series', action: 'region.write', summary: 'Take series of regions from a grid; answers with a job, stores no version', params: byId,
+    body: gridSeriesRequest, answer: jobView, status: 202,
+  }),
+  gridSeriesRead: contract({ id: 'gridSeriesRead', method: 'GET', path: '/api/v1/jobs/{id}/series', action: 'region.read', summary: 'The series that a job took from a grid', params: byId, answer: gridSeriesPreview }),
+  gridSeriesAccept: contract({
+    id: 'gridSeriesAccept', method: 'POST', path: '/api/v1/jobs/{id}/series', action: 'region.write', summary: 'Store the series that a job took from a grid, a version for each region: all of them or none', params: byId,
+    body: gridAcceptance, answer: listOf(versionSummary.extend({ regionId: ulid })), status: 201,
   }),
 
   // Observed Earth orientation
@@ -349,6 +380,15 @@ export const contracts = {
     id: 'runFile', method: 'GET', path: '/api/v1/runs/{id}/files/{file}', action: 'report.export', summary: 'Report and data of a run: report.pdf, budget.csv, series.csv, regions.geojson, run.json',
     params: z.object({ id: ulid, file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'run.json']) }),
     query: comparedBy.extend({ observed: ulid.optional() }), answer: bytes, answerType: 'application/octet-stream',
+  }),
+
+  runMonteCarlo: contract({
+    id: 'runMonteCarlo', method: 'POST', path: '/api/v1/runs/{id}/monte-carlo', action: 'run.create', summary: 'Check the errors of a run by a seeded Monte Carlo; answers with a job', params: byId,
+    body: monteCarloRequest, answer: jobView, status: 202,
+  }),
+  runMonteCarloRead: contract({
+    id: 'runMonteCarloRead', method: 'GET', path: '/api/v1/runs/{id}/monte-carlo', action: 'run.read', summary: 'The latest Monte Carlo of a run: sampled beside linear errors', params: byId,
+    answer: z.object({ latest: monteCarloView.nullable() }),
   }),
 
   runSeaLevel: contract({

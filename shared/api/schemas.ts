@@ -205,7 +205,9 @@ export const scenario = z.object({
 })
 export const jobView = z.object({
   id: ulid, kind: z.string(), state: z.enum(['waiting', 'running', 'done', 'failed', 'cancelled']), progress: finite,
-  answer: z.object({ runId: ulid }).nullable(), problem: problem.nullable(), createdAt: z.string(),
+  answer: z.object({ runId: ulid }).nullable(),
+  /** The grid that a job has read. */
+  gridId: ulid.nullable(), problem: problem.nullable(), createdAt: z.string(),
 })
 
 export const observedSummary = z.object({

@@ -58,6 +58,8 @@ export interface RunRegionInput {
   series: MassSeries
   /** How the mass lies in the region, of a series that comes from a grid; absent: evenly. */
   pattern?: CellPattern
+  /** Set where a pattern was left out since it belongs to an earlier outline. */
+  patternLeftOut?: true
   /** Factor on the mass; 0 switches the region off and keeps its row. */
   scale: number
   /** Part of the mass change that reaches the sea, 0 to 1; the rest is kept on land as `restTo` says. Absent: 1. */

@@ -7,7 +7,7 @@ import { contracts, type ContractId } from '#shared/api/contracts'
 import { Client, demoPassword, signIn } from '../support/client'
 import { buildDir } from '../support/server'
 import {
-  addPerson, addWorkspace, draftOf, endOfJob, makeObserved, makeRegion, makeScenario, makeVersion, monthlyCsv, newcomer, orientationCsv, runScenario, seriesFacts, square, withDatabase, type Place,
+  addPerson, addWorkspace, draftOf, endOfJob, gridCsv, jobDone, makeGrid, makeObserved, makeRegion, makeScenario, makeVersion, monthlyCsv, newcomer, orientationCsv, runScenario, seriesFacts, square, withDatabase, type Place,
 } from '../support/world'
 
 // Every built route, called as everybody. What must come out is written here from the table in the product's architecture
@@ -44,7 +44,7 @@ let place: Place
 const clients = {} as Record<Who, Client>
 const emails = {} as Record<Who, string>
 let lead: Client
-let shared: { liquid: string, ice: string, version: string, observed: string, scenario: string, runId: string, jobId: string, slug: string, regions: { regionId: string, versionId: string, scale: number }[] }
+let shared: { liquid: string, ice: string, version: string, observed: string, scenario: string, runId: string, jobId: string, slug: string, grid: string, regions: { regionId: string, versionId: string, scale: number }[] }
 
 beforeAll(async () => {
   place = addWorkspace(dataDir, 'Walk')
@@ -66,7 +66,7 @@ beforeAll(async () => {
   const { runId, jobId } = await runScenario(lead, scenario)
   const slug = `walk-${ulid().toLowerCase()}`
   await lead.get('editionCreate', { params: { id: runId }, body: { slug, title: 'Walk', licence: 'CC BY 4.0', observedId: null } })
-  shared = { liquid: liquid.id, ice: ice.id, version: version.id, observed: observed.id, scenario: scenario.id, runId, jobId, slug, regions }
+  shared = { liquid: liquid.id, ice: ice.id, version: version.id, observed: observed.id, scenario: scenario.id, runId, jobId, slug, regions, grid: await makeGrid(lead, place, gridCsv()) }
 })
 
 const workspace = () => ({ workspace: place.workspaceId })
@@ -98,6 +98,12 @@ async function binned(kind: 'lake' | 'glacier-region') {
 async function binnedScenario(client: Client) {
   const { id } = await freshScenario(client)
   return { params: { id }, body: await client.get('scenarioRemove', { params: { id }, query: { revision: 1 } }) }
+}
+
+async function takenSeries() {
+  const { id } = await lead.get('gridSeries', { params: { id: shared.grid }, body: { regionIds: [shared.liquid], variable: 'height', sea: 'none' } })
+  await jobDone(lead, id)
+  return id
 }
 
 const noSteps = { schemaVersion: 1, from: null, to: null, includePredictions: false, steps: [] }
@@ -159,6 +165,23 @@ const steps: Step[] = [
   { route: 'seriesVersionRead', rule: 'science', make: () => ({ params: { id: shared.version } }) },
   { route: 'originalRead', rule: 'science', make: () => ({ params: { id: shared.version } }) },
 
+  { route: 'gridList', rule: 'science', make: () => ({ params: workspace() }) },
+  { route: 'gridCreate', rule: 'anyKind', make: () => ({ params: workspace(), body: { name: 'Walked' }, file: { name: 'grid.csv', content: gridCsv() } }) },
+  { route: 'gridRead', rule: 'science', make: () => ({ params: { id: shared.grid } }) },
+  { route: 'gridMonth', rule: 'science', make: () => ({ params: { id: shared.grid, n: 0 } }) },
+  { route: 'gridSeries', case: 'liquid water', rule: 'liquid', make: () => ({ params: { id: shared.grid }, body: { regionIds: [shared.liquid], variable: 'height', sea: 'none' } }) },
+  { route: 'gridSeries', case: 'ice', rule: 'ice', make: () => ({ params: { id: shared.grid }, body: { regionIds: [shared.ice], variable: 'height', sea: 'none' } }) },
+  { route: 'gridSeriesRead', rule: 'science', make: async () => ({ params: { id: await takenSeries() } }) },
+  { route: 'gridSeriesAccept', rule: 'liquid', make: async () => ({ params: { id: await takenSeries() }, body: { name: 'Walked', source: 'made by the test', product: null } }) },
+  { route: 'gridRemove', rule: 'anyKind', make: async () => ({ params: { id: await makeGrid(lead, place, gridCsv()) }, query: { revision: 1 } }) },
+  {
+    route: 'gridRestore', rule: 'anyKind',
+    make: async () => {
+      const id = await makeGrid(lead, place, gridCsv())
+      return { params: { id }, body: await lead.get('gridRemove', { params: { id }, query: { revision: 1 } }) }
+    },
+  },
+
   { route: 'observedList', rule: 'science', make: () => ({ params: workspace() }) },
   { route: 'observedCreate', rule: 'leadOnly', make: () => ({ params: workspace(), body: { ...seriesFacts }, file: { name: 'eop.csv', content: orientationCsv(40) } }) },
   { route: 'observedRead', rule: 'science', make: () => ({ params: { id: shared.observed } }) },
@@ -216,6 +239,8 @@ const steps: Step[] = [
   { route: 'runRead', rule: 'science', make: () => ({ params: { id: shared.runId } }) },
   { route: 'runComparison', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { observed: shared.observed } }) },
   { route: 'runAttribution', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { observed: shared.observed } }) },
+  { route: 'runMonteCarlo', rule: 'anyKind', make: () => ({ params: { id: shared.runId }, body: { members: 100 } }) },
+  { route: 'runMonteCarloRead', rule: 'science', make: () => ({ params: { id: shared.runId } }) },
   { route: 'runSeaLevel', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { step: 5 } }) },
   { route: 'runSeaLevelCsv', rule: 'science', make: () => ({ params: { id: shared.runId }, query: { step: 5 } }) },
   { route: 'regionSeaLevel', rule: 'science', make: () => ({ params: { id: shared.liquid }, query: { step: 5 } }) },

@@ -105,9 +105,29 @@ export async function runScenario(client: Client, scenario: { id: string, revisi
 
 /** Polls a job until it is done and gives its run. */
 export async function endOfJob(client: Client, id: string): Promise<string> {
+  return (await jobDone(client, id)).answer!.runId
+}
+
+/** A small world-wide grid as a table: cells of 5°, heights in m that fall by a centimetre a month unless told otherwise. */
+export function gridCsv({ months = 4, height = (t: number, _lat: number, _lon: number) => -0.01 * t } = {}): string {
+  const rows: string[] = []
+  for (let t = 0; t < months; t++) {
+    for (let lat = -87.5; lat < 90; lat += 5) for (let lon = -177.5; lon < 180; lon += 5) rows.push(`${lon},${lat},${2004 + Math.floor(t / 12)}-${String(t % 12 + 1).padStart(2, '0')},${height(t, lat, lon)}`)
+  }
+  return `lon,lat,month,height (m)\n${rows.join('\n')}\n`
+}
+
+/** Sends a grid and waits until it is read. */
+export async function makeGrid(client: Client, place: Place, content: string | Uint8Array, name = 'grid.csv'): Promise<string> {
+  const { id } = await client.get('gridCreate', { params: { workspace: place.workspaceId }, body: { name: 'Test grid' }, file: { name, content } })
+  return (await jobDone(client, id)).gridId!
+}
+
+/** Polls a job until it is done. */
+export async function jobDone(client: Client, id: string) {
   for (let i = 0; i < 200; i++) {
     const job = await client.get('jobRead', { params: { id } })
-    if (job.state === 'done') return job.answer!.runId
+    if (job.state === 'done') return job
     if (job.state !== 'waiting' && job.state !== 'running') throw new Error(`the job ended as ${job.state}: ${JSON.stringify(job.problem)}`)
     await new Promise(wait => setTimeout(wait, 50))
   }

@@ -3,6 +3,7 @@ import type { Contour } from '../contour.ts'
 import type { EarthModel } from '../earthModel.ts'
 import { SEA_INSIDE_LIMIT } from '../evaluateWarnings.ts'
 import { contourMeans } from '../gridStack.ts'
+import { patternLeftOut } from '../../text/gridPattern.ts'
 import type { RegionOverlap, RunInput, RunRegionInput, RunWarning } from '../../types/run.ts'
 import type { TrendFit } from './trend.ts'
 
@@ -21,6 +22,7 @@ export function runWarnings(
       ? [{ code: 'mass-not-conserved', message: 'Without an ocean response mass is not conserved. This setting is a diagnostic, not a result.', regions: [] }]
       : []),
     ...seaWarnings(active, model),
+    ...active.filter(({ region }) => region.patternLeftOut).map(({ region }) => ({ code: 'pattern-left-out', message: `“${region.name}”: ${patternLeftOut}`, regions: [region.key] })),
     ...fitWarnings(active),
     ...coverageWarnings(active),
     ...scatterWarning(active),

@@ -9,7 +9,7 @@ import { binChain, changeChain, createChain, listChains, namedChain } from '../.
 import { newId } from '../../../server/services/change'
 import { compareWith, readComparison } from '../../../server/services/comparisons'
 import { sha256Hex } from '../../../server/services/hash'
-import { storeRun } from '../../../server/services/jobs'
+import { storeRun } from '../../../server/services/runStore'
 import { createObserved } from '../../../server/services/observed'
 import { runRow } from '../../../server/services/runs'
 import comparison from '../../../server/workers/comparison'
