@@ -27,19 +27,19 @@ describe('a grid', () => {
     const id = await makeGrid(lead, place, fixture('packed.nc4.nc'), 'packed.nc4.nc')
     const grid = await lead.get('gridRead', { params: { id } })
     // The values of tests/fixtures/grids/packed.cdl, which Debian's ncgen wrote the file from.
-    expect(grid).toMatchObject({ format: 'netcdf-4', epochs: 2, chosen: grid.candidates[0]!.name, unusable: 0 })
+    expect(grid).toMatchObject({ format: 'netcdf-4', epochs: 3, chosen: grid.candidates[0]!.name, unusable: 0 })
     expect(grid.candidates[0]!.reading).toMatch(/is read as/)
     const month = await lead.get('gridMonth', { params: { id, n: 1 } })
     expect(month.values.filter(v => v === null).length).toBeGreaterThan(0)
     expect(month.values).toHaveLength((month.latEdgesDeg.length - 1) * month.columns)
-    await lead.refused('gridMonth', 404, { params: { id, n: 2 } })
+    await lead.refused('gridMonth', 404, { params: { id, n: 3 } })
   })
 
   it('that is damaged is refused by what and where, and leaves nothing', async () => {
     const before = (await lead.get('gridList', { params: { workspace: place.workspaceId } })).items.length
-    for (const [name, content, code] of [['cut.nc', fixture('packed.nc3.nc').slice(0, 60), 'damaged'], ['cut.nc4', fixture('packed.nc4.nc').slice(0, 600), 'damaged'], ['words.csv', new TextEncoder().encode('a,b\n1,2\n'), 'no-grid']] as const) {
+    for (const [name, content, code] of [['cut.nc', fixture('packed.nc3.nc').slice(0, 60), 'not-a-grid'], ['cut.nc4', fixture('packed.nc4.nc').slice(0, 600), 'damaged'], ['words.csv', new TextEncoder().encode('a,b\n1,2\n'), 'no-grid']] as const) {
       const { id } = await lead.get('gridCreate', { params: { workspace: place.workspaceId }, body: { name }, file: { name, content } })
-      await expect.poll(async () => (await lead.get('jobRead', { params: { id } })).state).toBe('failed')
+      await expect.poll(async () => (await lead.get('jobRead', { params: { id } })).state, { timeout: 20_000 }).toBe('failed')
       const { problem } = await lead.get('jobRead', { params: { id } })
       expect(problem).toMatchObject({ status: 422, issues: [{ code }] })
     }

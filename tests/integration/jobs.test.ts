@@ -44,7 +44,7 @@ describe('a job', () => {
     try {
       const again = new Client(second.url)
       again.cookie = lead.cookie
-      await expect.poll(async () => (await again.get('jobRead', { params: { id: left } })).state).toBe('done')
+      await expect.poll(async () => (await again.get('jobRead', { params: { id: left } })).state, { timeout: 20_000 }).toBe('done')
       const job = await again.get('jobRead', { params: { id: left } })
       const after = await again.get('runRead', { params: { id: job.answer!.runId } })
       expect(after.n).toBe(before.n + 1)

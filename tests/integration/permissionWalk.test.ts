@@ -7,7 +7,7 @@ import { contracts, type ContractId } from '#shared/api/contracts'
 import { Client, demoPassword, signIn } from '../support/client'
 import { buildDir } from '../support/server'
 import {
-  addPerson, addWorkspace, draftOf, endOfJob, gridCsv, jobDone, makeGrid, makeObserved, makeRegion, makeScenario, makeVersion, monthlyCsv, newcomer, orientationCsv, runScenario, seriesFacts, square, withDatabase, type Place,
+  addPerson, addWorkspace, draftOf, gridCsv, jobDone, makeGrid, makeObserved, makeRegion, makeScenario, makeVersion, monthlyCsv, newcomer, orientationCsv, runScenario, seriesFacts, square, withDatabase, type Place,
 } from '../support/world'
 
 // Every built route, called as everybody. What must come out is written here from the table in the product's architecture
@@ -275,7 +275,7 @@ describe.each(steps.map(step => ({ ...step, title: step.case ? `${step.route}, $
       const answer = await client.call(route, call)
       got[who] = answer.status
       // A run that was started writes to the log when its job ends: not while the next one is looked at.
-      if (answer.status === 202) await endOfJob(lead, (answer.json as { id: string }).id)
+      if (answer.status === 202) await jobDone(lead, (answer.json as { id: string }).id)
       if (got[who]! >= 400 && lastLogEntry() !== before) traces.push(who)
     }
     expect(got).toEqual(expected)

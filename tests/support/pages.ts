@@ -1,5 +1,6 @@
 import { readdirSync } from 'node:fs'
 import type { Client } from './client'
+import { gridCsv, makeGrid } from './world'
 
 /** Every page of the product as the router knows it, from the folder of pages: `/regions/[id]`. */
 export function pageRoutes(): string[] {
@@ -18,6 +19,7 @@ export async function pageVisits(lead: Client, admin: Client): Promise<Record<st
   const scenario = (await lead.get('scenarioList', { params })).items.find(s => s.latestRun)!
   const run = scenario.latestRun!.id
   const observed = (await lead.get('observedList', { params })).items[0]!.id
+  const grid = await makeGrid(lead, { workspaceId: workspace, agencyId: '' }, gridCsv())
   const { slug, n } = (await lead.get('editionList', { params })).items.at(-1)!
   const { link } = await admin.get('memberInvite', { params, body: { email: 'walked@demo.example', role: 'reader', agencyId: null } })
   return {
@@ -38,6 +40,8 @@ export async function pageVisits(lead: Client, admin: Client): Promise<Record<st
     '/regions/table': { as: 'lead', path: '/regions/table' },
     '/regions/[id]/fit': { as: 'lead', path: `/regions/${region}/fit?acceleration=true&alias=true` },
     '/regions/[id]/sea-level': { as: 'lead', path: `/regions/${region}/sea-level` },
+    '/grids': { as: 'lead', path: '/grids' },
+    '/grids/[id]': { as: 'lead', path: `/grids/${grid}?region=${region}` },
     '/observations': { as: 'lead', path: '/observations' },
     '/observations/[id]': { as: 'lead', path: `/observations/${observed}` },
     '/observations/[id]/reduction': { as: 'lead', path: `/observations/${observed}/reduction` },

@@ -6,6 +6,7 @@ import { constantRows } from '#shared/text/constants'
 import { methodSections, settingsLine } from '#shared/text/method'
 import { massOnGround, namedPairs, settledSentence, sharedGround, unsettledNote } from '#shared/text/overlaps'
 import { factRows } from '#shared/text/seriesFacts'
+import { patternSentences } from '#shared/text/gridPattern'
 import { waterWaySentences } from '#shared/text/waterWay'
 import { listed } from '#shared/text/words'
 import { caution, page, paragraph, sectionHead, size, textTable, together } from './style'
@@ -93,12 +94,17 @@ function checksum(sha256: string): Block {
   return { text: sha256.length > 32 ? `${sha256.slice(0, 32)}\n${sha256.slice(32)}` : sha256, fontSize: size.tiny - 1, color: print.soft }
 }
 
+/** Of a region whose mass lies as a grid says: what an even spread would do. */
+function patternOf(region: ReportData['result']['regions'][number] | undefined): string[] {
+  return region?.evenSpread ? patternSentences({ ...region.evenSpread, pattern: region.perGt, even: region.evenSpread.perGt }) : []
+}
+
 export function sourceBlocks({ result, sources, observed }: ReportData): Block[] {
   const byKey = new Map(result.regions.map(region => [region.key, region]))
   const nameOf = (key: string) => sources.find(source => source.key === key)?.name ?? key
   const rows = sources.map((source) => {
     const region = byKey.get(source.key)
-    const way = [...factRows(source.facts).map(({ name, text }) => `${name}: ${text}`), ...waterWaySentences(source, nameOf)].join('\n')
+    const way = [...factRows(source.facts).map(({ name, text }) => `${name}: ${text}`), ...waterWaySentences(source, nameOf), ...patternOf(region)].join('\n')
     return [
       { text: [source.name, { text: `\n${kinds[source.kind]}, ${source.agency}${region ? `\n${formatArea(region.areaKm2)}` : ''}`, color: print.soft }] },
       { text: [source.source || 'not stated', { text: `\nversion ${source.seriesVersion}${region ? `, ${region.epochsUsed} epochs, ${formatShare(region.coverage).replace('+', '')} of the span` : ''}${way ? `\n${way}` : ''}`, color: print.soft }] },
