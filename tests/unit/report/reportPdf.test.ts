@@ -4,6 +4,7 @@ import { tmpdir } from 'node:os'
 import { join, resolve } from 'node:path'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { reportPdf } from '../../../server/services/report/reportPdf'
+import { defaultChain, readChain } from '../../../shared/observed/readChain'
 import { cautions } from '../../../shared/text/cautions'
 import { findingSentence } from '../../../shared/text/finding'
 import { hostileRegions } from '../figures/hostile'
@@ -125,6 +126,19 @@ describe('a report of other accounts', () => {
     expect(text).not.toMatch(/Invented data|Comparison with observation|Residual/)
     expect(text).toContain('one region (Northern ice dome)')
     expect(pages.length).toBeGreaterThanOrEqual(4)
+  }, 60_000)
+
+  it('states how the observed series was reduced: the chain by name, its steps, and its JSON whole', async () => {
+    const data = sampleReport()
+    const chain = { ...defaultChain(), steps: [...defaultChain().steps, { kind: 'background' as const, on: true, rows: [{ key: 'b', name: 'Tidal braking', source: 'a source, with “signs” and a long name', core: null, lodMsPerCentury: { value: 2.3, sigma: 0.1 }, chi1MasPerYear: null, chi2MasPerYear: null }] }] }
+    data.comparison = { ...data.comparison!, reduction: { name: 'Tides out', chain, chartNote: 'trend in, seasons in', steps: [{ title: 'Zonal tides', sentence: 'All 62 zonal tides of Table 8.1 are taken off.', source: 'IERS Conventions (2010)' }] } }
+    const { text } = await printed(data)
+    expect(text).toContain('Reduction of the observed series the chain “Tides out”; trend in, seasons in')
+    expect(text).toContain('1. All 62 zonal tides of Table 8.1 are taken off. IERS Conventions (2010)')
+    // Copied out of the PDF it is still the chain.
+    const from = text.indexOf('{ "schemaVersion"')
+    const json = text.slice(from, text.indexOf('} ] } ] }', from) + 9)
+    expect(readChain(JSON.parse(json))).toEqual(chain)
   }, 60_000)
 
   it('holds derived quantities, the model’s own lines beside the data, and where water goes', async () => {
