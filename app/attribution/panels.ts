@@ -2,7 +2,7 @@ import type { ComparedReport } from '#shared/attribution/compared'
 import type { ForwardReport, Ut1Report } from '#shared/attribution/poleAndUt1'
 import type { RotationQuantity } from '#shared/attribution/types'
 import { coveredMonths } from '#shared/figures/series/comparisonFigure'
-import { secularLine, secularPath } from '~/observed/secular'
+import { secularLine, secularPath } from '#shared/figures/series/secular'
 import type { PolePath } from '#shared/figures/drift/polePathFigure'
 import type { SeriesData } from '#shared/figures/series/data'
 

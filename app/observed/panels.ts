@@ -2,7 +2,7 @@ import type { AnswerOf } from '#shared/api/contract'
 import type { contracts } from '#shared/api/contracts'
 import type { FigureSeries, SeriesData } from '#shared/figures/series/data'
 import { coveredSpans, withSharedCoverage } from './coverage'
-import { secularLine } from './secular'
+import { secularLine } from '#shared/figures/series/secular'
 
 /** Columns of an observed series as a page gets them, or as a reader of files gives them. */
 export type ObservedColumns = Pick<AnswerOf<typeof contracts.observedRead>, 'mjd' | 'lodMs' | 'xMas' | 'yMas' | 'sigmaLodMs' | 'sigmaXMas' | 'sigmaYMas' | 'predicted'>

@@ -1,4 +1,5 @@
 import { print } from '#shared/design/tokens'
+import { secularNote } from '#shared/figures/series/secular'
 import { formatSpan } from '#shared/format/numbers'
 import { cautions } from '#shared/text/cautions'
 import { findingSentence, remainderSentences } from '#shared/text/finding'
@@ -15,7 +16,7 @@ export function reportDocument(data: ReportData): Block {
   const { result, comparison, scenarioName, workspaceName, runNumber, invented } = data
   const finding = findingSentence(result)
   const span = formatSpan(result.span.fromMjd, result.span.toMjd)
-  const overTime = comparison ? 'observed, model and residual' : 'model with one sigma'
+  const overTime = comparison ? `observed, model and residual; ${comparison.reduction?.chartNote ?? 'trend in'}` : 'model with one sigma; trend in'
   const content: Block[] = [
     { text: finding, fontSize: size.head, bold: true, lineHeight: 1.15, margin: [0, 10, 0, 8] },
     paragraph(`${workspaceName}. Scenario “${scenarioName}”, run ${runNumber}: ${settingsLine(result.settings)}. Calculated, not observed.${invented ? ' Invented data.' : ''}`, { color: print.soft }),
@@ -32,6 +33,7 @@ export function reportDocument(data: ReportData): Block {
     together(sectionHead('Pole', 'drift in mas per year, head to tail, seen from above the north pole'), figure(reportDrift(data), 400)),
     together(sectionHead('Excitation of the pole towards 0°, χ₁', overTime), figure(reportChart(data, 'chi1'))),
     together(sectionHead('Excitation of the pole towards 90° E, χ₂', overTime), figure(reportChart(data, 'chi2'))),
+    ...(comparison?.chi2 && comparison.from !== 'gravity' ? [paragraph(secularNote, { color: print.soft, fontSize: size.small })] : []),
 
     ...comparisonBlocks(data),
     ...derivedBlocks(data),

@@ -1,5 +1,6 @@
 import { stackedFigure } from './timeSeriesFigure.ts'
 import type { Comparison, ComparisonQuantity, RunTotalSeries } from '../../types/run.ts'
+import { secularLine } from './secular.ts'
 import type { SeriesData } from './data.ts'
 import type { SeriesFigure, SeriesOptions } from './timeSeriesFigure.ts'
 
@@ -18,6 +19,8 @@ export function comparisonPanels(
   const data: ComparisonQuantity | null = comparison[quantity]
   if (!data) return null
   const mjd = comparison.epochsMjd
+  // Beside an observed pole; gravity coefficients have a zero and a trend of their own.
+  const secular = quantity === 'lod' || comparison.from === 'gravity' ? [] : [secularLine(quantity, mjd.filter((_, i) => data.observed[i] !== null && data.model[i] !== null), 'about its mean')]
   return [
     {
       title: titles[quantity],
@@ -25,6 +28,7 @@ export function comparisonPanels(
       series: [
         { label: options.observedLabel ?? 'observed', role: 'observed', mjd, value: data.observed },
         { label: options.sigma ? 'model ± 1σ' : 'model', role: 'model', mjd, value: data.model, sigma: options.sigma },
+        ...secular,
       ],
       coverage: [{ label: 'observed', spans: coveredMonths(mjd, data.observed) }, { label: 'model', spans: coveredMonths(mjd, data.model) }],
     },

@@ -1,8 +1,8 @@
-import { secularPole } from '#shared/earth/time/secularPole'
-import type { PolePath } from '#shared/figures/drift/polePathFigure'
-import type { FigureSeries } from '#shared/figures/series/data'
+import { secularPole } from '../../earth/time/secularPole.ts'
+import type { PolePath } from '../drift/polePathFigure.ts'
+import type { FigureSeries } from './data.ts'
 
-/** What every chart that shows it says. */
+/** What is said where it is drawn. */
 export const secularNote = 'Dotted: the secular pole of the IERS Conventions (2010, update of 2018). It is the observed drift itself, so it is drawn and never subtracted.'
 
 const label = 'secular pole'
