@@ -42,8 +42,8 @@ describe('openapi.json', () => {
     for (const item of Object.values(document.paths)) {
       for (const op of Object.values(item)) {
         expect(op.responses.default!.content, op.operationId).toHaveProperty(['application/problem+json'])
-        const open = Object.values(contracts).find(c => c.id === op.operationId)!.action === 'public.read'
-        expect(op.security, op.operationId).toEqual(open ? [] : undefined)
+        const { action } = Object.values(contracts).find(c => c.id === op.operationId)!
+        expect(op.security, op.operationId).toEqual(action === 'public.read' ? [] : action === 'account.manage' ? [{ session: [] }] : undefined)
       }
     }
     expect(document.components.securitySchemes.session).toEqual({ type: 'apiKey', in: 'cookie', name: 'counterpoise-session' })
