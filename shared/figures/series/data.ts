@@ -45,26 +45,37 @@ export function runsOf(series: FigureSeries, fromMjd = -Infinity, toMjd = Infini
   const first = Math.max(0, lowerBound(series.mjd, fromMjd) - 1)
   const last = Math.min(series.mjd.length - 1, lowerBound(series.mjd, toMjd) + 1)
   const limit = series.maxGapDays ?? Infinity
-  let run: Run | null = null
-  for (let i = first; i <= last; i++) {
-    const mjd = series.mjd[i]!
+  const missing = (i: number): boolean => {
     const value = series.value[i]
-    if (value === null || value === undefined || !Number.isFinite(value) || !Number.isFinite(mjd)) {
-      run = null
+    return value === null || value === undefined || !Number.isFinite(value) || !Number.isFinite(series.mjd[i]!)
+  }
+  for (let start = first; start <= last;) {
+    if (missing(start)) {
+      start++
       continue
     }
-    if (!run || mjd - run.mjd.at(-1)! > limit) {
-      run = { mjd: [], value: [], low: [], high: [] }
-      runs.push(run)
-    }
-    const sigma = series.sigma?.[i]
-    const error = sigma !== null && sigma !== undefined && Number.isFinite(sigma) ? Math.abs(sigma) : 0
-    run.mjd.push(mjd)
-    run.value.push(value)
-    run.low.push(value - error)
-    run.high.push(value + error)
+    let end = start + 1
+    while (end <= last && !missing(end) && series.mjd[end]! - series.mjd[end - 1]! <= limit) end++
+    runs.push(stretchOf(series, start, end))
+    start = end
   }
   return runs
+}
+
+/** A stretch without a gap. Sixty years of days are drawn anew at each brush: no list grows here, and one without sigma is its own band. */
+function stretchOf({ mjd, value, sigma }: FigureSeries, start: number, end: number): Run {
+  const part = (at: (i: number) => number): number[] => {
+    const list = new Array<number>(end - start)
+    for (let i = start; i < end; i++) list[i - start] = at(i)
+    return list
+  }
+  const values = part(i => value[i]!)
+  if (!sigma) return { mjd: part(i => mjd[i]!), value: values, low: values, high: values }
+  const errorOf = (i: number): number => {
+    const given = sigma[i]
+    return given !== null && given !== undefined && Number.isFinite(given) ? Math.abs(given) : 0
+  }
+  return { mjd: part(i => mjd[i]!), value: values, low: part(i => value[i]! - errorOf(i)), high: part(i => value[i]! + errorOf(i)) }
 }
 
 /** Index of the first entry that is not below x. */

@@ -3,7 +3,7 @@ import { spread } from '../layout.ts'
 import { coordinate, pathThrough } from '../svg.ts'
 import { shortened, textWidth } from '../textWidth.ts'
 import { tickDecimals } from '../ticks.ts'
-import { decimated, runsOf } from './data.ts'
+import { decimated, lowerBound, runsOf } from './data.ts'
 import { linear } from './scales.ts'
 import { lineStyle } from './style.ts'
 import type { TimeTick } from '../ticks.ts'
@@ -123,10 +123,9 @@ function drawLine(canvas: Canvas, panel: Panel, series: FigureSeries): void {
 function endOf(panel: Panel, series: FigureSeries): Point | null {
   const [from, to] = panel.x.domain
   const [x, y] = [linear(panel.x), linear(panel.y)]
-  for (const run of runsOf(series, from, to).reverse()) {
-    for (let i = run.mjd.length - 1; i >= 0; i--) {
-      if (run.mjd[i]! >= from && run.mjd[i]! <= to) return [x(run.mjd[i]!), held(y(run.value[i]!), panel)]
-    }
+  for (let i = Math.min(series.mjd.length - 1, lowerBound(series.mjd, to)); i >= 0 && series.mjd[i]! >= from; i--) {
+    const value = series.value[i]
+    if (series.mjd[i]! <= to && value !== null && value !== undefined && Number.isFinite(value)) return [x(series.mjd[i]!), held(y(value), panel)]
   }
   return null
 }
