@@ -1,3 +1,4 @@
+import { createReadStream } from 'node:fs'
 import { setImmediate } from 'node:timers/promises'
 import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
@@ -14,7 +15,7 @@ import { Problem } from '../utils/problem'
 import { authorise, change, newId } from './change'
 import type { Context } from './context'
 import { canonicalJson, sha256Hex } from './hash'
-import { keepOriginal, readOriginal, rememberOriginal, uploadTable } from './originals'
+import { keepOriginal, originalPath, rememberOriginal, uploadTable } from './originals'
 import { latestOutline, regionRow, seriesOfRegion, type RegionRow } from './regions'
 import { checksOf } from './seriesChecks'
 import { floats, listVersions, massSeries, nextVersion, versionRow, versionView } from './seriesStore'
@@ -168,8 +169,8 @@ export function readSeriesVersion(context: Context, principal: Principal | null,
   return { ...versionView(context, version), regionId: series.regionId, mjd, massGt, sigmaGt, sharedRates, recipe: JSON.parse(version.recipe) as Record<string, unknown> }
 }
 
-/** The original of a version, byte for byte, with its name. */
-export async function readVersionOriginal(context: Context, principal: Principal | null, id: string) {
+/** The original of a version, byte for byte as a stream, with its name: a grid may have half a gigabyte. */
+export function readVersionOriginal(context: Context, principal: Principal | null, id: string) {
   const { version } = versionInWorkspace(context, principal, id)
-  return { name: version.originalName, bytes: await readOriginal(context, version.originalSha256) }
+  return { name: version.originalName, bytes: createReadStream(originalPath(context.dataDir, version.originalSha256)) }
 }

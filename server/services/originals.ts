@@ -35,10 +35,6 @@ export function rememberOriginal(context: Context, tx: Reader, upload: Upload) {
   tx.insert(schema.original).values({ sha256: upload.sha256, bytes: upload.bytes, type: upload.type, createdAt: context.now() }).onConflictDoNothing().run()
 }
 
-export async function readOriginal(context: Context, sha256: string): Promise<Buffer> {
-  return readFile(originalPath(context.dataDir, sha256))
-}
-
 /** Rows of an uploaded table: its text, or the cells of one sheet where it is a workbook; the first sheet with rows unless told. */
 export async function uploadTable(upload: Upload, sheetName?: string): Promise<TableSource> {
   const bytes = await readFile(upload.path)

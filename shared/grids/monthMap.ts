@@ -54,8 +54,8 @@ function columnsAround(epoch: Epoch, lons: number[], mostPoleward: number): { co
   for (let i = 1; i < turned.length; i++) {
     if (turned[i]! - turned[i - 1]! > gap) [gap, from] = [turned[i]! - turned[i - 1]!, turned[i]!]
   }
-  // Meridians run together towards a pole: a margin in degrees grows there.
-  const margin = MARGIN_DEG / Math.max(0.1, Math.cos(Math.min(89, mostPoleward) * Math.PI / 180))
+  // Maps are wider than high, and meridians run together towards a pole: a margin in degrees grows there.
+  const margin = 1.7 * MARGIN_DEG / Math.max(0.1, Math.cos(Math.min(89, mostPoleward) * Math.PI / 180))
   if (gap < 2 * margin + 20) return { column: 0, columnCount: epoch.columns }
   const first = Math.floor((from - margin) / epoch.stepDeg)
   const count = Math.min(epoch.columns, Math.ceil((360 - gap + 2 * margin) / epoch.stepDeg) + 1)

@@ -25,7 +25,7 @@ it('a grid is sent, looked at, cut by a region, accepted, and its pattern stands
   await page.getByLabel('Cells of the sea').selectOption('none')
   await page.getByRole('button', { name: 'Take the series' }).click()
   await page.getByText('are weighted with their area inside the outline').waitFor()
-  await page.getByLabel('Is degree 1 put in?').selectOption('yes')
+  await page.getByLabel('Is degree 1 put in?', { exact: true }).selectOption('yes')
   await page.getByLabel('Source', { exact: true }).fill('Invented for the test')
   await page.getByRole('button', { name: 'Store one series' }).click()
   await page.getByText('One series is stored.').waitFor()

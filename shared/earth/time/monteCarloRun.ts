@@ -96,7 +96,7 @@ const names: Record<RateName, string> = { massGt: 'mass', chi1Mas: 'χ₁', chi2
 function sentenceOf(checked: Record<RateName, CheckedRate>, members: number, allowed: number): string {
   const limit = `${formatSignificant(allowed * 100, 2)} %`
   const apart = rateNames.filter(name => !checked[name].agrees)
-  if (apart.length === 0) return `The errors of ${formatNumber(members)} members agree with those that the run quotes, within the ${limit} that so few members allow.`
+  if (apart.length === 0) return `The errors of ${formatNumber(members)} members agree with those that the run quotes, within the ${limit} that so many members allow.`
   const parts = apart.map((name) => {
     const ratio = checked[name].sampled.sigma / checked[name].linear.sigma - 1
     return `${names[name]} ${formatSignificant(Math.abs(ratio) * 100, 2)} % ${ratio > 0 ? 'larger' : 'smaller'}`

@@ -40,6 +40,8 @@ export function gridFigure(data: GridMapData, options: FigureOptions): Figure {
   canvas.path(pathOf(projection, data.land, 0.7), { fill: palette.land })
   const classes = classesOf(data.cells.values, data.most)
   const paths = cellPaths(data.cells, classes, projection)
+  // Paper under the cells: neither sea nor land may tint their colours.
+  canvas.path(paths.join(''), { 'fill': palette.paper, 'stroke': palette.paper, 'stroke-width': 0.4 })
   paths.forEach((d, k) => canvas.path(d, styleOf(canvas, classes, k)))
   const losses = paths.filter((_, k) => k < classes.each).join('')
   canvas.path(losses, { fill: `url(#${options.id}-loss)` })
