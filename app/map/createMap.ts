@@ -1,8 +1,8 @@
 import { Map as Chart, setWorkerUrl } from 'maplibre-gl'
 import workerUrl from 'maplibre-gl/dist/maplibre-gl-worker.mjs?url'
 import type { Palette } from '#shared/design/tokens'
-import { hatchImage } from './hatchImage'
-import { lossHatch, mapLayers, mapStyle, type MapProjection } from './mapStyle'
+import { mapImages } from './colouring/images'
+import { mapLayers, mapStyle, type MapProjection } from './mapStyle'
 
 /** A map in an element, looking straight down, north up; labels wait for the page's Noto Sans. */
 export async function createMap(container: HTMLElement, palette: Palette, projection: MapProjection): Promise<Chart> {
@@ -27,7 +27,7 @@ export async function createMap(container: HTMLElement, palette: Palette, projec
   map.touchZoomRotate.disableRotation()
   map.keyboard.disableRotation()
   map.on('style.load', () => {
-    if (!map.hasImage(lossHatch)) map.addImage(lossHatch, hatchImage(palette.loss), { pixelRatio: 2 })
+    for (const [name, image] of mapImages(palette)) if (!map.hasImage(name)) map.addImage(name, image, { pixelRatio: 2 })
   })
   await map.once('load')
   return map
@@ -35,7 +35,7 @@ export async function createMap(container: HTMLElement, palette: Palette, projec
 
 /** Colours of another theme on a map that stands. */
 export function repaint(map: Chart, palette: Palette): void {
-  map.updateImage(lossHatch, hatchImage(palette.loss))
+  for (const [name, image] of mapImages(palette)) map.updateImage(name, image)
   for (const layer of mapLayers(palette)) {
     for (const [name, value] of Object.entries(layer.paint ?? {})) {
       map.setPaintProperty(layer.id, name as never, value as never)

@@ -1,14 +1,14 @@
 import type { ExpressionSpecification, LayerSpecification, StyleSpecification } from 'maplibre-gl'
 import type { Palette } from '#shared/design/tokens'
 import { graticule } from './graticule'
+import { overlapHatch } from './colouring/images'
 import { placeNames } from './placeNames'
 import { collection } from './regionSources'
 
 export type MapProjection = 'globe' | 'flat'
 
-export const lossHatch = 'hatch-loss'
 /** Sources that the page fills. */
-export const sourceIds = ['overlay-lines', 'region-fills', 'region-lines', 'region-labels', 'draft-fill', 'draft-lines', 'draft-handles'] as const
+export const sourceIds = ['overlay-lines', 'region-fills', 'overlap-fills', 'region-lines', 'region-labels', 'draft-fill', 'draft-lines', 'draft-handles'] as const
 export type SourceId = typeof sourceIds[number]
 
 /** The whole style: shipped tiles, graticule, regions and the outline being drawn. No glyphs: labels come from local Noto Sans. */
@@ -20,7 +20,7 @@ export function mapStyle(palette: Palette, projection: MapProjection, origin: st
       earth: { type: 'vector', tiles: [`${origin}/tiles/{z}/{x}/{y}.pbf`], minzoom: 0, maxzoom: 5 },
       graticule: { type: 'geojson', data: graticule() },
       places: { type: 'geojson', data: placeNames() },
-      ...Object.fromEntries(sourceIds.map(id => [id, { type: 'geojson' as const, data: collection([]), tolerance: 0.2 }]))
+      ...Object.fromEntries(sourceIds.map(id => [id, { type: 'geojson' as const, data: collection([]), tolerance: 0.2, promoteId: 'id' }]))
     },
     layers: mapLayers(palette)
   }
@@ -93,21 +93,22 @@ function overlayLayers(palette: Palette): LayerSpecification[] {
 }
 
 function regionLayers(palette: Palette): LayerSpecification[] {
-  const colour: ExpressionSpecification = ['match', ['get', 'sign'], 'loss', palette.loss, 'gain', palette.gain, palette.ink]
+  const colour: ExpressionSpecification = ['match', ['get', 'tone'], 'loss', palette.loss, 'gain', palette.gain, 'model', palette.model, palette.ink]
   const selected: ExpressionSpecification = ['get', 'selected']
-  const tint: ExpressionSpecification = ['match', ['get', 'sign'], 'none', 0.1, 'loss', 0.22, 0.34]
+  const hovered: ExpressionSpecification = ['boolean', ['feature-state', 'hovered'], false]
   return [
     {
       id: 'region-fill', type: 'fill', source: 'region-fills',
-      paint: { 'fill-color': colour, 'fill-opacity': tint, 'fill-antialias': false }
+      paint: { 'fill-color': colour, 'fill-opacity': ['get', 'tint'], 'fill-antialias': false }
     },
     {
-      id: 'region-hatch', type: 'fill', source: 'region-fills', filter: ['==', ['get', 'sign'], 'loss'],
-      paint: { 'fill-pattern': lossHatch, 'fill-antialias': false }
+      id: 'region-hatch', type: 'fill', source: 'region-fills', filter: ['!=', ['get', 'pattern'], ''],
+      paint: { 'fill-pattern': ['image', ['get', 'pattern']], 'fill-antialias': false }
     },
+    { id: 'overlap-fill', type: 'fill', source: 'overlap-fills', paint: { 'fill-pattern': overlapHatch, 'fill-antialias': false } },
     {
       id: 'region-line', type: 'line', source: 'region-lines', layout: { 'line-join': 'round' },
-      paint: { 'line-color': colour, 'line-width': ['case', selected, 3, 1.25] }
+      paint: { 'line-color': colour, 'line-width': ['case', selected, 3, hovered, 2.75, 1.25] }
     },
     {
       id: 'region-chosen', type: 'line', source: 'region-lines', filter: ['get', 'selected'], layout: { 'line-join': 'round' },
@@ -116,8 +117,8 @@ function regionLayers(palette: Palette): LayerSpecification[] {
     {
       id: 'region-label', type: 'symbol', source: 'region-labels',
       layout: {
-        'text-field': ['case', ['==', ['get', 'trend'], ''], ['get', 'name'],
-          ['format', ['get', 'name'], {}, '\n', {}, ['get', 'trend'], { 'font-scale': 0.92 }]],
+        'text-field': ['case', ['==', ['get', 'figure'], ''], ['get', 'name'],
+          ['format', ['get', 'name'], {}, '\n', {}, ['get', 'figure'], { 'font-scale': 0.92 }]],
         'text-font': ['Noto Sans'],
         'text-size': 12.5,
         'text-line-height': 1.25,

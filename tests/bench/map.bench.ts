@@ -31,7 +31,7 @@ export async function run(): Promise<Figure[]> {
   }
   const regions = Array.from({ length: 200 }, (_, k): MapRegion => {
     const positions = star(200, -170 + (k % 20) * 17, -60 + Math.floor(k / 20) * 13, 8)
-    return { id: `r${k}`, name: `Region ${k}`, kind: 'basin', massTrendGtPerYear: k - 100, selected: false, geometry: { type: 'Polygon', coordinates: [[...positions, positions[0]!]] } }
+    return { id: `r${k}`, name: `Region ${k}`, paint: { tone: 'gain', tint: 0.3, pattern: '', figure: '+1.0 Gt/yr' }, selected: false, geometry: { type: 'Polygon', coordinates: [[...positions, positions[0]!]] } }
   })
   const large = star(199_999, 10, 10, 20)
   return [

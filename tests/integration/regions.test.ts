@@ -1,7 +1,7 @@
 import { beforeAll, describe, expect, inject, it } from 'vitest'
 import type { Position } from '#shared/types/domain'
 import { demo, type Client } from '../support/client'
-import { addWorkspace, makeRegion, newcomer, square, type Place } from '../support/world'
+import { addWorkspace, makeRegion, makeVersion, newcomer, square, type Place } from '../support/world'
 
 const url = inject('url')
 let place: Place
@@ -136,5 +136,25 @@ describe('the list', () => {
     const { items } = await hydrologist.get('regionList', { params: { workspace: memberships[0]!.workspaceId } })
     for (const region of items) expect(region.canWrite, region.name).toBe(region.kind !== 'ice-sector' && region.kind !== 'glacier-region')
     expect(items.length).toBe(6)
+  })
+})
+
+describe('the months of the regions', () => {
+  it('follow the series, with a gap where it has one and nothing for a region without', async () => {
+    const own = addWorkspace(inject('dataDir'), 'Months')
+    const client = await newcomer(url, inject('dataDir'), { place: own, role: 'lead' })
+    const [{ id }] = [await makeRegion(client, own, 'basin', square(20, 30)), await makeRegion(client, own, 'lake', square(40, 30))]
+    // A tenth of a gigatonne lost each day: between the middles of two months the mass falls by the days between them.
+    const rows = Array.from({ length: 36 }, (_, i) => Date.UTC(2004, i, 15)).filter(time => time < Date.UTC(2005, 2, 1) || time > Date.UTC(2005, 8, 1))
+      .map(time => `${new Date(time).toISOString().slice(0, 10)},${(-0.1 * (time - Date.UTC(2004, 0, 1)) / 864e5).toFixed(4)},1.0`)
+    await makeVersion(client, id, `date,mass (Gt),sigma (Gt)\n${rows.join('\n')}\n`)
+    const { months, regions, maxGapDays } = await client.get('regionMonths', { params: { workspace: own.workspaceId } })
+    expect(maxGapDays).toBe(62)
+    expect([months[0], months.at(-1), months.length, regions.length, regions[0]!.id]).toEqual(['2004-01', '2006-12', 36, 1, id])
+    const { massGt } = regions[0]!
+    expect(months.filter((_, i) => massGt[i] === null)).toEqual(['2005-03', '2005-04', '2005-05', '2005-06', '2005-07', '2005-08'])
+    // June to July 2004: the middles are 30 and 31 days long months apart, 30.5 days.
+    expect(massGt[6]! - massGt[5]!).toBeCloseTo(-3.05, 9)
+    expect(massGt.reduce<number>((sum, value) => sum + (value ?? 0), 0)).toBeCloseTo(0, 9)
   })
 })

@@ -107,7 +107,7 @@ export function useBroughtOutlines({ regions, workspace, blank, changed }: Setti
     active: computed(() => rows.value.length > 0),
     /** As the map shows them: what is ticked stands out. */
     shapes: computed<MapRegion[]>(() => rows.value.map(row => ({
-      id: row.key, name: row.name, kind: row.kind, geometry: row.geometry as Outline, massTrendGtPerYear: null, selected: row.ticked,
+      id: row.key, name: row.name, geometry: row.geometry as Outline, selected: row.ticked, paint: { tone: 'ink', tint: 0.1, pattern: '', figure: '' },
     }))),
     take, nameFrom, close, store, undo,
     toggle: (key: string) => {

@@ -1,0 +1,24 @@
+import { featureCollection, intersect, multiPolygon } from '@turf/turf'
+import type { Feature } from 'geojson'
+import { cutAtAntimeridian } from '#shared/geo/cut'
+import { overlapsOf, type OutlineOverlap } from '#shared/geo/overlap'
+import { polygonsOf } from '#shared/geo/parts'
+import type { Outline, Position } from '#shared/types/domain'
+import { displayFill } from './displayShape'
+
+export interface SharedGround extends OutlineOverlap {
+  /** The common ground as the map fills it; null where it is too thin to be drawn. */
+  shape: Feature | null
+}
+
+const plane = (outline: Outline) => multiPolygon(polygonsOf(cutAtAntimeridian(outline)) as Position[][][])
+
+/** Pairs of regions that share ground: the area on the ellipsoid, and the shape on the plane of longitude and latitude. */
+export function sharedGrounds(items: readonly { id: string, geometry: Outline }[]): SharedGround[] {
+  const outlines = new Map(items.map(item => [item.id, item.geometry]))
+  return overlapsOf(items).map((pair) => {
+    const common = intersect(featureCollection([plane(outlines.get(pair.a)!), plane(outlines.get(pair.b)!)]))
+    const geometry = common && displayFill(common.geometry as Outline)
+    return { ...pair, shape: geometry && { type: 'Feature', properties: { a: pair.a, b: pair.b }, geometry } }
+  })
+}
