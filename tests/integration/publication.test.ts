@@ -55,6 +55,7 @@ describe('an edition', () => {
     ['budget.csv', 'text/csv', /^# Counterpoise.*\n# Span 2004.*\n(# Model uncertainty, not in any sigma: .*\n){3,5}row,name,mass_Gt_per_year,/],
     ['series.csv', 'text/csv', /\nmjd,date,lod_microseconds,/],
     ['regions.geojson', 'application/geo+json', /^\{"type":"FeatureCollection"/],
+    ['map.svg', 'image/svg+xml', /^<svg xmlns="http:\/\/www\.w3\.org\/2000\/svg"(?!.*(?:<script|href=))/s],
     ['run.json', 'application/json', /"resultSha256"/],
     ['report.pdf', 'application/pdf', /^%PDF-1\./],
   ])('is downloaded as %s', async (file, type, start) => {
@@ -66,7 +67,7 @@ describe('an edition', () => {
   })
 
   it('tells nothing else of the workspace', async () => {
-    const files = await Promise.all(['budget.csv', 'series.csv', 'regions.geojson', 'run.json'].map(file => visitor.call('editionFile', { params: { slug: 'ice-of-the-test', n: 1, file } })))
+    const files = await Promise.all(['budget.csv', 'series.csv', 'regions.geojson', 'map.svg', 'run.json'].map(file => visitor.call('editionFile', { params: { slug: 'ice-of-the-test', n: 1, file } })))
     const { text } = await visitor.call('editionRead', { params: { slug: 'ice-of-the-test' } })
     const page = await visitor.send('GET', '/p/ice-of-the-test')
     for (const shown of [text, page.text, ...files.map(f => f.text)]) {
