@@ -1,4 +1,8 @@
+import { withPattern } from '#shared/earth/cellPattern'
+import { contourOf } from '#shared/earth/contour'
+import { responseOf } from '#shared/earth/response'
 import type { CsvGridOptions } from '#shared/grids/csvGrid'
+import { departureSentence, monthlyDeparture } from '#shared/grids/monthlyDeparture'
 import type { RegionGridSeries } from '#shared/grids/regionSeries'
 import type { Outline, PhysicsSettings } from '#shared/types/domain'
 import { InputError } from '#shared/types/issue'
@@ -84,6 +88,15 @@ export function gridSeriesTask(context: Context, { source, regions, settings }: 
   return { ...seriesTaskOf(context.dataDir, source, regions.map(({ id, geometry }) => ({ id, geometry }))), effect: { settings, fieldsPath } }
 }
 
-export function keepGridSeries(_context: Context, _row: JobRow, { source }: GridSeriesJobInput, regions: GridSeriesResult): GridSeriesAnswer {
-  return { regions: regions.map(region => ({ ...region, steps: [...(source.unitReading ? [source.unitReading] : []), ...region.steps], issues: region.issues.slice(0, 1000) })) }
+export function keepGridSeries(context: Context, _row: JobRow, { source, regions: asked, settings }: GridSeriesJobInput, regions: GridSeriesResult): GridSeriesAnswer {
+  return {
+    regions: regions.map((region) => {
+      const { geometry } = asked.find(({ id }) => id === region.id)!
+      const departure = region.pattern && region.effect && monthlyDeparture(region.massGt, region.effect.pattern, responseOf(withPattern(contourOf(geometry), region.pattern.pattern), context.earth, settings))
+      return {
+        ...region, issues: region.issues.slice(0, 1000),
+        steps: [...(source.unitReading ? [source.unitReading] : []), ...region.steps, ...(departure ? [departureSentence(departure)] : [])],
+      }
+    }),
+  }
 }

@@ -64,7 +64,7 @@ describe('a grid', () => {
     const area = regions.find(r => r.id === version.regionId)!.outline.areaKm2
     expect(version.sigmaGt![3]).toBeCloseTo(0.02 * area / 1000, 8)
     expect(version.sharedRates).toMatchObject([{ source: 'isostatic' }])
-    expect(version.recipe.steps).toEqual(expect.arrayContaining(['Degree 1 is put in (invented series).', 'C₂₀ is not replaced.', expect.stringContaining('weighted with their area inside the outline')]))
+    expect(version.recipe.steps).toEqual(expect.arrayContaining(['Degree 1 is put in (invented series).', 'C₂₀ is not replaced.', expect.stringContaining('weighted with their area inside the outline'), expect.stringContaining('One pattern stands for all months')]))
     expect((await lead.call('originalRead', { params: { id: version.id } })).text).toBe(gridCsv({ months: 30 }))
     await lead.refused('gridSeriesAccept', 409, { params: { id: job }, body: facts })
 
