@@ -4,17 +4,7 @@ import { demo } from '../support/client'
 import { startServer } from '../support/server'
 import { makeObserved } from '../support/world'
 import { wavyOutline } from './outlines'
-import type { Figure } from './measure'
-
-async function quickest(runs: number, work: () => Promise<unknown>): Promise<number> {
-  let least = Infinity
-  for (let i = 0; i < runs; i++) {
-    const start = performance.now()
-    await work()
-    least = Math.min(least, performance.now() - start)
-  }
-  return least
-}
+import { quickest, type Figure } from './measure'
 
 /** The built server, over HTTP on the loopback. */
 export async function run(): Promise<Figure[]> {
