@@ -5,6 +5,7 @@ import { InputError } from '#shared/types/issue'
 import type { SeaLevelAnswer, SeaLevelTask } from '../workers/seaLevel'
 import { authorise } from './change'
 import type { Context } from './context'
+import { editionRow } from './editions'
 import { canonicalJson, sha256Hex } from './hash'
 import { latestOutline, regionRow } from './regions'
 import { runInputOf, runResultOf, runRow } from './runs'
@@ -44,6 +45,15 @@ async function solve(context: Context, loads: SeaLevelTask['loads'], { feedback,
 export async function seaLevelOfRun(context: Context, principal: Principal | null, id: string, question: Question) {
   const row = runRow(context, id)
   authorise(principal, 'run.read', { workspaceId: row.workspaceId })
+  return seaLevelOfRow(context, row, question)
+}
+
+/** The same for a published run, for everybody: one question only, so that each edition is solved once. */
+export async function seaLevelOfEdition(context: Context, slug: string, n: number) {
+  return seaLevelOfRow(context, runRow(context, editionRow(context, slug, n).runId), { feedback: true, stepDeg: 2 })
+}
+
+async function seaLevelOfRow(context: Context, row: ReturnType<typeof runRow>, question: Question) {
   const geometry = new Map(runInputOf(row).regions.map(r => [r.key, { geometry: r.geometry, restTo: r.restTo ?? null }]))
   const loads = runResultOf(row).regions.flatMap((region) => {
     const source = geometry.get(region.keptFrom ?? region.key)!

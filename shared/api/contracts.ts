@@ -424,6 +424,10 @@ export const contracts = {
     id: 'editionRead', method: 'GET', path: '/api/v1/editions/{slug}', action: 'public.read', summary: 'A published edition; the newest unless n is given',
     params: z.object({ slug: z.string().max(80) }), query: z.object({ n: z.coerce.number().int().min(1).optional() }), answer: editionView,
   }),
+  editionSeaLevel: contract({
+    id: 'editionSeaLevel', method: 'GET', path: '/api/v1/editions/{slug}/{n}/sea-level', action: 'public.read', summary: 'Where the sea rises and falls for the trends of an edition, feedback on, every 2°',
+    params: editionPath, answer: seaLevelAnswer,
+  }),
   editionFile: contract({
     id: 'editionFile', method: 'GET', path: '/api/v1/editions/{slug}/{n}/{file}', action: 'public.read', summary: 'Downloads of an edition',
     params: editionPath.extend({ file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'map.svg', 'run.json']) }),

@@ -252,6 +252,7 @@ const steps: Step[] = [
   { route: 'editionWithdraw', rule: 'leadOnly', make: async () => ({ params: await freshEdition(), body: { reason: 'a walk' } }) },
   { route: 'editionIndex', rule: 'open', make: () => ({}) },
   { route: 'editionRead', rule: 'open', make: () => ({ params: { slug: shared.slug } }) },
+  { route: 'editionSeaLevel', rule: 'open', make: () => ({ params: { slug: shared.slug, n: 1 } }) },
   { route: 'editionFile', rule: 'open', make: () => ({ params: { slug: shared.slug, n: 1, file: 'series.csv' } }) },
   { route: 'openapi', rule: 'open', make: () => ({}) },
   { route: 'health', rule: 'open', make: () => ({}) },

@@ -51,6 +51,16 @@ describe('an edition', () => {
     expect(text).toContain(sentence.replace(/\s+/g, ' ').slice(0, 60))
   })
 
+  it('names its map as the picture for messages, and gives everybody the map of the sea that the run has', async () => {
+    const page = await visitor.send('GET', '/p/ice-of-the-test')
+    expect(page.text).toMatch(/<meta property="og:image" content="http:\/\/[^"]+\/api\/v1\/editions\/ice-of-the-test\/1\/map\.svg">/)
+    const [open, own] = await Promise.all([
+      visitor.get('editionSeaLevel', { params: { slug: 'ice-of-the-test', n: 1 } }), lead.get('runSeaLevel', { params: { id: runId }, query: { step: 2 } }),
+    ])
+    expect(open).toEqual(own)
+    expect(open.unit).toBe('mm per year')
+  })
+
   it.each([
     ['budget.csv', 'text/csv', /^# Counterpoise.*\n# Span 2004.*\n(# Model uncertainty, not in any sigma: .*\n){3,5}row,name,mass_Gt_per_year,/],
     ['series.csv', 'text/csv', /\nmjd,date,lod_microseconds,/],
