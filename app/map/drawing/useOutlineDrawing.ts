@@ -19,6 +19,8 @@ interface Options {
   surface: Readonly<Ref<Surface | null>>
   /** Borders and coasts that vertices snap to. */
   snapTo?: () => readonly SnapIndex[]
+  /** Whether the map is in sight: what is not seen is not drawn. */
+  inSight?: () => boolean
   /** When Escape gives up an outline that holds no work. */
   onCancel?: () => void
 }
@@ -111,9 +113,8 @@ export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Opt
   const features = computed(() => draftFeatures({
     active: active.value, draft: draft.value, chosen: chosen.value, pointer: cursor.place.value ?? pointer.value, outline: outline.value, fault: fault.value,
   }))
-  watch([map, features], () => {
-    const chart = map.value
-    if (!chart?.getSource('draft-fill')) return
+  watch([map, features, () => options.inSight?.() ?? true], ([chart, , seen]) => {
+    if (!seen || !chart?.getSource('draft-fill')) return
     for (const [id, data] of Object.entries(features.value)) (chart.getSource(id) as GeoJSONSource).setData(data)
   })
   onScopeDispose(() => { active.value = false })
