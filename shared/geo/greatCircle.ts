@@ -21,6 +21,29 @@ export function arcDeg(a: Position, b: Position): number {
   return Math.atan2(cross, u[0] * v[0] + u[1] * v[1] + u[2] * v[2]) / radians
 }
 
+/**
+ * The turn of the sphere along the great circle that takes one place to another (Rodrigues 1840); null where they are one or opposite.
+ * Latitudes are taken as they stand. Longitudes of what it gives lie within ±180°.
+ */
+export function turnOf(from: Position, to: Position): ((place: Position) => Position) | null {
+  const [u, v] = [vectorOf(from), vectorOf(to)]
+  const axis: Vector = [u[1] * v[2] - u[2] * v[1], u[2] * v[0] - u[0] * v[2], u[0] * v[1] - u[1] * v[0]]
+  const sin = Math.hypot(...axis)
+  if (sin < 1e-12) return null
+  const cos = u[0] * v[0] + u[1] * v[1] + u[2] * v[2]
+  const [a, b, c] = axis.map(part => part / sin) as Vector
+  return (place) => {
+    const [x, y, z] = vectorOf(place)
+    const along = (a * x + b * y + c * z) * (1 - cos)
+    const turned: Vector = [
+      x * cos + (b * z - c * y) * sin + a * along,
+      y * cos + (c * x - a * z) * sin + b * along,
+      z * cos + (a * y - b * x) * sin + c * along,
+    ]
+    return [Math.atan2(turned[1], turned[0]) / radians, Math.atan2(turned[2], Math.hypot(turned[0], turned[1])) / radians]
+  }
+}
+
 /** The place at a part (0 to 1) of the shorter great circle between two places that are not opposite one another. */
 export function alongArc(a: Position, b: Position, part: number): Position {
   const angle = arcDeg(a, b) * radians

@@ -1,3 +1,4 @@
+import { turnOf } from '#shared/geo/greatCircle'
 import type { Position } from '#shared/types/domain'
 
 /**
@@ -60,6 +61,12 @@ export function finishRing(draft: Draft): Draft {
 /** `exact` keeps every digit of a place on a shared line. */
 export function moveVertex(draft: Draft, { ring, vertex }: VertexPlace, place: Position, exact = false): Draft {
   return withRing(draft, ring, draft.rings[ring]!.map((old, k) => k === vertex ? (exact ? place : roundPlace(place)) : old))
+}
+
+/** Turns the whole outline about the Earth so that one place comes to lie on another: shape and size stay as they are. */
+export function moveAll(draft: Draft, from: Position, to: Position): Draft {
+  const turn = turnOf(from, to)
+  return turn === null ? draft : { ...draft, rings: draft.rings.map(ring => ring.map(place => roundPlace(turn(place)))) }
 }
 
 /** Sets a new vertex on the edge that begins at `after`. */

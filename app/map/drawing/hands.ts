@@ -13,6 +13,8 @@ export interface Hands {
   chosen: ShallowRef<VertexPlace | null>
   /** Where the pointer is, for the line that runs ahead while drawing. */
   pointer: ShallowRef<Position | null>
+  /** A drag, or an arrow, moves the whole outline. */
+  moving: Ref<boolean>
   set: (next: Draft) => void
   /** Sets a vertex; one that snapped to the line that the last one snapped to follows that line. */
   add: (place: Position, snap: Snap | null) => void

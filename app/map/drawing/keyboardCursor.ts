@@ -1,6 +1,6 @@
 import { onScopeDispose, ref, shallowRef, watch, type Ref, type ShallowRef } from 'vue'
 import type { Position } from '#shared/types/domain'
-import { insertVertex, moveVertex } from './draft'
+import { insertVertex, moveAll, moveVertex } from './draft'
 import { handleAt } from './handles'
 import type { Hands } from './hands'
 import type { Surface } from './surface'
@@ -56,6 +56,14 @@ export function keyboardCursor(surface: Readonly<Ref<Surface | null>>, hands: Ha
     follow()
   }
 
+  /** The whole outline by a step of the screen, taken by its first vertex in sight. */
+  const haul = (sheet: Surface, [dx, dy]: [number, number], pixels: number): void => {
+    const grip = hands.draft.value.rings.flat().find(vertex => sheet.toScreen(vertex))
+    const at = grip && sheet.toScreen(grip)
+    const to = at && sheet.toPlace({ x: at.x + dx * pixels, y: at.y + dy * pixels })
+    if (to) hands.set(moveAll(hands.draft.value, grip, to))
+  }
+
   const setHere = (sheet: Surface): void => {
     if (!place.value || !onScreen.value) return hands.finish()
     const ring = hands.draft.value.rings.at(-1) ?? []
@@ -94,7 +102,8 @@ export function keyboardCursor(surface: Readonly<Ref<Surface | null>>, hands: Ha
     if (!sheet || !hands.active.value) return
     const command = event.ctrlKey || event.metaKey
     const key = event.key.toLowerCase()
-    if (steps[event.key] && !command) go(sheet, steps[event.key]!, event.shiftKey ? stepPixels.shift : event.altKey ? stepPixels.alt : stepPixels.plain)
+    if (steps[event.key] && !command && hands.moving.value) haul(sheet, steps[event.key]!, event.shiftKey ? stepPixels.shift : event.altKey ? stepPixels.alt : stepPixels.plain)
+    else if (steps[event.key] && !command) go(sheet, steps[event.key]!, event.shiftKey ? stepPixels.shift : event.altKey ? stepPixels.alt : stepPixels.plain)
     else if (event.key === 'Enter') enter(sheet)
     else if (event.key === 'Escape') {
       holding.value = false

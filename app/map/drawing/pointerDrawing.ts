@@ -1,8 +1,9 @@
 import { onScopeDispose, watch, type Ref } from 'vue'
-import { insertVertex, moveVertex, type Draft, type VertexPlace } from './draft'
+import { insertVertex, moveAll, moveVertex, type Draft, type VertexPlace } from './draft'
 import { handleAt } from './handles'
 import type { Hands } from './hands'
 import type { KeyboardCursor } from './keyboardCursor'
+import type { Position } from '#shared/types/domain'
 import type { Point, PointerAt, Surface } from './surface'
 
 /** How near to a handle counts as on it, pixels. */
@@ -16,6 +17,8 @@ interface Drag { at: VertexPlace, base: Draft, inserted: boolean, moved: boolean
 /** Mouse and touch on the map or another surface: set, drag, pull out and choose vertices. Gestures that start beside a handle stay the surface's own. */
 export function pointerDrawing(surface: Readonly<Ref<Surface | null>>, hands: Hands, cursor: KeyboardCursor): void {
   let drag: Drag | null = null
+  /** The whole outline under way, and the place it was taken by. */
+  let haul: { base: Draft, from: Position } | null = null
   /** A click that ends a drag, or the second of a double click, sets nothing. */
   let swallow = false
   let lastClick = { time: 0, x: 0, y: 0 }
@@ -25,6 +28,12 @@ export function pointerDrawing(surface: Readonly<Ref<Surface | null>>, hands: Ha
     cursor.hide()
     swallow = false
     if (hands.state.value !== 'editing') return
+    const from = hands.moving.value ? sheet.toPlace(point) : null
+    if (from) {
+      keep()
+      haul = { base: hands.draft.value, from }
+      return
+    }
     const handle = handleAt(sheet, hands.draft.value, point, touch ? touchReach : mouseReach)
     if (!handle) return
     keep()
@@ -40,6 +49,10 @@ export function pointerDrawing(surface: Readonly<Ref<Surface | null>>, hands: Ha
   const move = (sheet: Surface, { point, free }: PointerAt): void => {
     if (!hands.active.value) return
     const place = sheet.toPlace(point)
+    if (haul) {
+      if (place) hands.underway.value = moveAll(haul.base, haul.from, place)
+      return
+    }
     if (drag) {
       if (!drag.moved && Math.hypot(point.x - drag.from.x, point.y - drag.from.y) < 3) return
       drag.moved = true
@@ -54,11 +67,17 @@ export function pointerDrawing(surface: Readonly<Ref<Surface | null>>, hands: Ha
 
   const pointerShape = (sheet: Surface, point: Point): string => {
     if (hands.state.value === 'drawing') return 'crosshair'
+    if (hands.moving.value) return 'grab'
     const handle = handleAt(sheet, hands.draft.value, point, mouseReach)
     return handle ? (handle.kind === 'vertex' ? 'move' : 'copy') : ''
   }
 
   const release = (): void => {
+    if (haul) {
+      swallow = true
+      if (hands.underway.value) hands.set(hands.underway.value)
+      haul = null
+    }
     if (!drag) return
     swallow = true
     if (drag.moved && hands.underway.value) hands.set(hands.underway.value)
@@ -101,7 +120,7 @@ export function pointerDrawing(surface: Readonly<Ref<Surface | null>>, hands: Ha
   watch(surface, (sheet, before) => {
     deafen?.()
     deafen = null
-    drag = null
+    drag = haul = null
     before?.setPointer('')
     if (!sheet) return
     deafen = sheet.listen({

@@ -36,6 +36,7 @@ export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Opt
   /** What an operation would make of the draft: shown, and taken by going on. */
   const preview = shallowRef<Draft | null>(null)
   const snapping = ref(true)
+  const moving = ref(false)
   /** What the pointer or the cursor has snapped to, and what the last vertex did. */
   const snapped = shallowRef<Snap | null>(null)
   let lastSnap: Snap | null = null
@@ -62,7 +63,10 @@ export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Opt
     snapped.value = found
     return found
   }
-  const clear = (): void => { underway.value = preview.value = chosen.value = pointer.value = snapped.value = lastSnap = null }
+  const clear = (): void => {
+    moving.value = false
+    underway.value = preview.value = chosen.value = pointer.value = snapped.value = lastSnap = null
+  }
   const open = (initial: Draft): void => {
     history.value = historyOf(initial)
     clear()
@@ -84,6 +88,7 @@ export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Opt
   /** One thing at a time, each of which can be undone: a drag, a choice, the ring under way. Gives the whole up only while nothing is done. */
   const escape = (): void => {
     if (underway.value) underway.value = null
+    else if (moving.value) moving.value = false
     else if (preview.value) preview.value = null
     else if (chosen.value) chosen.value = null
     else if (draft.value.open && (draft.value.rings.at(-1)?.length ?? 0) > 0) set(beginRing({ ...draft.value, rings: draft.value.rings.slice(0, -1) }))
@@ -106,7 +111,7 @@ export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Opt
     history.value = redo(history.value)
   }
 
-  const hands: Hands = { active, draft, state, underway, chosen, pointer, set, add, snapAt: lookForSnap, finish, escape, remove, back, forth }
+  const hands: Hands = { active, draft, state, underway, chosen, pointer, moving, set, add, snapAt: lookForSnap, finish, escape, remove, back, forth }
   const cursor = keyboardCursor(options.surface, hands)
   pointerDrawing(options.surface, hands, cursor)
 
@@ -121,7 +126,7 @@ export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Opt
 
   return {
     state, draft, outline, fault, chosen, features, cursor: cursor.onScreen, cursorPlace: cursor.place, holding: cursor.holding,
-    snapping,
+    snapping, moving,
     /** What the pointer or the cursor is on, where it is and in words; null where nothing is near. */
     snap: computed(() => active.value && snapped.value ? { place: snapped.value.place, words: snapWords(snapped.value) } : null),
     /** Shows what an operation would make; `accept` takes it as one step that can be undone, null puts it away. */
@@ -141,7 +146,10 @@ export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Opt
     /** Takes up a draft where it was left. */
     resume: (left: Draft) => open(left),
     /** Begins another part, or a hole in what is there. */
-    addRing: () => set(beginRing(finishRing(draft.value))),
+    addRing: () => {
+      moving.value = false
+      set(beginRing(finishRing(draft.value)))
+    },
     finish, remove, undo: back, redo: forth, close
   }
 }

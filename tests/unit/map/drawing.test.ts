@@ -1,6 +1,7 @@
+import { geoDistance } from 'd3-geo'
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { addVertex, beginRing, dropLast, emptyDraft, finishRing, insertVertex, moveVertex, removeVertex, type Draft } from '../../../app/map/drawing/draft'
+import { addVertex, beginRing, dropLast, emptyDraft, finishRing, insertVertex, moveAll, moveVertex, removeVertex, type Draft } from '../../../app/map/drawing/draft'
 import { draftOutline, edgeMiddles, faultOf } from '../../../app/map/drawing/draftShape'
 import { historyOf, redo, step, undo } from '../../../app/map/drawing/history'
 import { draftOf } from '../../../app/map/drawing/recover'
@@ -29,6 +30,15 @@ describe('a draft', () => {
     expect(four.rings[0]).toEqual([[0, 0], [10, 0], [5, 8], [1, 5]])
     expect(removeVertex(four, { ring: 0, vertex: 0 }).rings[0]).toEqual([[10, 0], [5, 8], [1, 5]])
     expect(removeVertex(draft, { ring: 0, vertex: 0 }).rings).toEqual([])
+  })
+
+  it('moves as a whole: distances stay, the place it was taken by comes to lie under the hand', () => {
+    const draft = draw([0, 0], [10, 0], [5, 8])
+    const moved = moveAll(draft, [5, 3], [175, 70]).rings[0]!
+    const gap = (a: Position, b: Position) => geoDistance(a, b) * 180 / Math.PI
+    draft.rings[0]!.forEach((place, k) => expect(gap(moved[k]!, moved[(k + 1) % 3]!)).toBeCloseTo(gap(place, draft.rings[0]![(k + 1) % 3]!), 4))
+    draft.rings[0]!.forEach((place, k) => expect(gap(moved[k]!, [175, 70])).toBeCloseTo(gap(place, [5, 3]), 4))
+    expect(moveAll(draft, [5, 3], [5, 3])).toBe(draft)
   })
 
   it('makes a hole of a ring inside another, and a part of one outside', () => {
