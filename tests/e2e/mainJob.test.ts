@@ -157,7 +157,7 @@ describe('people', () => {
     await signInByForm(someone.page, mailbox)
     for (const name of links) await someone.page.getByRole('navigation', { name: 'Main' }).getByRole('link', { name, exact: true }).waitFor()
     await someone.page.getByRole('button', { name: 'Sign out' }).click()
-    await someone.page.getByRole('link', { name: 'Sign in' }).waitFor()
+    await someone.page.getByRole('link', { name: 'Sign in' }).first().waitFor()
     await open(someone.page, '/regions')
     expect(new URL(someone.page.url()).pathname).toBe('/sign-in')
     expect(someone.faults).toEqual([])
