@@ -22,7 +22,7 @@ export async function createMap(container: HTMLElement, palette: Palette, projec
     attributionControl: false,
     fadeDuration: 0,
     locale: { 'Map.Title': 'Map of the regions' },
-    canvasContextAttributes: { antialias: true }
+    canvasContextAttributes: { antialias: !drawnByProcessor() }
   })
   map.touchZoomRotate.disableRotation()
   map.keyboard.disableRotation()
@@ -41,4 +41,13 @@ export function repaint(map: Chart, palette: Palette): void {
       map.setPaintProperty(layer.id, name as never, value as never)
     }
   }
+}
+
+/** Whether WebGL has no graphics processor here: smooth edges then cost a multiple of each frame. */
+function drawnByProcessor(): boolean {
+  const gl = document.createElement('canvas').getContext('webgl2')
+  const named = gl?.getExtension('WEBGL_debug_renderer_info')
+  const renderer = gl && named ? String(gl.getParameter(named.UNMASKED_RENDERER_WEBGL)) : ''
+  gl?.getExtension('WEBGL_lose_context')?.loseContext()
+  return /swiftshader|llvmpipe|softpipe|software|basic render/i.test(renderer)
 }
