@@ -72,7 +72,7 @@ export default defineNuxtConfig({
   vite: {
     build: { chunkSizeWarningLimit: 1500 },
     // Loaded late by pages; named here so that the development server does not reload on first use.
-    optimizeDeps: { include: ['mathjs', 'read-excel-file/universal', 'papaparse', 'd3-scale', 'shapefile', 'proj4', '@tmcw/togeojson', '@xmldom/xmldom', 'fflate', 'sql.js'] },
+    optimizeDeps: { include: ['maplibre-gl', 'mathjs', 'read-excel-file/universal', 'papaparse', 'd3-scale', 'shapefile', 'proj4', '@tmcw/togeojson', '@xmldom/xmldom', 'fflate', 'sql.js'] },
   },
   hooks: {
     'nitro:init'(nitro) {

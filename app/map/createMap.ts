@@ -1,4 +1,5 @@
 import { Map as Chart, setWorkerUrl } from 'maplibre-gl'
+import 'maplibre-gl/dist/maplibre-gl.css'
 import workerUrl from 'maplibre-gl/dist/maplibre-gl-worker.mjs?url'
 import type { Palette } from '#shared/design/tokens'
 import { mapImages } from './colouring/images'
