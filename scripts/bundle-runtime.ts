@@ -44,6 +44,8 @@ export async function bundleRuntime(nitro: NitroBuild) {
     outExtension: { '.js': '.mjs' },
     bundle: true,
     alias: { '#shared': join(rootDir, 'shared') },
+    // A native addon: the server imports it too (services/pictures.ts), so the build lays it where workers find it.
+    external: ['@resvg/resvg-js'],
     platform: 'node',
     format: 'esm',
     target: 'node20',

@@ -5,6 +5,7 @@ export const runFiles = [
   { file: 'series.csv', name: 'Monthly series', type: 'CSV', text: 'ΔLOD, χ₁, χ₂ and each region’s mass by month' },
   { file: 'regions.geojson', name: 'Outlines', type: 'GeoJSON', text: 'the regions as they were run, with their rates' },
   { file: 'map.svg', name: 'Map', type: 'SVG', text: 'the regions on an equal-area map with polar insets, to be set in print' },
+  { file: 'map.png', name: 'Map', type: 'PNG', text: 'the same as a picture of 1200 × 630 px, for messages and slides' },
   { file: 'run.json', name: 'Run', type: 'JSON', text: 'inputs, settings, result and hashes: enough to compute it again' },
 ] as const
 

@@ -6,15 +6,16 @@ import type { BudgetRow, Comparison, DerivedRates, RunRegionResult, RunResult } 
 import { schema } from '../database/client'
 import { nameOfUser } from './change'
 import type { Context } from './context'
-import { mapFile } from './report/figures'
+import { runPicture } from './pictures'
+import { mapFile, runMap } from './report/mapPicture'
 import { reportPdf } from './report/reportPdf'
 import { runInputOf, runResultOf, sourcesOf, type RunRow } from './runs'
 
-export type ExportFile = 'report.pdf' | 'budget.csv' | 'series.csv' | 'regions.geojson' | 'map.svg' | 'run.json'
+export type ExportFile = 'report.pdf' | 'budget.csv' | 'series.csv' | 'regions.geojson' | 'map.svg' | 'map.png' | 'run.json'
 
 export const exportTypes: Record<ExportFile, string> = {
   'report.pdf': 'application/pdf', 'budget.csv': 'text/csv; charset=utf-8', 'series.csv': 'text/csv; charset=utf-8',
-  'regions.geojson': 'application/geo+json', 'map.svg': 'image/svg+xml', 'run.json': 'application/json',
+  'regions.geojson': 'application/geo+json', 'map.svg': 'image/svg+xml', 'map.png': 'image/png', 'run.json': 'application/json',
 }
 
 interface ExportSource { run: RunRow, comparison: Comparison | null, observed: { name: string, source: string, originalSha256: string } | null }
@@ -27,7 +28,8 @@ export async function exportRun(context: Context, file: ExportFile, source: Expo
     case 'budget.csv': return budgetCsv(result)
     case 'series.csv': return seriesCsv(result)
     case 'regions.geojson': return regionsGeojson(run, result)
-    case 'map.svg': return mapFile({ result, sources: runInputOf(run).regions })
+    case 'map.svg': return mapFile(runMap({ result, sources: runInputOf(run).regions }))
+    case 'map.png': return runPicture(context, run)
     case 'run.json': return JSON.stringify({
       run: { n: run.n, name: run.name, engine: run.engine, node: run.node, createdAt: run.createdAt, inputSha256: run.inputSha256, resultSha256: run.resultSha256 },
       hashing: 'SHA-256 over canonical JSON (RFC 8785) of “input” as it stands here, and of “result”',

@@ -377,8 +377,8 @@ export const contracts = {
     query: attributionQuery, answer: attributionAnswer,
   }),
   runFile: contract({
-    id: 'runFile', method: 'GET', path: '/api/v1/runs/{id}/files/{file}', action: 'report.export', summary: 'Report and data of a run: report.pdf, budget.csv, series.csv, regions.geojson, map.svg, run.json',
-    params: z.object({ id: ulid, file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'map.svg', 'run.json']) }),
+    id: 'runFile', method: 'GET', path: '/api/v1/runs/{id}/files/{file}', action: 'report.export', summary: 'Report and data of a run: report.pdf, budget.csv, series.csv, regions.geojson, map.svg, map.png, run.json',
+    params: z.object({ id: ulid, file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'map.svg', 'map.png', 'run.json']) }),
     query: comparedBy.extend({ observed: ulid.optional() }), answer: bytes, answerType: 'application/octet-stream',
   }),
 
@@ -430,7 +430,7 @@ export const contracts = {
   }),
   editionFile: contract({
     id: 'editionFile', method: 'GET', path: '/api/v1/editions/{slug}/{n}/{file}', action: 'public.read', summary: 'Downloads of an edition',
-    params: editionPath.extend({ file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'map.svg', 'run.json']) }),
+    params: editionPath.extend({ file: z.enum(['report.pdf', 'budget.csv', 'series.csv', 'regions.geojson', 'map.svg', 'map.png', 'run.json']) }),
     answer: bytes, answerType: 'application/octet-stream',
   }),
 

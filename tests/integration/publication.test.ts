@@ -1,3 +1,4 @@
+import { PNG } from 'pngjs'
 import { beforeAll, describe, expect, inject, it } from 'vitest'
 import { Client } from '../support/client'
 import { addWorkspace, makeObserved, makeRegion, makeScenario, makeVersion, monthlyCsv, newcomer, orientationCsv, runScenario, square, withDatabase, type Place } from '../support/world'
@@ -53,7 +54,10 @@ describe('an edition', () => {
 
   it('names its map as the picture for messages, and gives everybody the map of the sea that the run has', async () => {
     const page = await visitor.send('GET', '/p/ice-of-the-test')
-    expect(page.text).toMatch(/<meta property="og:image" content="http:\/\/[^"]+\/api\/v1\/editions\/ice-of-the-test\/1\/map\.svg">/)
+    const meta = (name: string) => new RegExp(`<meta (?:property|name)="${name}" content="([^"]*)">`).exec(page.text)?.[1]
+    expect(meta('og:image')).toMatch(/^http:\/\/[^"]+\/api\/v1\/editions\/ice-of-the-test\/1\/map\.png$/)
+    expect(['og:image:type', 'og:image:width', 'og:image:height', 'twitter:card', 'twitter:image'].map(meta)).toEqual(['image/png', '1200', '630', 'summary_large_image', meta('og:image')])
+    expect(meta('og:image:alt')).toMatch(/^Map of the regions: /)
     const [open, own] = await Promise.all([
       visitor.get('editionSeaLevel', { params: { slug: 'ice-of-the-test', n: 1 } }), lead.get('runSeaLevel', { params: { id: runId }, query: { step: 2 } }),
     ])
@@ -74,6 +78,19 @@ describe('an edition', () => {
     expect(answer.headers.get('content-type')).toContain(type)
     expect(answer.headers.get('content-disposition')).toContain(`ice-of-the-test-1-${file}`)
     expect(answer.text).toMatch(start)
+  })
+
+  it('has its picture as PNG, drawn once and for good', async () => {
+    const path = '/api/v1/editions/ice-of-the-test/1/map.png'
+    const [first, again] = await Promise.all([fetch(`${url}${path}`), fetch(`${url}${path}`)])
+    expect(first.headers.get('content-type')).toBe('image/png')
+    const bytes = Buffer.from(await first.arrayBuffer())
+    const { width, height, data } = PNG.sync.read(bytes)
+    expect([width, height]).toEqual([1200, 630])
+    expect(new Set(data).size).toBeGreaterThan(50)
+    expect(Buffer.from(await again.arrayBuffer()).equals(bytes)).toBe(true)
+    const own = await lead.call('runFile', { params: { id: runId, file: 'map.png' } })
+    expect([own.status, own.headers.get('content-type')]).toEqual([200, 'image/png'])
   })
 
   it('tells nothing else of the workspace', async () => {

@@ -5,7 +5,8 @@ import { cautions } from '#shared/text/cautions'
 import { findingSentence, remainderSentences } from '#shared/text/finding'
 import { settingsLine } from '#shared/text/method'
 import { reportBudget } from './budget'
-import { reportBeam, reportChart, reportDrift, reportMap } from './figures'
+import { reportBeam, reportChart, reportDrift } from './figures'
+import { drawMap, runMap } from './mapPicture'
 import { derivedBlocks, modelUncertaintyBlocks } from './physics'
 import { cautionBlocks, comparisonBlocks, methodBlocks, overlapBlocks, recordBlocks, runningFoot, runningHead, sourceBlocks } from './sections'
 import { caution, figure, page, paragraph, sectionHead, size, together } from './style'
@@ -21,7 +22,7 @@ export function reportDocument(data: ReportData): Block {
     { text: finding, fontSize: size.head, bold: true, lineHeight: 1.15, margin: [0, 10, 0, 8] },
     paragraph(`${workspaceName}. Scenario “${scenarioName}”, run ${runNumber}: ${settingsLine(result.settings)}. Calculated, not observed.${invented ? ' Invented data.' : ''}`, { color: print.soft }),
     ...(comparison ? remainderSentences(comparison).map(text => paragraph(text)) : []),
-    together(sectionHead('Regions', `mass change ${span}`), figure(reportMap(data))),
+    together(sectionHead('Regions', `mass change ${span}`), figure(drawMap(runMap(data)))),
     caution(cautions.core),
     caution(cautions.legal),
 

@@ -1,14 +1,9 @@
-import topology from 'world-atlas/land-50m.json'
-import { print } from '#shared/design/tokens'
 import { beamFigure } from '#shared/figures/beam/beamFigure'
 import { beamData } from '#shared/figures/beam/data'
 import { driftData } from '#shared/figures/drift/data'
 import { driftFigure } from '#shared/figures/drift/driftFigure'
-import { landOf } from '#shared/figures/map/land'
-import { mapFigure } from '#shared/figures/map/mapFigure'
 import { comparisonFigure, totalSeriesData } from '#shared/figures/series/comparisonFigure'
 import { timeSeriesFigure } from '#shared/figures/series/timeSeriesFigure'
-import { element } from '#shared/figures/svg'
 import type { ComparedQuantity } from '#shared/figures/series/comparisonFigure'
 import type { ReportData } from './types'
 
@@ -16,20 +11,6 @@ import type { ReportData } from './types'
 const drawn = 700
 
 const options = (id: string, width = drawn) => ({ width, theme: 'print' as const, id })
-
-export function reportMap({ result, sources }: Pick<ReportData, 'result' | 'sources'>): string {
-  const masses = new Map(result.regions.map(region => [region.key, region.scale === 0 ? null : region.massGtPerYear?.value ?? null]))
-  return mapFigure({
-    land: landOf(topology),
-    regions: sources.map(({ key, name, geometry }) => ({ name, geometry, massGtPerYear: masses.get(key) ?? null })),
-    driftDegEast: result.total.directionDegEast?.value ?? null,
-  }, options('map')).svg
-}
-
-/** The same map as a file of its own: on paper, so that it reads wherever it is put. */
-export function mapFile(data: Pick<ReportData, 'result' | 'sources'>): string {
-  return reportMap(data).replace('</desc>', `</desc>${element('rect', { width: '100%', height: '100%', fill: print.paper })}`)
-}
 
 export function reportBeam({ result }: ReportData): string {
   return beamFigure(beamData(result), options('beam')).svg
