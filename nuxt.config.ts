@@ -1,5 +1,7 @@
 import { addTemplate } from 'nuxt/kit'
 import { bundleRuntime } from './scripts/bundle-runtime'
+import { callsModule } from './shared/api/calls'
+import { contracts } from './shared/api/contracts'
 import { cssVariables } from './shared/design/tokens'
 
 /** The one token file as a style sheet. */
@@ -7,10 +9,15 @@ function designTokens() {
   addTemplate({ filename: 'tokens.css', getContents: cssVariables, write: true })
 }
 
+/** The contracts list as pages call by it, without its schemas. */
+function callList() {
+  addTemplate({ filename: 'calls.ts', getContents: () => callsModule(contracts), write: true })
+}
+
 const browserTests = ['../tests/unit/app', '../tests/unit/map', '../tests/e2e']
 
 export default defineNuxtConfig({
-  modules: ['@nuxtjs/tailwindcss', '@pinia/nuxt', 'nuxt-auth-utils', '@nuxt/eslint', designTokens],
+  modules: ['@nuxtjs/tailwindcss', '@pinia/nuxt', 'nuxt-auth-utils', '@nuxt/eslint', designTokens, callList],
   devtools: { enabled: false },
   telemetry: false,
   compatibilityDate: '2026-06-01',
@@ -35,8 +42,6 @@ export default defineNuxtConfig({
     head: {
       htmlAttrs: { lang: 'en' },
       titleTemplate: '%s · Counterpoise',
-      // Schemas may not compile themselves on a page: the policy forbids it, and the attempt alone is reported.
-      script: [{ innerHTML: 'globalThis.__zod_globalConfig={jitless:true}' }],
       link: [{ rel: 'icon', type: 'image/svg+xml', href: '/icon.svg' }],
       meta: [{ name: 'viewport', content: 'width=device-width, initial-scale=1' }],
     },
@@ -55,7 +60,7 @@ export default defineNuxtConfig({
     typescript: { tsConfig: { include: ['../tests/**/*', '../scripts/**/*.ts'], exclude: browserTests, compilerOptions: { allowImportingTsExtensions: true } } },
     preset: 'node-server',
     esbuild: { options: { target: 'node20' } },
-    compressPublicAssets: { gzip: true, brotli: false },
+    compressPublicAssets: { gzip: true, brotli: true },
     routeRules: {
       '/**': {
         headers: {
@@ -75,6 +80,10 @@ export default defineNuxtConfig({
     optimizeDeps: { include: ['maplibre-gl', 'mathjs', 'read-excel-file/universal', 'papaparse', 'd3-scale', 'shapefile', 'proj4', '@tmcw/togeojson', '@xmldom/xmldom', 'fflate', 'sql.js'] },
   },
   hooks: {
+    // What a page might ask for later is not fetched ahead: a visitor of one page would pay for the map.
+    'build:manifest'(manifest) {
+      for (const file of Object.values(manifest)) file.dynamicImports = []
+    },
     'nitro:init'(nitro) {
       // Migrations, workers, fonts: what the server reads from disk, laid beside it.
       nitro.hooks.hook(nitro.options.dev ? 'dev:reload' : 'compiled', () => bundleRuntime(nitro))

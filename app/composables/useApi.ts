@@ -1,5 +1,6 @@
-import { contracts, type ContractId } from '#shared/api/contracts'
-import type { AnswerOf, BodyOf, Contract, ParamsOf, QueryOf } from '#shared/api/contract'
+import { calls } from '#build/calls'
+import type { contracts, ContractId } from '#shared/api/contracts'
+import type { AnswerOf, BodyOf, ParamsOf, QueryOf } from '#shared/api/contract'
 import type { Issue } from '#shared/types/issue'
 
 /** A refusal by the server, in the words that it gave. */
@@ -33,18 +34,18 @@ export function apiPath(path: string, params: Record<string, unknown> = {}): str
 export function useApi() {
   const fetcher: (path: string, options: object) => Promise<unknown> = import.meta.server ? useRequestFetch() as typeof $fetch : $fetch
   return async function api<K extends ContractId>(id: K, options: CallOptions<(typeof contracts)[K]> = {} as never): Promise<AnswerOf<(typeof contracts)[K]>> {
-    const contract = contracts[id] as Contract
+    const call = calls[id]
     const { params, query, body, file, fileName, signal } = options as { params?: Record<string, unknown>, query?: Record<string, unknown>, body?: unknown, file?: Blob, fileName?: string, signal?: AbortSignal }
     let sent = body
-    if (contract.bodyType === 'multipart' && file) {
+    if (call.bodyType === 'multipart' && file) {
       const form = new FormData()
       form.append('options', JSON.stringify(body ?? {}))
       form.append('file', file, fileName ?? (file as File).name)
       sent = form
     }
     try {
-      return await fetcher(apiPath(contract.path, params), {
-        method: contract.method, query, body: sent, signal, retry: 0, responseType: 'json',
+      return await fetcher(apiPath(call.path, params), {
+        method: call.method, query, body: sent, signal, retry: 0, responseType: 'json',
       }) as AnswerOf<(typeof contracts)[K]>
     }
     catch (error) {

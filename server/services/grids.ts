@@ -1,7 +1,7 @@
 import { and, desc, eq, isNull } from 'drizzle-orm'
 import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
-import { gridLimits } from '#shared/api/gridSchemas'
+import { gridLimits } from '#shared/grids/limits'
 import type { CsvGridOptions } from '#shared/grids/csvGrid'
 import { monthMap } from '#shared/grids/monthMap'
 import { can, type Principal } from '#shared/permissions'
