@@ -19,7 +19,7 @@ export interface BandRow { name: string, observed: string, model: string, residu
 export function bandRows({ rms, varianceExplained, bands }: ComparisonStatistics): BandRow[] {
   const size = (variance: number) => formatSignificant(Math.sqrt(Math.max(0, variance)), 2)
   return [
-    { name: 'all, trend in', observed: formatSignificant(rms.observed, 2), model: formatSignificant(rms.model, 2), residual: formatSignificant(rms.residual, 2), explained: share(varianceExplained), coherence: '', note: null },
+    { name: 'all, trend left in', observed: formatSignificant(rms.observed, 2), model: formatSignificant(rms.model, 2), residual: formatSignificant(rms.residual, 2), explained: share(varianceExplained), coherence: '', note: null },
     ...bandNames.flatMap((name): BandRow[] => {
       const band = bands.find(entry => entry.band === name)
       if (!band) return []

@@ -3,7 +3,7 @@ import type { AsyncDataOptions } from '#app'
 interface Refusal { code: string, issues: unknown[] }
 
 /**
- * Data that a page stands on, fetched on the server too. What does not exist becomes the page “not found”; any other failure
+ * Data that a page stands on, fetched on the server too. What does not exist, or is not for this role, becomes the page that says so; any other failure
  * is left to the page, with its words and its status.
  */
 export async function usePageData<T>(key: string, load: () => Promise<T>, options: AsyncDataOptions<T> = {}) {
@@ -18,6 +18,7 @@ export async function usePageData<T>(key: string, load: () => Promise<T>, option
     }
   }, options as AsyncDataOptions<T, T>)
   const { data, error, status, refresh } = await asked
-  if (error.value?.statusCode === 404) throw createError({ statusCode: 404, fatal: true })
+  const refused = error.value?.statusCode
+  if (refused === 404 || refused === 403) throw createError({ statusCode: refused, fatal: true })
   return { data, error, status, refresh: () => refresh() }
 }

@@ -69,3 +69,17 @@ export function alignedOnDecimal(texts: readonly string[]): string[] {
     return text + (own === 0 ? '\u2008' : '') + '\u2007'.repeat(most - own)
   })
 }
+
+/** Errors such as “± 15” and “± 0.36 %” made equally wide on both sides of the decimal sign, so that the values before them stand below one another. */
+export function alignedSigmas(texts: readonly string[]): string[] {
+  const parts = texts.map(text => /^(±\s?<?\s?)(\d+)(?:\.(\d+))?(.*)$/.exec(text))
+  const most = (length: (part: RegExpExecArray) => number) => Math.max(0, ...parts.map(part => part ? length(part) : 0))
+  const ahead = (part: RegExpExecArray) => part[2]!.length + (part[1]!.includes('<') ? 1 : 0)
+  const [before, after] = [most(ahead), most(part => part[3]?.length ?? 0)]
+  return texts.map((text, i) => {
+    const part = parts[i]
+    if (!part) return text
+    const [, sign, integer, decimals = '', unit] = part
+    return '\u2007'.repeat(before - ahead(part)) + sign + integer + (decimals ? `.${decimals}` : after ? '\u2008' : '') + '\u2007'.repeat(after - decimals.length) + unit
+  })
+}

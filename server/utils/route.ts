@@ -11,6 +11,7 @@ import { principalOfSession } from '../services/sessions'
 import { principalOfToken } from '../services/tokens'
 import { readJson, readMultipart, type Upload } from './body'
 import { useContext } from './context'
+import { plainFault } from './plainFaults'
 import { Problem, problemBody } from './problem'
 import type { Context } from '../services/context'
 
@@ -101,7 +102,7 @@ export function sendProblem(event: H3Event, error: unknown) {
 
 function parse(schemaOf: ZodType | undefined, value: unknown, status: 404 | 422): unknown {
   if (!schemaOf) return undefined
-  const parsed = schemaOf.safeParse(value ?? {})
+  const parsed = schemaOf.safeParse(value ?? {}, { error: plainFault })
   if (parsed.success) return parsed.data
   if (status === 404) throw new Problem(404, 'not-found', 'There is no such thing here.')
   const issues: Issue[] = parsed.error.issues.flatMap(i => i.code === 'unrecognized_keys'

@@ -2,6 +2,7 @@ import { calendarFromMjd } from '../earth/time/epochs.ts'
 import { fitTrend } from '../earth/time/trend.ts'
 import { trendNoise } from '../earth/time/trendNoise.ts'
 import type { TrendNoiseReport } from '../earth/time/trendNoise.ts'
+import { formatNumber } from '../format/numbers.ts'
 import { bestLag, correlationOf } from './correlation.ts'
 import type { Correlation, Lag } from './correlation.ts'
 import { bandCoherence, bandVariance, coherenceOf, crossSpectrum, periodogramOf } from './spectra.ts'
@@ -200,7 +201,7 @@ function varianceOf(x: readonly number[]): number {
 }
 
 function sentencesOf({ correlation, lagMonths, bands: list, months, missing, bridged }: Omit<ComparisonStatistics, 'sentences'>): string[] {
-  const percent = (v: number): string => `${v < 0 ? '\u2212' : ''}${Math.round(Math.abs(v) * 100)} %`
+  const percent = (v: number): string => `${formatNumber(v * 100)} %`
   const explained = list.filter(b => b.varianceExplained !== null)
   return [
     ...(explained.length > 0 ? [`Variance explained: ${explained.map(b => `${b.band} ${percent(b.varianceExplained!)}`).join(', ')}.`] : []),

@@ -27,7 +27,7 @@ function leastAngle({ pole, day, all }: GroupPair): number {
 
 /** One pair in words; null where pole and day each tell it apart, or where only one of them is observed and does. */
 function pairSentence({ pole, day, all }: GroupPair, a: string, b: string): string | null {
-  const how = ({ foldedDeg, separation }: PairAngle): string => foldedDeg < LEAST_ANGLE_DEG ? `${formatNumber(foldedDeg, 1)}°` : `${formatNumber(foldedDeg)}° apart, but only ${formatNumber(separation, 1)} σ`
+  const how = ({ foldedDeg, separation }: PairAngle): string => foldedDeg < LEAST_ANGLE_DEG ? `${formatNumber(foldedDeg, 1)}°` : `${formatNumber(foldedDeg)}° apart, but ${separation < 0.05 ? 'less than 0.1' : `only ${formatNumber(separation, 1)}`} σ`
   if (!all.told) return `Nothing observed here can tell ${a} from ${b} (${how(all)}).`
   if (pole && !pole.told && day) return `The pole cannot tell ${a} from ${b} (${how(pole)}); the day can.`
   // The day alone has one number at a time: groups of one shape differ in it by their size alone, which the pole then decides.
@@ -47,6 +47,6 @@ function weakest(spectra: readonly SetSpectrum[], groups: Identifiability['group
     .filter(({ weight }) => Math.abs(weight) >= 0.25)
     .sort((x, y) => Math.abs(y.weight) - Math.abs(x.weight))
   const sign = Math.sign(parts[0]?.weight ?? 1)
-  const text = parts.map(({ weight, name }, i) => `${weight * sign < 0 ? '\u2212' : i > 0 ? '+' : ''}${formatNumber(Math.abs(weight), 2)} ${name}`).join(' ')
+  const text = parts.map(({ weight, name }, i) => `${weight * sign < 0 ? '\u2212 ' : i > 0 ? '+ ' : ''}${formatNumber(Math.abs(weight), 2)} × ${name}`).join(' ')
   return [...count, `The combination seen worst is ${text}: its mark is ${formatNumber(last, last < 0.01 ? 4 : 2)} of a single group’s.`]
 }

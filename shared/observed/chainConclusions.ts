@@ -59,9 +59,9 @@ function chartNoteOf(active: readonly ChainStep[], gravity: boolean): string {
   const has = (kind: ChainStep['kind']): boolean => active.some(step => step.kind === kind)
   const smoothing = active.find(step => step.kind === 'smoothing')
   return [
-    has('detrend') ? 'trend removed' : 'trend in',
-    has('seasons') ? 'seasons removed' : 'seasons in',
-    gravity ? null : has('zonal-tides') ? active.some(step => step.kind === 'zonal-tides' && step.set === 'all') ? 'zonal tides removed' : 'only tides under 35 days removed' : 'zonal tides in',
+    has('detrend') ? 'trend removed' : 'trend left in',
+    has('seasons') ? 'seasons removed' : 'seasons left in',
+    gravity ? null : has('zonal-tides') ? active.some(step => step.kind === 'zonal-tides' && step.set === 'all') ? 'zonal tides removed' : 'only tides under 35 days removed' : 'zonal tides left in',
     smoothing?.kind === 'smoothing' ? `smoothed over ${smoothing.smoothing.widthDays} d` : null,
     has('monthly') ? 'monthly means' : null
   ].filter(part => part !== null).join(', ')

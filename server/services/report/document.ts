@@ -17,7 +17,7 @@ export function reportDocument(data: ReportData): Block {
   const { result, comparison, scenarioName, workspaceName, runNumber, invented } = data
   const finding = findingSentence(result)
   const span = formatSpan(result.span.fromMjd, result.span.toMjd)
-  const overTime = comparison ? `observed, model and residual; ${comparison.reduction?.chartNote ?? 'trend in'}` : 'model with one sigma; trend in'
+  const overTime = comparison ? `observed, model and residual; ${comparison.reduction?.chartNote ?? 'trend left in'}` : 'model with one sigma; trend left in'
   const content: Block[] = [
     { text: finding, fontSize: size.head, bold: true, lineHeight: 1.15, margin: [0, 10, 0, 8] },
     paragraph(`${workspaceName}. Scenario “${scenarioName}”, run ${runNumber}: ${settingsLine(result.settings)}. Calculated, not observed.${invented ? ' Invented data.' : ''}`, { color: print.soft }),

@@ -1,5 +1,7 @@
 import { describe, expect, it } from 'vitest'
-import { alignedOnDecimal, filteredRegions, queryOfSorting, sortedRegions, sortingOfQuery } from '~/regions/regionRows'
+import { alignedRows } from '~/attribution/aligned'
+import { belongsUnder, navLinks } from '~/shell/needs'
+import { alignedOnDecimal, alignedSigmas, filteredRegions, queryOfSorting, sortedRegions, sortingOfQuery } from '~/regions/regionRows'
 import { gapDays, predictionPanels, valueRows } from '~/regions/predictionFigures'
 import { poleDirection, regionSentence, totalNotes, totalSentence } from '~/regions/sentences'
 import type { Prediction, RegionItem, RegionTotal } from '~/regions/types'
@@ -51,6 +53,27 @@ describe('figures in a column', () => {
     expect(texts.slice(0, 3).map(behind)).toEqual([2, 2, 2])
     expect(texts[3]).toBe('\u2013')
     expect(texts.map(text => text.replace(/[\u2007\u2008]/g, ''))).toEqual(['\u2212214.3', '\u2212130', '+18.89', '\u2013'])
+  })
+
+  it('have errors of one width, on both sides of the decimal sign and before a unit', () => {
+    const texts = alignedSigmas(['± 8.4', '± 15', '± <0.01', ''])
+    expect(texts).toEqual(['\u2007± 8.4\u2007', '± 15\u2008\u2007\u2007', '± <0.01', ''])
+    expect(alignedSigmas(['± 3.6 %', '± 12 %'])).toEqual(['\u2007± 3.6 %', '± 12\u2008\u2007 %'])
+    expect(alignedRows([['+5.16 ± 0.20', '–'], ['−42 ± 24', '+21 %']])).toEqual([
+      [{ value: '+5.16', sigma: '\u2007± 0.20' }, { value: '–', sigma: '' }],
+      [{ value: '−42\u2008\u2007\u2007', sigma: '± 24\u2008\u2007\u2007' }, { value: '+21 %', sigma: '' }],
+    ])
+  })
+})
+
+describe('pages in the head', () => {
+  it('mark the part that a page belongs to, and no other', () => {
+    const marked = (path: string) => navLinks.filter(link => belongsUnder(link, path)).map(link => link.label)
+    expect(marked('/regions/01ARZ3NDEKTSV4RRFFQ69G5FAV/series')).toEqual(['Regions'])
+    expect(marked('/grids')).toEqual(['Regions'])
+    expect(marked('/runs/01ARZ3NDEKTSV4RRFFQ69G5FAV/attribution')).toEqual(['Scenarios'])
+    expect(marked('/')).toEqual([])
+    expect(marked('/mapping')).toEqual([])
   })
 })
 

@@ -74,7 +74,7 @@ describe('a chain of reductions', () => {
     lod.slice(1).forEach((panel, i) => expect(panel.before).toBe(lod[i]!.after))
     expect(result.after.lod).toBe(lod.at(-1)!.after)
     expect(result.steps.every(step => step.sentence.endsWith('.') && step.source !== '')).toBe(true)
-    expect(result.chartNote).toBe('trend in, seasons removed, zonal tides removed, monthly means')
+    expect(result.chartNote).toBe('trend left in, seasons removed, zonal tides removed, monthly means')
   })
 
   it('brings back the world that tides and fluid were added to', () => {

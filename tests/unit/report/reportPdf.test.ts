@@ -131,9 +131,9 @@ describe('a report of other accounts', () => {
   it('states how the observed series was reduced: the chain by name, its steps, and its JSON whole', async () => {
     const data = sampleReport()
     const chain = { ...defaultChain(), steps: [...defaultChain().steps, { kind: 'background' as const, on: true, rows: [{ key: 'b', name: 'Tidal braking', source: 'a source, with “signs” and a long name', core: null, lodMsPerCentury: { value: 2.3, sigma: 0.1 }, chi1MasPerYear: null, chi2MasPerYear: null }] }] }
-    data.comparison = { ...data.comparison!, reduction: { name: 'Tides out', chain, chartNote: 'trend in, seasons in', steps: [{ title: 'Zonal tides', sentence: 'All 62 zonal tides of Table 8.1 are taken off.', source: 'IERS Conventions (2010)' }] } }
+    data.comparison = { ...data.comparison!, reduction: { name: 'Tides out', chain, chartNote: 'trend left in, seasons left in', steps: [{ title: 'Zonal tides', sentence: 'All 62 zonal tides of Table 8.1 are taken off.', source: 'IERS Conventions (2010)' }] } }
     const { text } = await printed(data)
-    expect(text).toContain('Reduction of the observed series the chain “Tides out”; trend in, seasons in')
+    expect(text).toContain('Reduction of the observed series the chain “Tides out”; trend left in, seasons left in')
     expect(text).toContain('1. All 62 zonal tides of Table 8.1 are taken off. IERS Conventions (2010)')
     // Copied out of the PDF it is still the chain.
     const from = text.indexOf('{ "schemaVersion"')
