@@ -47,6 +47,7 @@ export const measured = z.object({ value: finite, sigmaWhite: finite, sigma: fin
 export const warning = z.object({ code: z.string(), message: z.string(), regions: z.array(z.string()) })
 export const issue = z.object({
   path: z.string().optional(), row: z.number().optional(), column: z.string().optional(), value: z.string().optional(),
+  lines: z.array(z.array(z.tuple([z.number(), z.number()]))).optional(),
   code: z.string(), message: z.string(),
 })
 export const problem = z.object({

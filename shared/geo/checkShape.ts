@@ -1,5 +1,6 @@
 import type { Outline, Position } from '../types/domain.ts'
 import type { Issue } from '../types/issue.ts'
+import { placeWords, stretchOf, type FaultPlace } from './faultPlace.ts'
 
 export type JsonObject = Record<string, unknown>
 
@@ -23,15 +24,16 @@ export function countPositions(coordinates: unknown, enough: number): number {
 /** A polygon or multipolygon as typed coordinates, heights left out, or what is wrong with its numbers and nesting, at most `most` faults. */
 export function checkShape(geometry: unknown, prefix: string, most: number): { issues: Issue[], outline: Outline | null } {
   const issues: Issue[] = []
-  const add = (path: string, code: string, message: string, value?: unknown): null => {
-    if (issues.length < most) issues.push({ path, code, message, ...(value === undefined ? {} : { value: shown(value) }) })
+  const add: Add = (path, code, message, value, { lines, near } = { near: null }) => {
+    const where = near ? ` It is near ${placeWords(near)}.` : ''
+    if (issues.length < most) issues.push({ path, code, message: `${message}${where}`, ...(value === undefined ? {} : { value: shown(value) }), ...(lines ? { lines } : {}) })
     return null
   }
   const outline = readGeometry(geometry, prefix, add)
   return { issues, outline: issues.length === 0 ? outline : null }
 }
 
-type Add = (path: string, code: string, message: string, value?: unknown) => null
+type Add = (path: string, code: string, message: string, value?: unknown, place?: FaultPlace) => null
 
 function readGeometry(geometry: unknown, prefix: string, add: Add): Outline | null {
   const at = (part: string): string => prefix === '' ? part : `${prefix}/${part}`
@@ -57,17 +59,20 @@ function readRing(ring: unknown, path: string, add: Add): Position[] {
     add(path, 'not-geojson', 'A ring is a list of positions.', ring)
     return []
   }
-  const positions = ring.map((position, k) => readPosition(position, `${path}/${k}`, add))
+  const last = ring.length - 1
+  const positions = ring.map((position, k) => readPosition(position, `${path}/${k}`, (...fault) => add(...fault, stretchOf(ring, Math.max(0, k - 1), Math.min(last, k + 1)))))
   if (ring.length < 4) {
-    add(path, 'ring-short', `A ring needs at least 4 positions, the last the same as the first; this one has ${ring.length}.`)
+    add(path, 'ring-short', `A ring needs at least 4 positions, the last the same as the first; this one has ${ring.length}.`, undefined, stretchOf(ring))
   }
   else if (!samePlace(positions[0]!, positions.at(-1)!)) {
-    add(`${path}/${ring.length - 1}`, 'ring-open', 'The ring is not closed: its last position must be the same as its first.', ring.at(-1))
+    add(`${path}/${last}`, 'ring-open', 'The ring is not closed: its last position must be the same as its first.', ring.at(-1), stretchOf(ring, last, 0))
   }
   return positions
 }
 
-function readPosition(position: unknown, path: string, add: Add): Position {
+type AddHere = (path: string, code: string, message: string, value: unknown) => null
+
+function readPosition(position: unknown, path: string, add: AddHere): Position {
   const [lon, lat] = Array.isArray(position) ? position as unknown[] : []
   if (typeof lon !== 'number' || typeof lat !== 'number' || !Number.isFinite(lon) || !Number.isFinite(lat)) {
     add(path, 'not-a-position', 'A position is two finite numbers: longitude, latitude.', position)

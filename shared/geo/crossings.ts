@@ -1,13 +1,12 @@
 import type { RingPath } from '../earth/rings.ts'
 import { boxTreeOf, forMeetingPairs } from './boxTree.ts'
+import { changesSides, edgeWalk, type Pass, type Ray } from './sharedStretch.ts'
 
-/** Two edges that cross: the place, and ring and edge of each, edge k running from vertex k to k + 1 of the path. */
-export interface Crossing {
-  lonDeg: number
-  latDeg: number
-  first: { ring: number, edge: number }
-  second: { ring: number, edge: number }
-}
+/** Edge k of a ring runs from vertex k to k + 1 of its path. */
+export interface EdgePlace { ring: number, edge: number }
+
+/** Two edges that cross, and where. */
+export interface Crossing { lonDeg: number, latDeg: number, first: EdgePlace, second: EdgePlace }
 
 /** A millionth of an arc second, about 30 µm: nearer than this two lines touch and do not cross. */
 const toleranceDeg = 3e-10
@@ -16,13 +15,15 @@ const mostPairs = 8_000_000
 
 /**
  * Edges of the rings that cross one another, at most `most` of them, wherever on the cylinder of longitude they lie. Lines that only
- * touch, or run along one another, do not cross. `complete` is false where the search was given up.
+ * touch do not cross, and such as run along one another only where they part to another side than they met from. `complete` is false
+ * where the search was given up; `busiest` is then the edge that had the most others about it.
  */
-export function findCrossings(rings: readonly RingPath[], most = 5): { crossings: Crossing[], complete: boolean } {
+export function findCrossings(rings: readonly RingPath[], most = 5): { crossings: Crossing[], complete: boolean, busiest: EdgePlace | null } {
   const edges = listEdges(rings)
   const { lines, ringOf, edgeOf } = edges
   const tree = boxTreeOf(lines)
   const crossings: Crossing[] = []
+  const meetings = new Uint32Array(tree.count)
   let pairs = 0
   let complete = true
   const reach = tree.count === 0 ? 0 : Math.floor((tree.boxes[6]! - tree.boxes[4]!) / 360)
@@ -30,6 +31,8 @@ export function findCrossings(rings: readonly RingPath[], most = 5): { crossings
     forMeetingPairs(tree, 360 * turn, (i, j) => {
       if (++pairs > mostPairs) complete = false
       if (!complete) return false
+      meetings[i]!++
+      meetings[j]!++
       const place = crossingOf(edges, rings, i, j, 360 * turn)
       if (place && !crossings.some(known => Math.abs(known.latDeg - place[1]) < 1e-9 && Math.abs(known.lonDeg - place[0]) < 1e-9)) {
         crossings.push({
@@ -42,7 +45,8 @@ export function findCrossings(rings: readonly RingPath[], most = 5): { crossings
       return crossings.length < most
     })
   }
-  return { crossings, complete }
+  const top = meetings.reduce((top, count, k) => count > meetings[top]! ? k : top, 0)
+  return { crossings, complete, busiest: complete ? null : { ring: ringOf[top]!, edge: edgeOf[top]! } }
 }
 
 interface Edges { lines: Float64Array, ringOf: Uint32Array, edgeOf: Uint32Array }
@@ -97,10 +101,6 @@ function areNeighbours({ ringOf, edgeOf }: Edges, rings: readonly RingPath[], i:
 
 const wrap = (lon: number): number => lon - 360 * Math.floor((lon + 180) / 360)
 
-type Ray = [number, number]
-/** A path through a point: the ways back and forth from it. */
-interface Pass { back: Ray, forth: Ray }
-
 /** Where an end of one edge lies on the other: whether the paths change sides there. */
 function touchCrosses(
   edges: Edges, rings: readonly RingPath[], i: number, j: number, shift: number, zero: Record<'a' | 'b' | 'c' | 'd', number>
@@ -115,7 +115,7 @@ function touchCrosses(
     if (!point || !isWithin(point, first) || !isWithin(point, second)) continue
     const one = passThrough(point, first, edges, rings, i)
     const other = passThrough(point, second, edges, rings, j)
-    if (one && other && changesSides(one, other)) return [wrap(point[0]), point[1]]
+    if (changesSides(one, other)) return [wrap(point[0]), point[1]]
   }
   return null
 }
@@ -127,26 +127,13 @@ function isWithin([x, y]: Ray, [p, q]: [Ray, Ray]): boolean {
 }
 
 function passThrough(point: Ray, [p, q]: [Ray, Ray], { ringOf, edgeOf }: Edges, rings: readonly RingPath[], e: number): Pass {
-  const { lonDeg: lon, latDeg: lat } = rings[ringOf[e]!]!
-  const n = lon.length - 1
-  const ray = (from: number, to: number): Ray => [lon[to]! - lon[from]!, lat[to]! - lat[from]!]
-  const near = (end: Ray): boolean => Math.hypot(point[0] - end[0], point[1] - end[1]) < 2 * toleranceDeg
+  const ring = rings[ringOf[e]!]!
   const k = edgeOf[e]!
-  if (near(p)) return { back: k === 0 ? ray(n, n - 1) : ray(k, k - 1), forth: ray(k, k + 1) }
-  if (near(q)) return { back: ray(k + 1, k), forth: k + 1 === n ? ray(0, 1) : ray(k + 1, k + 2) }
-  return { back: [p[0] - point[0], p[1] - point[1]], forth: [q[0] - point[0], q[1] - point[1]] }
-}
-
-/** Of two paths through one point, whether the second lies on both sides of the first. Shared directions count as running along. */
-function changesSides(one: Pass, other: Pass): boolean {
-  const start = Math.atan2(one.forth[1], one.forth[0])
-  const turn = (ray: Ray): number => {
-    const angle = (Math.atan2(ray[1], ray[0]) - start) / (2 * Math.PI)
-    return angle - Math.floor(angle)
+  const near = (end: Ray): boolean => Math.hypot(point[0] - end[0], point[1] - end[1]) < 2 * toleranceDeg
+  if (near(p)) return { back: edgeWalk(ring, k - 1, -1), forth: edgeWalk(ring, k, 1) }
+  if (near(q)) return { back: edgeWalk(ring, k, -1), forth: edgeWalk(ring, k + 1, 1) }
+  return {
+    back: { ring, edge: k, way: -1, left: [p[0] - point[0], p[1] - point[1]] },
+    forth: { ring, edge: k, way: 1, left: [q[0] - point[0], q[1] - point[1]] }
   }
-  const back = turn(one.back)
-  const angles = [turn(other.back), turn(other.forth)]
-  const along = (angle: number): boolean => [0, 1, back].some(known => Math.abs(angle - known) < 1e-9)
-  if (angles.some(along)) return false
-  return (angles[0]! < back) !== (angles[1]! < back)
 }

@@ -1,3 +1,5 @@
+import type { Position } from './domain.ts'
+
 /** One fault in what somebody sent: where it is and why it does not hold. */
 export interface Issue {
   /** Place in a JSON body, e.g. `regions/0/geometry/coordinates/0/3`. */
@@ -7,6 +9,8 @@ export interface Issue {
   column?: string
   /** What stood there, cut to a readable length. */
   value?: string
+  /** Of an outline: the lines that are wrong, as longitude and latitude, long ones thinned. */
+  lines?: Position[][]
   code: string
   message: string
 }

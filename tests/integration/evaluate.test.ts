@@ -157,4 +157,9 @@ describe('refusals', () => {
     const { issues } = await reader.refused('evaluate', 422, { body })
     expect(issues!.map(i => i.path).join('\n')).toContain(path)
   })
+
+  it('an outline that crosses itself comes with the lines that do', async () => {
+    const { issues } = await reader.refused('evaluate', 422, { body: one(1, { type: 'Polygon', coordinates: [[[0, 0], [10, 10], [10, 0], [0, 10], [0, 0]]] }) })
+    expect(issues).toMatchObject([{ code: 'self-crossing', lines: [[[0, 0], [10, 10]], [[10, 0], [0, 10]]] }])
+  })
 })

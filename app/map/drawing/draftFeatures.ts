@@ -52,7 +52,7 @@ function joined(places: readonly Position[]): Position[] {
 }
 
 /** Straight edges cut into steps of a degree, so that the globe does not shorten them; dense ones stay as they are. */
-function withDenseSteps(positions: readonly Position[]): Position[] {
+export function withDenseSteps(positions: readonly Position[]): Position[] {
   const { lonDeg, latDeg } = pathOf(positions)
   const path: Position[] = [[lonDeg[0]!, latDeg[0]!]]
   for (let k = 1; k < lonDeg.length; k++) {

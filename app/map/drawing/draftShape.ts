@@ -49,14 +49,33 @@ export function faultOf(draft: Draft, outline: Outline | null, crossingsOnly = f
   const rings = draft.rings.filter(ring => ring.length >= 3)
   if (rings.length === 0) return null
   const lines = rings.map(ring => ringLine(draft, ring))
+  const refused = lines.flatMap(({ positions }) => refusalOf(positions))
+  if (refused[0]) return { message: refused[0].message, lines: refused.map(({ line }) => line) }
   const { crossings } = findCrossings(lines.map(line => ringPath(line.positions)), 3)
   if (crossings.length > 0) {
     const wrong = crossings.flatMap(({ first, second }) => [first, second].map(({ ring, edge }) => edgeLine(lines[ring]!, edge)))
     return { message: crossings.length === 1 ? 'Two edges cross.' : 'Edges cross.', lines: wrong }
   }
-  if (outline === null) return { message: 'The outline encloses no area.', lines: [] }
-  const [issue] = crossingsOnly ? [] : checkOutline(outline)
-  return issue ? { message: issue.message, lines: [] } : null
+  if (outline === null) return { message: 'The outline encloses no area.', lines: lines.map(({ positions }) => positions) }
+  if (crossingsOnly) return null
+  const [issue] = checkOutline(outline)
+  if (issue) return { message: issue.message, lines: issue.lines ?? [] }
+  const closed = draft.open ? draft.rings.slice(0, -1) : draft.rings
+  const empty = rings.length > 1 ? closed.filter(ring => draftOutline({ ...draft, rings: [ring] }) === null) : []
+  if (empty.length === 0) return null
+  return { message: `${empty.length === 1 ? 'One ring encloses' : `${empty.length} rings enclose`} no area.`, lines: empty.map(ring => ringLine(draft, ring).positions) }
+}
+
+/** Why a line cannot be a ring at all, with the line; nothing where it can. */
+function refusalOf(positions: Position[]): { message: string, line: Position[] }[] {
+  try {
+    ringPath(positions)
+    return []
+  }
+  catch (error) {
+    if (!(error instanceof InputError)) throw error
+    return [{ message: error.issues[0]!.message, line: positions }]
+  }
 }
 
 function edgeLine({ positions, edgeOf }: { positions: Position[], edgeOf: number[] }, at: number): Position[] {

@@ -103,7 +103,8 @@ describe('checkOutline', () => {
     const issues = checkOutline(polygon([[0, 0], [10, 0], [10, 91.2], [0, 0]]), 'regions/0/geometry')
     expect(issues).toEqual([{
       path: 'regions/0/geometry/coordinates/0/2', code: 'latitude', value: '[10,91.2]',
-      message: 'Latitude 91.2° is outside −90° to 90°. GeoJSON gives the longitude first.'
+      message: 'Latitude 91.2° is outside −90° to 90°. GeoJSON gives the longitude first. It is near 0.0000° N, 10.0000° E.',
+      lines: [[[10, 0], [0, 0]]]
     }])
   })
 
@@ -125,7 +126,8 @@ describe('checkOutline', () => {
   it('gives the place and the edges where an outline crosses itself', () => {
     expect(checkOutline(polygon([[0, 0], [4, 2], [4, 0], [0, 2], [0, 0]]))).toEqual([{
       path: 'coordinates/0/0', code: 'self-crossing', value: '[2.000000, 1.000000]',
-      message: 'The outline crosses itself at 1.0000° N, 2.0000° E: edge 0–1 and edge 2–3.'
+      message: 'The outline crosses itself at 1.0000° N, 2.0000° E: edge 0–1 and edge 2–3.',
+      lines: [[[0, 0], [4, 2]], [[4, 0], [0, 2]]]
     }])
   })
 
@@ -158,7 +160,7 @@ describe('checkOutline', () => {
   })
 
   it('names rings without area, holes outside and parts inside one another', () => {
-    expect(checkOutline(polygon([[0, 0], [5, 5], [10, 10], [0, 0]]))).toMatchObject([{ path: 'coordinates', code: 'no-area' }])
+    expect(checkOutline(polygon([[0, 0], [5, 5], [10, 10], [0, 0]]))).toMatchObject([{ path: 'coordinates/0', code: 'no-area' }])
     expect(checkOutline(polygon([[5, 5], [5, 5], [5, 5], [5, 5]]))).toMatchObject([{ path: 'coordinates/0', code: 'no-area' }])
     expect(checkOutline(polygon(box(0, 0, 10, 10), box(20, 0, 22, 2)))).toMatchObject([{ path: 'coordinates/1', code: 'hole-outside' }])
     expect(checkOutline(polygon(box(0, 0, 10, 10), box(1, 1, 9, 9), box(2, 2, 3, 3)))).toMatchObject([{ path: 'coordinates/2', code: 'hole-in-hole' }])

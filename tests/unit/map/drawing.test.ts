@@ -59,6 +59,21 @@ describe('a draft', () => {
     expect(fault.lines.map(line => [line[0], line.at(-1)])).toEqual([[[0, 0], [20, 10]], [[20, 0], [0, 10]]])
   })
 
+  it('shows the ring that encloses nothing, among others and alone, and one that goes twice round a pole', () => {
+    const flat = draw([0, 0], [10, 0], [20, 0])
+    const whole = faultOf(flat, draftOutline(flat))!
+    expect(whole.message).toBe('The outline encloses no area.')
+    expect(whole.lines.map(line => [line[0], Math.max(...line.map(([lon]) => lon)), line.every(([, lat]) => lat === 0)])).toEqual([[[0, 0], 20, true]])
+    const shell = draw([0, 0], [20, 0], [20, 20], [0, 20])
+    const beside = finishRing(([[40, 0], [40, 10], [40, 5]] as Position[]).reduce<Draft>((draft, place) => addVertex(draft, place), beginRing(shell)))
+    const fault = faultOf(beside, draftOutline(beside))!
+    expect(fault.message).toBe('One ring encloses no area.')
+    expect(fault.lines).toHaveLength(1)
+    expect(fault.lines[0]!.every(([lon]) => Math.abs(lon - 40) < 1e-9)).toBe(true)
+    const twice = draw([0, 80], [120, 80], [-120, 80], [0, 75], [120, 75], [-120, 75])
+    expect(faultOf(twice, draftOutline(twice))).toMatchObject({ message: expect.stringMatching(/round the pole 2 times/), lines: [expect.arrayContaining([[0, 80]])] })
+  })
+
   it('has a middle on every edge, on the great circle', () => {
     const middles = edgeMiddles(draw([0, 40], [60, 40], [30, 60]))
     expect(middles).toHaveLength(3)
