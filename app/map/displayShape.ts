@@ -11,7 +11,12 @@ const stepDeg = 1
 /** The outline must have passed `checkOutline`. */
 export function displayShape(outline: Outline): DisplayShape {
   const fill = displayFill(cutAtAntimeridian(outline))
-  return { fill, lines: polygonsOf(fill).flat().flatMap(withoutSeams) }
+  return { fill, lines: displayLines(fill) }
+}
+
+/** The line alone, of an outline that is cut at the antimeridian already. */
+export function displayLines(cut: Outline): Position[][] {
+  return polygonsOf(cut).flat().flatMap(withoutSeams)
 }
 
 /** The fill alone, of an outline that is cut at the antimeridian already. */

@@ -2,14 +2,16 @@ import type { ExpressionSpecification, LayerSpecification, StyleSpecification } 
 import type { Palette } from '#shared/design/tokens'
 import { graticule } from './graticule'
 import { overlapHatch } from './colouring/images'
+import { sourceIds } from './picture/picture'
 import { placeNames } from './placeNames'
 import { collection } from './regionSources'
 
 export type MapProjection = 'globe' | 'flat'
 
-/** Sources that the page fills. */
-export const sourceIds = ['overlay-lines', 'region-fills', 'overlap-fills', 'region-lines', 'region-labels', 'draft-fill', 'draft-lines', 'draft-handles'] as const
-export type SourceId = typeof sourceIds[number]
+/** A map whose camera moves over nothing: what is seen is drawn elsewhere. */
+export function emptyStyle(projection: MapProjection): StyleSpecification {
+  return { version: 8, projection: { type: projection === 'globe' ? 'globe' : 'mercator' }, sources: {}, layers: [] }
+}
 
 /** The whole style: shipped tiles, graticule, regions and the outline being drawn. No glyphs: labels come from local Noto Sans. */
 export function mapStyle(palette: Palette, projection: MapProjection, origin: string): StyleSpecification {
@@ -19,7 +21,7 @@ export function mapStyle(palette: Palette, projection: MapProjection, origin: st
     sources: {
       earth: { type: 'vector', tiles: [`${origin}/tiles/{z}/{x}/{y}.pbf`], minzoom: 0, maxzoom: 5 },
       graticule: { type: 'geojson', data: graticule() },
-      places: { type: 'geojson', data: placeNames() },
+      places: { type: 'geojson', data: placeNames(), promoteId: 'name' },
       ...Object.fromEntries(sourceIds.map(id => [id, { type: 'geojson' as const, data: collection([]), tolerance: 0.2, promoteId: 'id' }]))
     },
     layers: mapLayers(palette)
@@ -43,6 +45,9 @@ function groundLayers(palette: Palette): LayerSpecification[] {
   ]
 }
 
+/** Names that would run over the globe's edge are hidden (namesBesideTheGlobe.ts). */
+const insideEdge: ExpressionSpecification = ['case', ['boolean', ['feature-state', 'beside'], false], 0, 1]
+
 /** Names of the Earth, softer than those of the regions and giving way to every other label. */
 function nameLayers(palette: Palette): LayerSpecification[] {
   const kind: ExpressionSpecification = ['get', 'kind']
@@ -59,6 +64,7 @@ function nameLayers(palette: Palette): LayerSpecification[] {
     },
     paint: {
       'text-color': palette.soft,
+      'text-opacity': insideEdge,
       'text-halo-color': ['match', kind, ['ocean', 'sea', 'lake'], palette.sea, palette.land],
       'text-halo-width': 1.2
     }
@@ -129,7 +135,7 @@ function regionLayers(palette: Palette): LayerSpecification[] {
         'text-justify': 'auto',
         'symbol-sort-key': ['get', 'rank']
       },
-      paint: { 'text-color': palette.ink, 'text-halo-color': palette.paper, 'text-halo-width': 1.4 }
+      paint: { 'text-color': palette.ink, 'text-opacity': insideEdge, 'text-halo-color': palette.paper, 'text-halo-width': 1.4 }
     }
   ]
 }

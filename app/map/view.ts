@@ -3,20 +3,20 @@ import { arcDeg } from '#shared/geo/greatCircle'
 import { polygonsOf } from '#shared/geo/parts'
 import type { Outline, Position } from '#shared/types/domain'
 
-const tilePixels = 512
+export const tilePixels = 512
 /** Half the field of view of the camera, as a part of the height: 0.5 / tan(36.87° / 2) = 1.5. */
-const cameraHeights = 1.5
+export const cameraHeights = 1.5
 /** Part of the smaller side of the map that what is shown may fill. */
 const fill = 0.43
 
 /** The map's size in pixels; one pixel while the page has no room for it, so that nothing divides by zero. */
-function sizeOf(map: Chart): { width: number, height: number } {
+export function sizeOf(map: Chart): { width: number, height: number } {
   const { clientWidth, clientHeight } = map.getContainer()
   return { width: Math.max(1, clientWidth), height: Math.max(1, clientHeight) }
 }
 
 /** Radius of the globe itself in pixels, seen from far away, at a zoom and centre latitude. */
-function globeRadius(zoom: number, latitudeDeg: number): number {
+export function globeRadius(zoom: number, latitudeDeg: number): number {
   return tilePixels * 2 ** zoom / (2 * Math.PI * Math.cos(latitudeDeg * Math.PI / 180))
 }
 

@@ -1,6 +1,6 @@
 import { computed, onScopeDispose, ref, shallowRef, watch, type Ref } from 'vue'
-import type { GeoJSONSource, Map as Chart } from 'maplibre-gl'
 import type { Outline, Position } from '#shared/types/domain'
+import type { MapPicture, SourceId } from '../picture/picture'
 import { addPlaces, addVertex, beginRing, dropLast, emptyDraft, finishRing, removeVertex, vertexCount, type Draft, type VertexPlace } from './draft'
 import { draftOutline, faultOf } from './draftShape'
 import { draftFeatures } from './draftFeatures'
@@ -26,7 +26,7 @@ interface Options {
 }
 
 /** Drawing and editing an outline by mouse, touch or keyboard; the map shows it on the globe and flat. */
-export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Options) {
+export function useOutlineDrawing(picture: Readonly<Ref<MapPicture | null>>, options: Options) {
   const active = ref(false)
   const history = shallowRef(historyOf<Draft>(emptyDraft))
   /** The draft while a vertex is under way; null between drags. */
@@ -118,9 +118,9 @@ export function useOutlineDrawing(map: Readonly<Ref<Chart | null>>, options: Opt
   const features = computed(() => draftFeatures({
     active: active.value, draft: draft.value, chosen: chosen.value, pointer: cursor.place.value ?? pointer.value, outline: outline.value, fault: fault.value,
   }))
-  watch([map, features, () => options.inSight?.() ?? true], ([chart, , seen]) => {
-    if (!seen || !chart?.getSource('draft-fill')) return
-    for (const [id, data] of Object.entries(features.value)) (chart.getSource(id) as GeoJSONSource).setData(data)
+  watch([picture, features, () => options.inSight?.() ?? true], ([shown, , seen]) => {
+    if (!seen || !shown) return
+    for (const [id, data] of Object.entries(features.value)) shown.set(id as SourceId, data)
   })
   onScopeDispose(() => { active.value = false })
 

@@ -1,8 +1,9 @@
 import { computed, onScopeDispose, ref, shallowRef, watch, type Ref } from 'vue'
-import type { GeoJSONSource, Map as Chart } from 'maplibre-gl'
+import type { Map as Chart } from 'maplibre-gl'
 import type { EarthModel } from '#shared/earth/earthModel'
 import { responseAtPlace } from '#shared/earth/pointResponse'
 import type { Position } from '#shared/types/domain'
+import type { MapPicture } from '../picture/picture'
 import { toPlace } from '../view'
 import { effectOf, overlayOf, type Overlay } from './overlay'
 import { mapSettings, sensitivityGrid, type SensitivityGrid } from './sensitivityGrid'
@@ -10,6 +11,7 @@ import { lineFeatures, sensitivityLines } from './sensitivityLines'
 
 interface Setting {
   chart: Readonly<Ref<Chart | null>>
+  picture: Readonly<Ref<MapPicture | null>>
   model: Readonly<Ref<EarthModel | null>>
   /** Place of the keyboard cursor of drawing; it goes before the pointer. */
   cursor: Readonly<Ref<Position | null>>
@@ -19,7 +21,7 @@ interface Setting {
  * Lines of equal effect of a gigatonne on the map, chosen in the address (`overlay`, `towards`), and the effect under the pointer, under
  * the cursor of drawing, or in the middle of the map while it has the keyboard.
  */
-export function useSensitivityOverlay({ chart, model, cursor }: Setting) {
+export function useSensitivityOverlay({ chart, picture, model, cursor }: Setting) {
   const route = useRoute()
   const router = useRouter()
   const grid = shallowRef<SensitivityGrid | null>(null)
@@ -44,11 +46,10 @@ export function useSensitivityOverlay({ chart, model, cursor }: Setting) {
   let frame = 0
   const draw = () => {
     frame = 0
-    const source = chart.value?.getSource('overlay-lines') as GeoJSONSource | undefined
-    source?.setData(lineFeatures(lines.value?.middle ?? []))
+    picture.value?.set('overlay-lines', lineFeatures(lines.value?.middle ?? []))
   }
-  watch([lines, chart], () => {
-    if (chart.value) frame ||= requestAnimationFrame(draw)
+  watch([lines, picture], () => {
+    if (picture.value) frame ||= requestAnimationFrame(draw)
   }, { immediate: import.meta.client })
 
   const pointer = shallowRef<Position | null>(null)
