@@ -1,6 +1,7 @@
 import geodesic from 'geographiclib-geodesic'
 import type { Browser, Page } from 'playwright-core'
 import { afterAll, afterEach, beforeAll, describe, expect, inject, it } from 'vitest'
+import { light } from '../../shared/design/tokens'
 import type { Position } from '../../shared/types/domain'
 import { launch, open, signInByForm, visit, type Visit } from '../support/browser'
 import { demo } from '../support/client'
@@ -62,6 +63,19 @@ async function save(page: Page, name: string) {
 
 const polarBox = async (page: Page) => (await page.locator('svg[data-polar]').boundingBox())!
 
+/** How many pixels within 7 of a point have the colour of what is drawn: the ring of a vertex has some twenty, a line beside it ten. */
+async function modelPixels(page: Page, { x, y }: { x: number, y: number }): Promise<number> {
+  const picture = await page.screenshot({ clip: { x: x - 7, y: y - 7, width: 15, height: 15 } })
+  const pixels = await page.evaluate(async (base64) => {
+    const bitmap = await createImageBitmap(new Blob([Uint8Array.from(atob(base64), c => c.charCodeAt(0))], { type: 'image/png' }))
+    const pen = new OffscreenCanvas(15, 15).getContext('2d')!
+    pen.drawImage(bitmap, 0, 0)
+    return [...pen.getImageData(0, 0, 15, 15).data]
+  }, picture.toString('base64'))
+  const wanted = [1, 3, 5].map(at => Number.parseInt(light.model.slice(at, at + 2), 16))
+  return Array.from({ length: 225 }, (_, k) => wanted.every((value, c) => Math.abs(pixels[4 * k + c]! - value) < 40)).filter(Boolean).length
+}
+
 describe('an outline drawn', () => {
   it('by keys on the equator, with an arrow undone on the way', async () => {
     const { page } = lead
@@ -81,6 +95,23 @@ describe('an outline drawn', () => {
     const { areaKm2, polygons } = await stored('By keys')
     expect(polygons).toHaveLength(1)
     expect(Math.abs(geodesicAreaKm2(polygons) / areaKm2 - 1)).toBeLessThan(1e-6)
+  })
+
+  // The place that a click means is found by the map library; the canvas draws it by a camera of its own.
+  it.each(['canvas', 'webgl'])('stands where the mouse was, painted by %s', async (painter) => {
+    const { page } = lead
+    await begin(page, `globe&painter=${painter}`)
+    const { x, y, width, height } = (await page.locator('canvas.maplibregl-canvas').boundingBox())!
+    const corners = [[-90, -70], [100, -60], [20, 90]].map(([dx, dy]) => ({ x: Math.round(x + width / 2 + dx!), y: Math.round(y + height / 2 + dy!) }))
+    for (const corner of corners) {
+      await page.mouse.click(corner.x, corner.y)
+      await page.waitForTimeout(420)
+    }
+    await page.mouse.move(x + 5, y + 5)
+    for (const corner of corners) await expect.poll(() => modelPixels(page, corner)).toBeGreaterThan(15)
+    expect(await modelPixels(page, { x: corners[0]!.x, y: corners[0]!.y - 40 })).toBe(0)
+    await page.getByRole('button', { name: 'Discard' }).click()
+    await expect.poll(() => modelPixels(page, corners[0]!)).toBe(0)
   })
 
   it('by mouse round the South Pole, where the map’s tiles end', async () => {
