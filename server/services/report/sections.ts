@@ -46,7 +46,7 @@ export function comparisonBlocks(data: ReportData): Block[] {
       right: [1, 2, 3, 4, 5],
     }),
     ...(observed ? [paragraph(`Observed series: ${observed.name}. ${observed.source}`, { margin: [0, 6, 0, 0], fontSize: size.small, color: print.soft })] : []),
-    ...(comparison.notRemoved.length ? [paragraph(`Still in the observed series: ${listed(comparison.notRemoved)}.`, { margin: [0, 6, 0, 4] })] : []),
+    ...(comparison.notRemoved.length ? [together(paragraph(`Still in the observed series: ${listed(comparison.notRemoved)}.`, { margin: [0, 6, 0, 4] }))] : []),
     caution(cautions.core),
     caution(cautions.noise),
     ...reductionBlocks(data),
@@ -89,9 +89,9 @@ const kinds: Record<ReportData['sources'][number]['kind'], string> = {
   'ice-sector': 'ice sector', 'glacier-region': 'glacier region',
 }
 
-/** A checksum in two lines, so that it fits a column and can still be copied. */
+/** A checksum in four lines, so that it fits a column and can still be copied. */
 function checksum(sha256: string): Block {
-  return { text: sha256.length > 32 ? `${sha256.slice(0, 32)}\n${sha256.slice(32)}` : sha256, fontSize: size.tiny - 1, color: print.soft }
+  return { text: sha256.match(/.{1,16}/g)?.join('\n') ?? '', fontSize: size.tiny, color: print.soft }
 }
 
 /** Of a region whose mass lies as a grid says: what an even spread would do. */
@@ -117,7 +117,7 @@ export function sourceBlocks({ result, sources, observed }: ReportData): Block[]
     head: sectionHead('Data', 'sources, versions and checksums (SHA-256)'),
     columns: ['Region', 'Source of the series', 'Series', 'Outline'],
     rows: [...rows, ...seen],
-    widths: [112, '*', 106, 106],
+    widths: [112, '*', 68, 68],
   })]
 }
 
