@@ -1,4 +1,3 @@
-import { featureCollection, intersect, multiPolygon } from '@turf/turf'
 import type { Feature } from 'geojson'
 import { cutAtAntimeridian } from '#shared/geo/cut'
 import { overlapsOf, type OutlineOverlap } from '#shared/geo/overlap'
@@ -11,12 +10,15 @@ export interface SharedGround extends OutlineOverlap {
   shape: Feature | null
 }
 
-const plane = (outline: Outline) => multiPolygon(polygonsOf(cutAtAntimeridian(outline)) as Position[][][])
-
 /** Pairs of regions that share ground: the area on the ellipsoid, and the shape on the plane of longitude and latitude. */
-export function sharedGrounds(items: readonly { id: string, geometry: Outline }[]): SharedGround[] {
+export async function sharedGrounds(items: readonly { id: string, geometry: Outline }[]): Promise<SharedGround[]> {
+  const pairs = overlapsOf(items)
+  // Most accounts have none, and need nothing more for it.
+  if (!pairs.length) return []
+  const { featureCollection, intersect, multiPolygon } = await import('@turf/turf')
+  const plane = (outline: Outline) => multiPolygon(polygonsOf(cutAtAntimeridian(outline)) as Position[][][])
   const outlines = new Map(items.map(item => [item.id, item.geometry]))
-  return overlapsOf(items).map((pair) => {
+  return pairs.map((pair) => {
     const common = intersect(featureCollection([plane(outlines.get(pair.a)!), plane(outlines.get(pair.b)!)]))
     const geometry = common && displayFill(common.geometry as Outline)
     return { ...pair, shape: geometry && { type: 'Feature', properties: { a: pair.a, b: pair.b }, geometry } }

@@ -1,5 +1,4 @@
 import type { Outline } from '#shared/types/domain'
-import { overlapsWith } from '#shared/geo/overlap'
 import type { NewRegion } from '~/composables/useOutlineSave'
 import type { RegionItem } from '~/regions/types'
 import type { Draft } from './drawing/draft'
@@ -90,7 +89,8 @@ export function useOutlineWork({ drawing, save, regions, workspace, blank, store
   let later: ReturnType<typeof setTimeout> | undefined
   watch([outline, drawing.fault, active], () => {
     clearTimeout(later)
-    later = setTimeout(() => {
+    later = setTimeout(async () => {
+      const { overlapsWith } = await import('#shared/geo/overlap')
       const shape = active.value && !drawing.fault.value ? outline.value : null
       const others = regions().filter(other => other.id !== region.value?.id)
       overlaps.value = !shape ? [] : overlapsWith({ id: 'draft', geometry: shape }, others.map(({ id, geometry }) => ({ id, geometry: geometry as Outline })))

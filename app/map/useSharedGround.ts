@@ -16,7 +16,9 @@ export function useSharedGround(regions: () => readonly RegionItem[], ready: () 
     const { sharedGrounds } = await import('./overlapShapes')
     // After the frame that shows the regions.
     await new Promise(resolve => setTimeout(resolve, 50))
-    if (mine === asked) grounds.value = sharedGrounds(items.map(({ id, geometry }) => ({ id, geometry: geometry as Outline })))
+    if (mine !== asked) return
+    const found = await sharedGrounds(items.map(({ id, geometry }) => ({ id, geometry: geometry as Outline })))
+    if (mine === asked) grounds.value = found
   }, { immediate: true })
 
   const names = computed(() => new Map(regions().map(({ id, name }) => [id, name])))

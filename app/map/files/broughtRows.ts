@@ -1,5 +1,5 @@
 import { contourOf } from '#shared/earth/contour'
-import { overlapsInTurn, type OutlineOverlap } from '#shared/geo/overlap'
+import type { OutlineOverlap } from '#shared/geo/overlap'
 import { polygonsOf } from '#shared/geo/parts'
 import type { NamedOutline } from '#shared/geo/outline'
 import type { Outline, RegionKind } from '#shared/types/domain'
@@ -67,6 +67,7 @@ export const folded = (name: string) => name.trim().toLocaleLowerCase('en')
 
 /** Ground that each row shares with others here and with regions, by row. Rests now and then, so that the page goes on answering; `ended` stops it. */
 export async function groundShared(rows: readonly BroughtRow[], regions: readonly { id: string, geometry: Outline }[], ended: () => boolean): Promise<Map<string, OutlineOverlap[]>> {
+  const { overlapsInTurn } = await import('#shared/geo/overlap')
   const found = new Map<string, OutlineOverlap[]>()
   const add = (key: string, overlap: OutlineOverlap) => found.set(key, [...found.get(key) ?? [], overlap])
   const items = [...rows.map(({ key, geometry }) => ({ id: key, geometry })), ...regions]

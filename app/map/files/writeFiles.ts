@@ -1,15 +1,16 @@
 import type { WrittenOutline } from '#shared/geo/forFile'
-import { outlinesAsGeoJson, outlinesAsKml, outlinesAsWkt } from '#shared/geo/writeOutline'
 
 export interface OutlineFormat { name: string, ending: string, type: string, write: (outlines: readonly WrittenOutline[]) => Promise<string | Uint8Array> }
 
+const texts = () => import('#shared/geo/writeOutline')
+
 /** The formats that outlines are written in, all in this browser; what is large is loaded when it is asked for. */
 export const outlineFormats: readonly OutlineFormat[] = [
-  { name: 'GeoJSON', ending: 'geojson', type: 'application/geo+json', write: async outlines => outlinesAsGeoJson(outlines) },
+  { name: 'GeoJSON', ending: 'geojson', type: 'application/geo+json', write: async outlines => (await texts()).outlinesAsGeoJson(outlines) },
   { name: 'shapefile', ending: 'zip', type: 'application/zip', write: zippedShapefile },
   { name: 'GeoPackage', ending: 'gpkg', type: 'application/geopackage+sqlite3', write: async outlines => (await import('./writeGeoPackage')).geoPackageOf(outlines) },
-  { name: 'KML', ending: 'kml', type: 'application/vnd.google-earth.kml+xml', write: async outlines => outlinesAsKml(outlines) },
-  { name: 'WKT', ending: 'wkt', type: 'text/plain', write: async outlines => outlinesAsWkt(outlines) },
+  { name: 'KML', ending: 'kml', type: 'application/vnd.google-earth.kml+xml', write: async outlines => (await texts()).outlinesAsKml(outlines) },
+  { name: 'WKT', ending: 'wkt', type: 'text/plain', write: async outlines => (await texts()).outlinesAsWkt(outlines) },
 ]
 
 async function zippedShapefile(outlines: readonly WrittenOutline[]): Promise<Uint8Array> {

@@ -71,8 +71,8 @@ describe('common ground', () => {
     const ring: Position[] = [[west, south], [west + side, south], [west + side, south + side], [west, south + side], [west, south]]
     return { type: 'Polygon', coordinates: [ring] }
   }
-  it('is the square that two squares share, on both sides of the antimeridian', () => {
-    const pairs = sharedGrounds([{ id: 'a', geometry: square(10, 0, 10) }, { id: 'b', geometry: square(15, 5, 10) }, { id: 'c', geometry: square(175, -30, 10) }, { id: 'd', geometry: square(-185, -25, 10) }])
+  it('is the square that two squares share, on both sides of the antimeridian', async () => {
+    const pairs = await sharedGrounds([{ id: 'a', geometry: square(10, 0, 10) }, { id: 'b', geometry: square(15, 5, 10) }, { id: 'c', geometry: square(175, -30, 10) }, { id: 'd', geometry: square(-185, -25, 10) }])
     expect(pairs.map(({ a, b }) => a + b)).toEqual(['ab', 'cd'])
     const reach = (k: number) => polygonsOf(pairs[k]!.shape!.geometry as Outline).flat(2).map(([lon, lat]) => [Math.abs(lon), lat] as const)
     expect([Math.min(...reach(0).map(p => p[0])), Math.max(...reach(0).map(p => p[0])), Math.min(...reach(0).map(p => p[1])), Math.max(...reach(0).map(p => p[1]))]).toEqual([15, 20, 5, 10])
