@@ -1,13 +1,11 @@
 import { computed, onScopeDispose, ref, shallowRef, watch, type Ref } from 'vue'
 import type { Map as Chart } from 'maplibre-gl'
 import type { EarthModel } from '#shared/earth/earthModel'
-import { responseAtPlace } from '#shared/earth/pointResponse'
 import type { Position } from '#shared/types/domain'
 import type { MapPicture } from '../picture/picture'
 import { toPlace } from '../view'
 import { effectOf, overlayOf, type Overlay } from './overlay'
-import { mapSettings, sensitivityGrid, type SensitivityGrid } from './sensitivityGrid'
-import { lineFeatures, sensitivityLines } from './sensitivityLines'
+import type { SensitivityGrid } from './sensitivityGrid'
 
 interface Setting {
   chart: Readonly<Ref<Chart | null>>
@@ -24,6 +22,8 @@ interface Setting {
 export function useSensitivityOverlay({ chart, picture, model, cursor }: Setting) {
   const route = useRoute()
   const router = useRouter()
+  const sums = shallowRef<typeof import('./fieldAndLines') | null>(null)
+  const failed = ref(false)
   const grid = shallowRef<SensitivityGrid | null>(null)
   /** While the longitude is turned, ahead of the address. */
   const turned = ref<number | null>(null)
@@ -33,20 +33,27 @@ export function useSensitivityOverlay({ chart, picture, model, cursor }: Setting
   })
   const wanted = computed(() => overlay.value !== null && model.value !== null)
 
-  watch([wanted, model], async () => {
+  async function compute(): Promise<void> {
     if (!wanted.value || !import.meta.client) return
     const of = model.value!
     grid.value = null
-    const made = await sensitivityGrid(of, () => new Promise(resolve => setTimeout(resolve)))
+    failed.value = false
+    sums.value ??= await import('./fieldAndLines').catch(() => null)
+    if (!sums.value) {
+      failed.value = true
+      return
+    }
+    const made = await sums.value.sensitivityGrid(of, () => new Promise(resolve => setTimeout(resolve)))
     if (model.value === of) grid.value = made
-  }, { immediate: true })
+  }
+  watch([wanted, model], compute, { immediate: true })
 
-  const lines = computed(() => overlay.value && grid.value ? sensitivityLines(grid.value, overlay.value) : null)
+  const lines = computed(() => overlay.value && grid.value && sums.value ? sums.value.sensitivityLines(grid.value, overlay.value) : null)
   // One drawing a frame while the longitude is turned.
   let frame = 0
   const draw = () => {
     frame = 0
-    picture.value?.set('overlay-lines', lineFeatures(lines.value?.middle ?? []))
+    if (sums.value) picture.value?.set('overlay-lines', sums.value.lineFeatures(lines.value?.middle ?? []))
   }
   watch([lines, picture], () => {
     if (picture.value) frame ||= requestAnimationFrame(draw)
@@ -56,7 +63,8 @@ export function useSensitivityOverlay({ chart, picture, model, cursor }: Setting
   const middle = shallowRef<Position | null>(null)
   const place = computed(() => cursor.value ?? pointer.value ?? middle.value)
   const effect = computed(() => {
-    if (!overlay.value || !model.value || !place.value) return null
+    if (!overlay.value || !model.value || !place.value || !sums.value) return null
+    const { responseAtPlace, mapSettings } = sums.value
     return effectOf(overlay.value, responseAtPlace(place.value[0], place.value[1], model.value, mapSettings(model.value)))
   })
   watch(chart, (map, _, onCleanup) => {
@@ -92,7 +100,10 @@ export function useSensitivityOverlay({ chart, picture, model, cursor }: Setting
     overlay, lines, place, effect,
     /** The middle of the map is what the keyboard reads. */
     byKeys: computed(() => overlay.value !== null && !cursor.value && !pointer.value && middle.value !== null),
-    ocean: computed(() => model.value ? mapSettings(model.value).ocean : null),
+    ocean: computed(() => model.value?.defaultOcean ?? null),
+    /** What computes the lines did not arrive; `again` asks once more. */
+    failed,
+    again: compute,
     choose: (kind: Overlay['kind'] | null) => {
       turned.value = null
       return go({ overlay: kind ?? undefined, towards: undefined })
