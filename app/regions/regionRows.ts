@@ -1,6 +1,6 @@
 import { kindTexts } from '#shared/text/kinds'
 import { regionKinds, type RegionKind } from '#shared/types/domain'
-import type { RegionItem } from './types'
+import type { RegionLine } from './types'
 
 export const sortKeys = ['name', 'kind', 'agency', 'area', 'mass', 'day', 'drift', 'span', 'version'] as const
 export type SortKey = typeof sortKeys[number]
@@ -25,7 +25,7 @@ export function kindOfQuery(text: unknown): RegionKind | null {
 }
 
 /** What a column sorts by; null goes last either way. */
-function sortValue(region: RegionItem, key: SortKey): string | number | null {
+function sortValue(region: RegionLine, key: SortKey): string | number | null {
   switch (key) {
     case 'name': return region.name
     case 'kind': return kindTexts[region.kind]
@@ -39,7 +39,7 @@ function sortValue(region: RegionItem, key: SortKey): string | number | null {
   }
 }
 
-export function sortedRegions(regions: readonly RegionItem[], { key, descending }: Sorting): RegionItem[] {
+export function sortedRegions(regions: readonly RegionLine[], { key, descending }: Sorting): RegionLine[] {
   const keyed = regions.map(region => ({ region, value: sortValue(region, key) }))
   keyed.sort((a, b) => {
     if (a.value === null || b.value === null) return (a.value === null ? 1 : 0) - (b.value === null ? 1 : 0)
@@ -50,7 +50,7 @@ export function sortedRegions(regions: readonly RegionItem[], { key, descending 
 }
 
 /** Regions of a kind whose name, agency or kind holds every word that was typed. */
-export function filteredRegions(regions: readonly RegionItem[], kind: RegionKind | null, text: string): RegionItem[] {
+export function filteredRegions(regions: readonly RegionLine[], kind: RegionKind | null, text: string): RegionLine[] {
   const words = text.toLocaleLowerCase('en').split(/\s+/).filter(Boolean)
   return regions.filter((region) => {
     if (kind && region.kind !== kind) return false
