@@ -35,7 +35,6 @@ describe('the scripts of a page', () => {
     expect(page.text).toContain('Draw a region')
     const scripts = scriptsOf(page.text)
     expect(scripts.filter(isMapLibrary)).toEqual([])
-    expect(scripts.some(script => textOf(script).includes('Regions coloured by'))).toBe(true)
     expect(page.text).not.toContain('rel="prefetch"')
   })
 })
