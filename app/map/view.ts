@@ -4,6 +4,8 @@ import { polygonsOf } from '#shared/geo/parts'
 import type { Outline, Position } from '#shared/types/domain'
 
 export const tilePixels = 512
+/** Latitude at which the Mercator projection's square ends. */
+export const mercatorEdgeDeg = 85.0511287798066
 /** Half the field of view of the camera, as a part of the height: 0.5 / tan(36.87° / 2) = 1.5. */
 export const cameraHeights = 1.5
 /** Part of the smaller side of the map that what is shown may fill. */
@@ -15,9 +17,14 @@ export function sizeOf(map: Chart): { width: number, height: number } {
   return { width: Math.max(1, clientWidth), height: Math.max(1, clientHeight) }
 }
 
+/** Part of the equator's scale that a zoom means at a centre latitude; beyond the Mercator square's edge the globe keeps its size. */
+function zoomScale(latitudeDeg: number): number {
+  return Math.cos(Math.min(mercatorEdgeDeg, Math.abs(latitudeDeg)) * Math.PI / 180)
+}
+
 /** Radius of the globe itself in pixels, seen from far away, at a zoom and centre latitude. */
 export function globeRadius(zoom: number, latitudeDeg: number): number {
-  return tilePixels * 2 ** zoom / (2 * Math.PI * Math.cos(latitudeDeg * Math.PI / 180))
+  return tilePixels * 2 ** zoom / (2 * Math.PI * zoomScale(latitudeDeg))
 }
 
 /** Radius of the globe's edge on the screen in pixels, the camera being near; null for the flat map. */
@@ -35,7 +42,7 @@ function wholeGlobeZoom(map: Chart): number {
   const camera = cameraHeights * height
   // limb = c r / √((c + r)² − r²) solved for r.
   const radius = wanted * (wanted + Math.hypot(wanted, camera)) / camera
-  return Math.log2(radius * 2 * Math.PI * Math.cos(map.getCenter().lat * Math.PI / 180) / tilePixels)
+  return Math.log2(radius * 2 * Math.PI * zoomScale(map.getCenter().lat) / tilePixels)
 }
 
 /** Zoom at which the whole Earth is in view: the globe with a margin, the flat map from edge to edge. */
@@ -92,9 +99,9 @@ export function viewOf(map: Chart, outlines: readonly Outline[]): { center: Posi
   const reach = Math.max(1, ...places.map(place => arcDeg(center, place)))
   const { width, height } = sizeOf(map)
   const globe = map.getProjection()?.type === 'globe'
-  const whole = wholeZoom(map) + (globe ? Math.log2(Math.cos(center[1] * Math.PI / 180) / Math.cos(map.getCenter().lat * Math.PI / 180)) : 0)
+  const whole = wholeZoom(map) + (globe ? Math.log2(zoomScale(center[1]) / zoomScale(map.getCenter().lat)) : 0)
   if (reach > 60) return { center, zoom: whole }
   const radius = fill * Math.min(width, height) / Math.sin(reach * Math.PI / 180)
-  const zoom = Math.log2(radius * 2 * Math.PI * Math.cos(center[1] * Math.PI / 180) / tilePixels)
+  const zoom = Math.log2(radius * 2 * Math.PI * zoomScale(center[1]) / tilePixels)
   return { center, zoom: Math.min(6.5, Math.max(whole, zoom - 0.6)) }
 }

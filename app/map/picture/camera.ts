@@ -1,5 +1,5 @@
 import type { Map as Chart } from 'maplibre-gl'
-import { cameraHeights, globeRadius, limbRadius, sizeOf, tilePixels } from '../view'
+import { cameraHeights, globeRadius, limbRadius, mercatorEdgeDeg, sizeOf, tilePixels } from '../view'
 
 /** The globe seen from near: rows of the turn to east, north and up of its middle, lengths in pixels. */
 export interface GlobeCamera {
@@ -51,6 +51,6 @@ export function mercatorX(lonDeg: number): number {
 
 /** Latitudes beyond the square's edge stand on it. */
 export function mercatorY(latDeg: number): number {
-  const sin = Math.sin(Math.max(-85.0511287798066, Math.min(85.0511287798066, latDeg)) * Math.PI / 180)
+  const sin = Math.sin(Math.max(-mercatorEdgeDeg, Math.min(mercatorEdgeDeg, latDeg)) * Math.PI / 180)
   return 0.5 - Math.log((1 + sin) / (1 - sin)) / (4 * Math.PI)
 }

@@ -61,11 +61,13 @@ function filledArea(polygon: readonly Path[], camera: Camera): number {
 }
 
 const centres: Position[] = [[0, 0], [-30, 25], [179, -60], [90, 85], [-100, -88]]
-const radiusAt = (zoom: number, lat: number) => 512 * 2 ** zoom / (2 * Math.PI * Math.cos(lat * Math.PI / 180))
+/** What a zoom means: the map library's `planetScaleAtLatitude`, which ends with the Mercator square. */
+const scaleAt = (lat: number) => Math.cos(Math.min(85.0511287798066, Math.abs(lat)) * Math.PI / 180)
+const radiusAt = (zoom: number, lat: number) => 512 * 2 ** zoom / (2 * Math.PI * scaleAt(lat))
 
 describe('the camera of the canvas', () => {
   it.each(centres)('puts places of the globe where the vertical perspective does, seen from %d, %d', (...centre) => {
-    const zoom = 0.6 - Math.log2(1 / Math.cos(centre[1] * Math.PI / 180))
+    const zoom = 0.6 + Math.log2(scaleAt(centre[1]))
     const camera = cameraOf(chartAt(true, centre, zoom))
     const project = perspective(centre, radiusAt(zoom, centre[1]), 1.5 * size.height / radiusAt(zoom, centre[1]))
     fc.assert(fc.property(fc.double({ min: -180, max: 180, noNaN: true }), fc.double({ min: -90, max: 90, noNaN: true }), (lon, lat) => {
@@ -110,7 +112,7 @@ describe('filling on the globe', () => {
   const disc = (lon: number, lat: number, reach: number): Outline => ({ type: 'Polygon', coordinates: [Array.from({ length: 61 }, (_, k): Position => [lon + reach * Math.cos(k * Math.PI / 30), lat + reach * Math.sin(k * Math.PI / 30)])] })
 
   it.each(centres)('covers as many pixels of each continent as d3-geo, seen from %d, %d', (...centre) => {
-    const zoom = 0.4 + Math.log2(Math.cos(centre[1] * Math.PI / 180))
+    const zoom = 0.4 + Math.log2(scaleAt(centre[1]))
     const radius = radiusAt(zoom, centre[1])
     const camera = cameraOf(chartAt(true, centre, zoom))
     const measure = geoPath(perspective(centre, radius, 1.5 * size.height / radius))
@@ -127,7 +129,7 @@ describe('filling on the globe', () => {
 
   it('covers as many pixels of a region anywhere as d3-geo, also behind and round the point opposite to the eye', () => {
     fc.assert(fc.property(fc.integer({ min: -140, max: 140 }), fc.integer({ min: -45, max: 45 }), fc.integer({ min: 2, max: 38 }), fc.constantFrom(...centres), (lon, lat, reach, centre) => {
-      const zoom = Math.log2(Math.cos(centre[1] * Math.PI / 180))
+      const zoom = Math.log2(scaleAt(centre[1]))
       const radius = radiusAt(zoom, centre[1])
       const [rings] = (displayShape(disc(lon, lat, reach)).fill as { coordinates: Position[][][] }).coordinates
       const expected = geoPath(perspective(centre, radius, 1.5 * size.height / radius)).area({ type: 'Polygon', coordinates: rings!.map(ring => [...ring].reverse()) })
