@@ -43,7 +43,7 @@ export function sortedRegions(regions: readonly RegionLine[], { key, descending 
   const keyed = regions.map(region => ({ region, value: sortValue(region, key) }))
   keyed.sort((a, b) => {
     if (a.value === null || b.value === null) return (a.value === null ? 1 : 0) - (b.value === null ? 1 : 0)
-    const order = typeof a.value === 'string' ? a.value.localeCompare(b.value as string, 'en') : a.value - (b.value as number)
+    const order = typeof a.value === 'string' ? a.value.localeCompare(b.value as string, 'en', { numeric: true }) : a.value - (b.value as number)
     return descending ? -order : order
   })
   return keyed.map(k => k.region)

@@ -36,7 +36,7 @@ export function listRows(regions: readonly RegionItem[], colouring: Colouring, m
 }
 
 function trendRows(regions: readonly RegionItem[], colouring: Colouring): ListRow[] {
-  return [...regions].sort((a, b) => a.name.localeCompare(b.name, 'en')).map((region) => {
+  return [...regions].sort((a, b) => a.name.localeCompare(b.name, 'en', { numeric: true })).map((region) => {
     const value = quantityOf(region, trendColouring(colouring))
     const towards = colouring === 'pole' && region.trend && region.trend.directionDegEast !== null ? `, pole to ${formatLongitude(region.trend.directionDegEast)}` : ''
     return {
