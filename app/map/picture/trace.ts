@@ -72,15 +72,22 @@ export function planeRing(path: Path): BoundedRing {
   return ring
 }
 
+const along = { east: 0, north: 0, up: 0 }
+
+/** A vector along the camera's axes. The same object is given each time: this is called for every vertex of every frame. */
+function turned(turn: readonly number[], vectors: Float64Array, k: number): Readonly<typeof along> {
+  const [x, y, z] = [vectors[k]!, vectors[k + 1]!, vectors[k + 2]!]
+  along.east = turn[0]! * x + turn[1]! * y
+  along.north = turn[3]! * x + turn[4]! * y + turn[5]! * z
+  along.up = turn[6]! * x + turn[7]! * y + turn[8]! * z
+  return along
+}
+
 function globeRing(pen: Pen, vectors: Float64Array, { turn, radius, eye, horizon, limb, width, height }: GlobeCamera): void {
-  const [e0, e1, , n0, n1, n2, u0, u1, u2] = turn as [number, number, number, number, number, number, number, number, number]
   const [cx, cy] = [width / 2, height / 2]
   let before = Number.NaN
   for (let k = 0; k < vectors.length; k += 3) {
-    const [x, y, z] = [vectors[k]!, vectors[k + 1]!, vectors[k + 2]!]
-    const east = e0 * x + e1 * y
-    const north = n0 * x + n1 * y + n2 * z
-    const up = u0 * x + u1 * y + u2 * z
+    const { east, north, up } = turned(turn, vectors, k)
     if (up > horizon) {
       const scale = eye * radius / (eye + radius * (1 - up))
       put(pen, k, cx + scale * east, cy - scale * north)
@@ -105,15 +112,11 @@ function put(pen: Pen, k: number, x: number, y: number): void {
 }
 
 function globeLine(pen: Pen, vectors: Float64Array, { turn, radius, eye, horizon, limb, width, height }: GlobeCamera): void {
-  const [e0, e1, , n0, n1, n2, u0, u1, u2] = turn as [number, number, number, number, number, number, number, number, number]
   const [cx, cy] = [width / 2, height / 2]
   let inSight = false
   let hidden: { x: number, y: number } | null = null
   for (let k = 0; k < vectors.length; k += 3) {
-    const [x, y, z] = [vectors[k]!, vectors[k + 1]!, vectors[k + 2]!]
-    const east = e0 * x + e1 * y
-    const north = n0 * x + n1 * y + n2 * z
-    const up = u0 * x + u1 * y + u2 * z
+    const { east, north, up } = turned(turn, vectors, k)
     if (up > horizon) {
       const scale = eye * radius / (eye + radius * (1 - up))
       if (!inSight && hidden) pen.moveTo(hidden.x, hidden.y)
@@ -159,9 +162,8 @@ export function standsAt(path: Path, camera: Camera): { x: number, y: number }[]
     return copiesOf(path, camera).map(copy => ({ x: camera.left + (x + copy) * camera.world, y: camera.top + y * camera.world }))
   }
   const { turn, radius, eye, horizon, width, height } = camera
-  const [x, y, z] = path.vectors(0) as unknown as [number, number, number]
-  const up = turn[6]! * x + turn[7]! * y + turn[8]! * z
+  const { east, north, up } = turned(turn, path.vectors(0), 0)
   if (up <= horizon) return []
   const scale = eye * radius / (eye + radius * (1 - up))
-  return [{ x: width / 2 + scale * (turn[0]! * x + turn[1]! * y), y: height / 2 - scale * (turn[3]! * x + turn[4]! * y + turn[5]! * z) }]
+  return [{ x: width / 2 + scale * east, y: height / 2 - scale * north }]
 }
