@@ -1,7 +1,8 @@
-import { desc, eq } from 'drizzle-orm'
+import { desc, eq, sql } from 'drizzle-orm'
 import { ulid } from 'ulid'
 import { can, type Action, type Principal, type Resource } from '#shared/permissions'
-import { schema, type Reader } from '../database/client'
+import { schema, type Db, type Reader } from '../database/client'
+import { prepared } from '../database/prepared'
 import { Problem } from '../utils/problem'
 import type { Context } from './context'
 import { canonicalJson, sha256Hex } from './hash'
@@ -79,7 +80,9 @@ export function newId(): string {
   return ulid()
 }
 
+const nameStatement = (db: Db) => db.select({ name: schema.user.name }).from(schema.user).where(eq(schema.user.id, sql.placeholder('id'))).prepare()
+
 export function nameOfUser(context: Context, id: string | null): string | null {
   if (!id) return null
-  return context.db.select({ name: schema.user.name }).from(schema.user).where(eq(schema.user.id, id)).get()?.name ?? null
+  return prepared(context.db, nameStatement).get({ id })?.name ?? null
 }

@@ -4,7 +4,7 @@ import type { Measured, Outline } from '#shared/types/domain'
 import { schema } from '../database/client'
 import type { Context } from './context'
 import { derivedOfRegion, latestOutline, seriesOfRegion } from './regions'
-import { versionsOf } from './seriesStore'
+import { latestVersion } from './seriesStore'
 
 /** One region's trend of mass with the parts of its error, and what a gigatonne of it does to the quantity that is summed. */
 export interface TrendPart {
@@ -52,7 +52,7 @@ export function regionTotal(context: Context, workspaceId: string) {
   const regions = rows.map((row) => {
     const outline = latestOutline(context, row.id)
     const series = seriesOfRegion(context, row.id)
-    const version = series ? versionsOf(context, series.id)[0] : undefined
+    const version = series ? latestVersion(context, series.id) : null
     return { row, outline, hasSeries: Boolean(version), ...derivedOfRegion(context, outline, version?.id ?? null) }
   })
   const trends = regions.flatMap(({ trend, perGt }) => trend ? [{ ...trend, perGt }] : [])

@@ -1,4 +1,4 @@
-import { and, desc, eq, inArray, isNotNull, isNull, lt } from 'drizzle-orm'
+import { and, desc, eq, inArray, isNotNull, isNull, lt, sql } from 'drizzle-orm'
 import type { contracts } from '#shared/api/contracts'
 import type { BodyOf } from '#shared/api/contract'
 import { contourOf } from '#shared/earth/contour'
@@ -7,7 +7,8 @@ import { requireOutline } from '#shared/geo/outline'
 import { patternLeftOut } from '#shared/text/gridPattern'
 import { can, type Principal } from '#shared/permissions'
 import type { OceanMode, Outline } from '#shared/types/domain'
-import { schema, type Reader } from '../database/client'
+import { schema, type Db, type Reader } from '../database/client'
+import { prepared } from '../database/prepared'
 import { Problem } from '../utils/problem'
 import { authorise, change, nameOfUser, newId } from './change'
 import type { Context } from './context'
@@ -16,7 +17,7 @@ import { canonicalJson, sha256Hex } from './hash'
 import { pageOf } from './paging'
 import { requireAgency } from './people'
 import { defaultSettings, effectsByOcean, perGigatonne, trendOf, trendView, type PerGt } from './predictions'
-import { massSeries, versionRow, versionsOf, versionView } from './seriesStore'
+import { latestVersion, massSeries, versionRow, versionsOf, versionView } from './seriesStore'
 
 export type RegionRow = typeof schema.region.$inferSelect
 type OutlineRow = typeof schema.outlineVersion.$inferSelect
@@ -31,15 +32,20 @@ export function outlinesOf(context: Context, regionId: string): OutlineRow[] {
   return context.db.select().from(schema.outlineVersion).where(eq(schema.outlineVersion.regionId, regionId)).orderBy(desc(schema.outlineVersion.n)).all()
 }
 
+const outlineStatement = (db: Db) => db.select().from(schema.outlineVersion).where(eq(schema.outlineVersion.regionId, sql.placeholder('regionId')))
+  .orderBy(desc(schema.outlineVersion.n)).limit(1).prepare()
+const seriesStatement = (db: Db) => db.select().from(schema.series)
+  .where(and(eq(schema.series.regionId, sql.placeholder('regionId')), isNull(schema.series.deletedAt))).prepare()
+const agencyStatement = (db: Db) => db.select().from(schema.agency).where(eq(schema.agency.id, sql.placeholder('id'))).prepare()
+
 export function latestOutline(context: Context, regionId: string): OutlineRow & { geometry: Outline } {
-  const row = context.db.select().from(schema.outlineVersion).where(eq(schema.outlineVersion.regionId, regionId))
-    .orderBy(desc(schema.outlineVersion.n)).limit(1).get()
+  const row = prepared(context.db, outlineStatement).get({ regionId })
   if (!row) throw new Problem(404, 'not-found', 'This region has no outline.')
   return { ...row, geometry: JSON.parse(row.geojson) as Outline }
 }
 
 export function seriesOfRegion(context: Context, regionId: string) {
-  return context.db.select().from(schema.series).where(and(eq(schema.series.regionId, regionId), isNull(schema.series.deletedAt))).get() ?? null
+  return prepared(context.db, seriesStatement).get({ regionId }) ?? null
 }
 
 interface Derived { perGt: PerGt, centroid: [number, number], trend: ReturnType<typeof trendOf> }
@@ -63,9 +69,9 @@ export function derivedOfRegion(context: Context, outline: OutlineRow & { geomet
 
 export function regionView(context: Context, principal: Principal | null, row: RegionRow) {
   const outline = latestOutline(context, row.id)
-  const agency = context.db.select().from(schema.agency).where(eq(schema.agency.id, row.agencyId)).get()!
+  const agency = prepared(context.db, agencyStatement).get({ id: row.agencyId })!
   const series = seriesOfRegion(context, row.id)
-  const latest = series ? versionsOf(context, series.id)[0] ?? null : null
+  const latest = series ? latestVersion(context, series.id) : null
   const { centroid, trend } = derivedOfRegion(context, outline, latest?.id ?? null)
   return {
     id: row.id, revision: row.revision, name: row.name, kind: row.kind, note: row.note,

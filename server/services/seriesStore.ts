@@ -1,7 +1,8 @@
-import { and, desc, eq, isNull } from 'drizzle-orm'
+import { and, desc, eq, isNull, sql } from 'drizzle-orm'
 import type { SeriesFacts } from '#shared/series/facts'
 import type { MassSeries } from '#shared/types/run'
-import { schema, type Reader } from '../database/client'
+import { schema, type Db, type Reader } from '../database/client'
+import { prepared } from '../database/prepared'
 import { Problem } from '../utils/problem'
 import { nameOfUser } from './change'
 import type { Context } from './context'
@@ -27,6 +28,13 @@ export function versionRow(context: Context, id: string): VersionRow {
 
 export function versionsOf(context: Context, seriesId: string): VersionRow[] {
   return context.db.select().from(schema.seriesVersion).where(eq(schema.seriesVersion.seriesId, seriesId)).orderBy(desc(schema.seriesVersion.n)).all()
+}
+
+const latestStatement = (db: Db) => db.select().from(schema.seriesVersion).where(eq(schema.seriesVersion.seriesId, sql.placeholder('seriesId')))
+  .orderBy(desc(schema.seriesVersion.n)).limit(1).prepare()
+
+export function latestVersion(context: Context, seriesId: string): VersionRow | null {
+  return prepared(context.db, latestStatement).get({ seriesId }) ?? null
 }
 
 export function factsOf({ facts }: Pick<VersionRow, 'facts'>): SeriesFacts | null {
