@@ -9,6 +9,7 @@ import type { Context } from './context'
 import { runPicture } from './pictures'
 import { mapFile, runMap } from './report/mapPicture'
 import { reportPdf } from './report/reportPdf'
+import type { ReportData } from './report/types'
 import { runInputOf, runResultOf, sourcesOf, type RunRow } from './runs'
 
 export type ExportFile = 'report.pdf' | 'budget.csv' | 'series.csv' | 'regions.geojson' | 'map.svg' | 'map.png' | 'run.json'
@@ -18,7 +19,7 @@ export const exportTypes: Record<ExportFile, string> = {
   'regions.geojson': 'application/geo+json', 'map.svg': 'image/svg+xml', 'map.png': 'image/png', 'run.json': 'application/json',
 }
 
-interface ExportSource { run: RunRow, comparison: Comparison | null, observed: { name: string, source: string, originalSha256: string } | null }
+interface ExportSource { run: RunRow, comparison: Comparison | null, observed: { name: string, source: string, originalSha256: string } | null, edition?: ReportData['edition'] }
 
 /** One of the files that a run can be taken away in. */
 export async function exportRun(context: Context, file: ExportFile, source: ExportSource): Promise<Uint8Array | string> {
@@ -40,7 +41,7 @@ export async function exportRun(context: Context, file: ExportFile, source: Expo
       return reportPdf({
         result, comparison, scenarioName: run.name, workspaceName: workspace.name, runNumber: run.n, runHash: run.resultSha256, inputSha256: run.inputSha256,
         preparedBy: nameOfUser(context, run.createdBy) ?? '', preparedAt: run.createdAt, sources: runInputOf(run).regions, invented: workspace.invented,
-        observed: source.observed,
+        observed: source.observed, edition: source.edition,
       })
     }
   }

@@ -8,7 +8,7 @@ import { reportBudget } from './budget'
 import { reportBeam, reportChart, reportDrift } from './figures'
 import { drawMap, runMap } from './mapPicture'
 import { derivedBlocks, modelUncertaintyBlocks } from './physics'
-import { cautionBlocks, comparisonBlocks, methodBlocks, overlapBlocks, recordBlocks, runningFoot, runningHead, sourceBlocks } from './sections'
+import { cautionBlocks, comparisonBlocks, methodBlocks, overlapBlocks, recordBlocks, runningFoot, runningHead, sourceBlocks, withdrawalBlocks } from './sections'
 import { caution, figure, page, paragraph, sectionHead, size, together } from './style'
 import type { Block, ReportData } from './types'
 
@@ -19,6 +19,7 @@ export function reportDocument(data: ReportData): Block {
   const span = formatSpan(result.span.fromMjd, result.span.toMjd)
   const overTime = comparison ? `observed, model and residual; ${comparison.reduction?.chartNote ?? 'trend left in'}` : 'model with one sigma; trend left in'
   const content: Block[] = [
+    ...withdrawalBlocks(data),
     { text: finding, fontSize: size.head, bold: true, lineHeight: 1.15, margin: [0, 10, 0, 8] },
     paragraph(`${workspaceName}. Scenario “${scenarioName}”, run ${runNumber}: ${settingsLine(result.settings)}. Calculated, not observed.${invented ? ' Invented data.' : ''}`, { color: print.soft }),
     ...(comparison ? remainderSentences(comparison).map(text => paragraph(text)) : []),

@@ -129,8 +129,10 @@ export function cautionBlocks({ result, comparison, invented }: ReportData): Blo
 /** Who and when, and what a reader needs to make the figures again. */
 export function recordBlocks(data: ReportData): Block[] {
   const { result, runHash, inputSha256, preparedBy, preparedAt, runNumber, scenarioName, workspaceName } = data
+  const { edition } = data
   const rows: [string, string][] = [
     ['Account', workspaceName],
+    ...(edition ? [['Edition', `${edition.title}, edition ${edition.n}, read at /p/${edition.slug}/${edition.n}`], ['Published', formatInstant(edition.createdAt)], ...(edition.licence ? [['Licence', edition.licence]] : [])] as [string, string][] : []),
     ['Scenario and run', `${scenarioName}, run ${runNumber}`],
     ['Prepared by', preparedBy],
     ['Run on', formatInstant(preparedAt)],
@@ -143,10 +145,27 @@ export function recordBlocks(data: ReportData): Block[] {
   return [together(textTable({ head: sectionHead('Record', 'the same input gives the same figures'), columns: [], rows, widths: [110, '*'] }))]
 }
 
+/** A withdrawn edition says so before its finding, with the reason. */
+export function withdrawalBlocks({ edition }: ReportData): Block[] {
+  if (!edition?.withdrawn) return []
+  const { at, reason } = edition.withdrawn
+  return [{
+    stack: [
+      { text: `This edition was withdrawn on ${formatInstant(at)}.`, bold: true, color: print.loss },
+      { text: reason, margin: [0, 3, 0, 3], lineHeight: 1.2 },
+      { text: 'It stays as it was so that what was cited can be read. Do not quote its figures.', color: print.soft },
+    ],
+    margin: [0, 10, 0, 4],
+    unbreakable: true,
+  }]
+}
+
 /** Runs along the top of every page but the first, and along the foot of all. */
-export function runningHead({ scenarioName, runNumber, invented }: ReportData, pageNumber: number): Block {
-  const mark = invented ? [{ text: 'Invented data', bold: true, alignment: 'right' }] : []
-  const left = pageNumber === 1 ? { text: 'Counterpoise', bold: true } : { text: `Counterpoise  ${scenarioName}, run ${runNumber}`, color: print.soft }
+export function runningHead({ scenarioName, runNumber, invented, edition }: ReportData, pageNumber: number): Block {
+  const marks = [edition?.withdrawn ? 'Withdrawn' : '', invented ? 'Invented data' : ''].filter(Boolean).join(', ')
+  const mark = marks ? [{ text: marks, bold: true, alignment: 'right', width: 130 }] : []
+  const name = edition ? `${edition.title}, edition ${edition.n}` : `${scenarioName}, run ${runNumber}`
+  const left = pageNumber === 1 ? { text: 'Counterpoise', bold: true } : { text: `Counterpoise  ${name}`, color: print.soft }
   return { columns: [left, ...mark], margin: [page.margin.left, 28, page.margin.right, 0], fontSize: size.small }
 }
 

@@ -39,6 +39,8 @@ export interface ReportData {
   observed?: { name: string, source: string, originalSha256: string } | null
   /** Demo: marked on every page. */
   invented: boolean
+  /** Of a published edition: what it is called and where it is read; a withdrawal is marked on every page. ISO instants. */
+  edition?: { title: string, slug: string, n: number, licence: string, createdAt: string, withdrawn: { reason: string, at: string } | null } | null
 }
 
 /** Font files of a report, absolute paths of TrueType files. */

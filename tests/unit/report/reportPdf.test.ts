@@ -66,6 +66,16 @@ describe('the report', () => {
     expect(report.text).toContain('Synthetic, made from seed 7')
   })
 
+  it('of a withdrawn edition says so first, with the reason, and on every page', async () => {
+    const edition = { title: 'Six regions', slug: 'six-regions', n: 2, licence: 'CC BY 4.0', createdAt: '2026-03-17T09:00:00.000Z', withdrawn: { at: '2026-04-02T08:30:00.000Z', reason: 'One series was in the wrong unit.' } }
+    const { pages, text } = await printed({ ...data, edition })
+    expect(flat(pages[0]!)).toMatch(/This edition was withdrawn on 2 April 2026, 08:30 UTC\. *One series was in the wrong unit\./)
+    expect(flat(pages[0]!).indexOf('withdrawn')).toBeLessThan(flat(pages[0]!).indexOf('calculated to'))
+    for (const page of pages) expect(page).toContain('Withdrawn')
+    for (const told of ['Six regions, edition 2, read at /p/six-regions/2', '17 March 2026, 09:00 UTC', 'CC BY 4.0']) expect(text).toContain(told)
+    expect(report.text).not.toMatch(/withdrawn/i)
+  }, 60_000)
+
   it('holds the budget with its uncertainties', () => {
     for (const figures of ['+5.15 ± 0.36', '+3.47 ± 0.45', '+0.515 ± 0.036', '−214 ± 15', '+9.63 ± 0.60', '6.17 ± 0.40', '30° ± 7° W', '−31 ± 12']) {
       expect(report.text.replace(/ +/g, ' ')).toContain(figures)
