@@ -4,7 +4,15 @@ import type { Outline } from '#shared/types/domain'
 import { outlineEffect } from './outlineEffect'
 
 /** What the server found for a stored outline: area and, per gigatonne gained, the day (µs) and the pole (mas). */
-export interface ServerFigures { areaKm2: number, ocean: string, lodMicroseconds: number, chi1Mas: number, chi2Mas: number }
+export interface ServerFigures {
+  areaKm2: number
+  ocean: string
+  lodMicroseconds: number
+  chi1Mas: number
+  chi2Mas: number
+  /** Those of the pattern of a grid, and not of an even spread. */
+  patterned?: boolean
+}
 
 /** The largest that a gigatonne can do with the sea spread evenly (Gross): differences are parts of these, never of a component that may vanish. */
 const scale = { lodMicroseconds: 0.0254, chiMas: 0.0185 }
@@ -29,6 +37,9 @@ export function agreementWords(outline: Outline, model: EarthModel, server: Serv
   }
   const difference = differenceOf(outline, model, server)
   if (difference <= tolerance) return { agrees: true, text: 'Stored. The server computed area and effects anew and agrees with what was shown here to one part in 10⁹.' }
+  if (server.patterned) {
+    return { agrees: true, text: 'Stored. The server’s figures are those of the pattern of the region’s grid, where those shown here spread the mass evenly. The server’s figures stand.' }
+  }
   return {
     agrees: false,
     text: `Stored. The server’s figures differ from those shown here by ${formatScientific(difference)} of the largest effect: this page was loaded with another version of the Earth model. The server’s figures stand; load the page anew.`,

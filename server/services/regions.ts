@@ -125,11 +125,13 @@ export function readRegion(context: Context, principal: Principal | null, id: st
     .filter(o => o.a === id || o.b === id)
     .map(o => o.a === id ? { id: o.b, areaKm2: o.areaKm2, share: o.shareOfA, shareOfOther: o.shareOfB } : { id: o.a, areaKm2: o.areaKm2, share: o.shareOfB, shareOfOther: o.shareOfA })
   const series = seriesOfRegion(context, id)
+  const pattern = patternOfVersion(context, view.series?.latest.id ?? null, outline.sha256)
   return {
     ...view,
+    patterned: Boolean(pattern),
     perGt: derivedOfRegion(context, outline, view.series?.latest.id ?? null).perGt,
     settings: { ...defaultSettings(context) },
-    effects: effectsByOcean(context, outline.geometry, patternOfVersion(context, view.series?.latest.id ?? null, outline.sha256)),
+    effects: effectsByOcean(context, outline.geometry, pattern),
     outlines: outlinesOf(context, id).map(o => ({ n: o.n, areaKm2: o.areaM2 / 1e6, sha256: o.sha256, createdAt: o.createdAt, createdBy: nameOfUser(context, o.createdBy) })),
     versions: series ? versionsOf(context, series.id).map(v => versionView(context, v)) : [],
     overlaps: overlaps.map(o => ({ ...o, name: names.get(o.id) ?? '' })),

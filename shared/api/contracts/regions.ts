@@ -43,6 +43,8 @@ export const regionContracts = {
     answer: region.extend({
       perGt, outlines: z.array(z.object({ n: z.int(), areaKm2: z.number(), sha256, createdAt: z.string(), createdBy: z.string().nullable() })),
       versions: z.array(versionSummary), overlaps: z.array(z.object({ id: ulid, name: z.string(), areaKm2: z.number(), share: z.number(), shareOfOther: z.number() })), settings: z.looseObject({}),
+      /** Whether the newest series comes from a grid, so that effects are those of its pattern and not of an even spread. */
+      patterned: z.boolean(),
       /** Effect of one gigatonne gained with its derived quantities, by ocean response. */
       effects: z.array(perGt.extend({
         ocean: z.enum(oceanModes), deltaC21: z.number(), deltaS21: z.number(), geocentreMm: z.object({ x: z.number(), y: z.number(), z: z.number() }).nullable(),

@@ -17,6 +17,7 @@ describe('browser against server', () => {
     expect(differenceOf(outline, model, { ...server, areaKm2: server.areaKm2 * (1 + 1e-6) })).toBeCloseTo(1e-6, 9)
     expect(differenceOf(outline, model, { ...server, chi1Mas: server.chi1Mas + 1e-8 })).toBeCloseTo(1e-8 / 0.0185, 12)
     expect(agreementWords(outline, model, { ...server, chi2Mas: server.chi2Mas + 1e-8 })).toMatchObject({ agrees: false, text: expect.stringMatching(/5\.4\s×\s10⁻⁷/) })
+    expect(agreementWords(outline, model, { ...server, chi2Mas: server.chi2Mas + 1e-4, patterned: true })).toMatchObject({ agrees: true, text: expect.stringMatching(/pattern of the region’s grid/) })
     expect(agreementWords(outline, model, { ...server, ocean: 'fingerprint-rotation' }).text).toMatch(/another response of the ocean/)
   })
 })
