@@ -1,13 +1,10 @@
-import { Map as Chart, setWorkerUrl } from 'maplibre-gl'
+import { Map as Chart, setWorkerUrl, type MapOptions, type StyleSpecification } from 'maplibre-gl'
 import 'maplibre-gl/dist/maplibre-gl.css'
 import workerUrl from 'maplibre-gl/dist/maplibre-gl-worker.mjs?url'
 import type { Palette } from '#shared/design/tokens'
 import type { Outline } from '#shared/types/domain'
-import { mapImages } from './colouring/images'
-import { emptyStyle, mapStyle, type MapProjection } from './mapStyle'
-import { canvasPicture } from './picture/canvasPicture'
+import type { MapProjection } from './mapStyle'
 import type { MapPicture, Painter } from './picture/picture'
-import { webglPicture } from './picture/webglPicture'
 
 interface MapSetting {
   palette: Palette
@@ -18,14 +15,26 @@ interface MapSetting {
   painter?: Painter
 }
 
-/** A map in an element, looking straight down, north up; labels wait for the page's Noto Sans. */
-export async function createMap(container: HTMLElement, { palette, projection, land, painter }: MapSetting): Promise<{ map: Chart, picture: MapPicture }> {
-  await Promise.race([document.fonts.load('400 24px "Noto Sans"', 'Aµ−'), new Promise(resolve => setTimeout(resolve, 1500))])
-  const onCanvas = (painter ?? (drawnByProcessor() ? 'canvas' : 'webgl')) === 'canvas'
+/** A map in an element, looking straight down, north up; labels wait for the page's Noto Sans. Only the painter that is used is fetched. */
+export async function createMap(container: HTMLElement, { palette, projection, land, painter = drawnByProcessor() ? 'canvas' : 'webgl' }: MapSetting): Promise<{ map: Chart, picture: MapPicture }> {
+  const fonts = Promise.race([document.fonts.load('400 24px "Noto Sans"', 'Aµ−'), new Promise(resolve => setTimeout(resolve, 1500))])
+  if (painter === 'canvas') {
+    const [{ canvasPicture, emptyStyle }] = await Promise.all([import('./picture/canvasPicture'), fonts])
+    // Nothing is drawn on the library's own canvas, so it need have no pixels.
+    const map = await chartIn(container, emptyStyle(projection), { pixelRatio: 0.02 })
+    return { map, picture: canvasPicture(map, palette, land) }
+  }
+  const [{ webglPicture, webglStyle, giveImages }] = await Promise.all([import('./picture/webglPicture'), fonts])
+  const map = await chartIn(container, webglStyle(palette, projection), { canvasContextAttributes: { antialias: !drawnByProcessor() } }, chart => giveImages(chart, palette))
+  return { map, picture: webglPicture(map) }
+}
+
+/** `begun` has the map before its style is read. */
+async function chartIn(container: HTMLElement, style: StyleSpecification, more: Partial<MapOptions>, begun?: (map: Chart) => void): Promise<Chart> {
   setWorkerUrl(workerUrl)
   const map = new Chart({
     container,
-    style: onCanvas ? emptyStyle(projection) : mapStyle(palette, projection, location.origin),
+    style,
     center: [-30, 30],
     zoom: 1,
     minZoom: -2,
@@ -37,18 +46,13 @@ export async function createMap(container: HTMLElement, { palette, projection, l
     attributionControl: false,
     fadeDuration: 0,
     locale: { 'Map.Title': 'Map of the regions' },
-    // Nothing is drawn on it, so it need have no pixels.
-    ...onCanvas && { pixelRatio: 0.02 },
-    canvasContextAttributes: { antialias: !drawnByProcessor() }
+    ...more
   })
   map.touchZoomRotate.disableRotation()
   map.keyboard.disableRotation()
-  map.on('style.load', () => {
-    if (onCanvas) return
-    for (const [name, image] of mapImages(palette)) if (!map.hasImage(name)) map.addImage(name, image, { pixelRatio: 2 })
-  })
+  begun?.(map)
   await map.once('load')
-  return { map, picture: onCanvas ? canvasPicture(map, palette, land) : webglPicture(map) }
+  return map
 }
 
 /** Whether WebGL has no graphics processor here: the globe then takes half a second for each frame. */

@@ -8,11 +8,6 @@ import { collection } from './regionSources'
 
 export type MapProjection = 'globe' | 'flat'
 
-/** A map whose camera moves over nothing: what is seen is drawn elsewhere. */
-export function emptyStyle(projection: MapProjection): StyleSpecification {
-  return { version: 8, projection: { type: projection === 'globe' ? 'globe' : 'mercator' }, sources: {}, layers: [] }
-}
-
 /** The whole style: shipped tiles, graticule, regions and the outline being drawn. No glyphs: labels come from local Noto Sans. */
 export function mapStyle(palette: Palette, projection: MapProjection, origin: string): StyleSpecification {
   return {

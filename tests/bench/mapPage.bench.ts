@@ -1,4 +1,4 @@
-import { readdirSync, readFileSync, statSync } from 'node:fs'
+import { readFileSync } from 'node:fs'
 import { build } from 'esbuild'
 import type { Browser, Page } from 'playwright-core'
 import { launch, signInByForm, visit } from '../support/browser'
@@ -75,12 +75,6 @@ async function frameCost(browser: Browser): Promise<number[]> {
   return times
 }
 
-/** The largest script of the build, the map library, as it is sent: fetched after the page's text, by the map page alone. */
-function largestScriptKb(): number {
-  const folder = '.output/public/_nuxt'
-  return Math.max(...readdirSync(folder).filter(file => file.endsWith('.js.gz')).map(file => statSync(`${folder}/${file}`).size)) / 1000
-}
-
 /** The map with many outlines of 200 vertices in Chromium without a graphics processor: painted on a canvas, as there by itself, and by WebGL. */
 export async function run(): Promise<Figure[]> {
   const server = await startServer()
@@ -105,7 +99,6 @@ export async function run(): Promise<Figure[]> {
     const middle = (gaps: number[]) => gaps[Math.floor(gaps.length / 2)]!
     return [
       { name: 'a vertex of 500 moved in Chromium, 95th percentile', value: cost[Math.floor(0.95 * cost.length)]!, unit: 'ms', note: 'outline, faults and live answer, before painting; limit 4 ms' },
-      { name: 'the map library as it is sent, compressed', value: largestScriptKb(), unit: 'KB', note: 'the page’s own code comes on top; limit 350 KB' },
       { name: `map page with ${outlines} outlines ready for use`, value: ready, unit: 'ms' },
       { name: `between frames while the globe with ${outlines} outlines is dragged, median`, value: middle(many), unit: 'ms', note: 'painted by the processor alone; limit 33.4 ms' },
       { name: 'the same, 95th percentile', value: many[Math.floor(0.95 * many.length)]!, unit: 'ms' },

@@ -1,9 +1,10 @@
 import type { FeatureCollection } from 'geojson'
-import type { Map as Chart } from 'maplibre-gl'
+import type { Map as Chart, StyleSpecification } from 'maplibre-gl'
 import type { Palette } from '#shared/design/tokens'
 import { isInsideRing } from '#shared/geo/pointInRing'
 import type { Outline } from '#shared/types/domain'
 import { mapImages, overlapHatch } from '../colouring/images'
+import type { MapProjection } from '../mapStyle'
 import { toPlace } from '../view'
 import { cameraOf } from './camera'
 import { groundOf, type Ground } from './ground'
@@ -12,6 +13,11 @@ import { paintBorders, paintDraft, paintFills, paintGround, paintHatched, paintL
 import { sourceIds, type MapPicture, type SourceId } from './picture'
 import { shapesOf, type Shape } from './shapes'
 import { planeRing } from './trace'
+
+/** A map whose camera moves over nothing: what is seen is drawn elsewhere. */
+export function emptyStyle(projection: MapProjection): StyleSpecification {
+  return { version: 8, projection: { type: projection === 'globe' ? 'globe' : 'mercator' }, sources: {}, layers: [] }
+}
 
 /**
  * The map drawn on a plain canvas, for computers without a graphics processor: there WebGL takes half a second for a globe, this a

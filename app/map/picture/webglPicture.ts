@@ -1,9 +1,20 @@
-import type { GeoJSONSource, Map as Chart } from 'maplibre-gl'
+import type { GeoJSONSource, Map as Chart, StyleSpecification } from 'maplibre-gl'
 import type { Palette } from '#shared/design/tokens'
 import { mapImages } from '../colouring/images'
-import { mapLayers } from '../mapStyle'
+import { mapLayers, mapStyle, type MapProjection } from '../mapStyle'
 import { namesBesideTheGlobe } from './namesBesideTheGlobe'
 import type { MapPicture } from './picture'
+
+export function webglStyle(palette: Palette, projection: MapProjection): StyleSpecification {
+  return mapStyle(palette, projection, location.origin)
+}
+
+/** Gives a map its patterns as soon as its style asks for them. */
+export function giveImages(map: Chart, palette: Palette): void {
+  map.on('style.load', () => {
+    for (const [name, image] of mapImages(palette)) if (!map.hasImage(name)) map.addImage(name, image, { pixelRatio: 2 })
+  })
+}
 
 /** The layers of a map that stands. */
 export function webglPicture(map: Chart): MapPicture {
