@@ -12,6 +12,7 @@ import { MapLabels } from './mapLabels'
 import { paintBorders, paintDraft, paintFills, paintGround, paintHatched, paintLimb, paintOverlay } from './paint'
 import { sourceIds, type MapPicture, type SourceId } from './picture'
 import { shapesOf, type Shape } from './shapes'
+import { sharpness } from './sharpness'
 import { planeRing } from './trace'
 
 /** A map whose camera moves over nothing: what is seen is drawn elsewhere. */
@@ -38,15 +39,19 @@ export function canvasPicture(map: Chart, first: Palette, land: () => Promise<Ou
   let patterns = patternsOf(pen, palette)
   let ground: Ground = groundOf(null)
   let hovered: string | null = null
+  const sharp = sharpness()
+  let restless = false
   void land().then((outline) => {
     ground = groundOf(outline)
     map.triggerRepaint()
   })
 
   function draw(): void {
-    const camera = cameraOf(map)
-    // Smoothness goes before sharpness while the map moves.
-    const ratio = map.isMoving() ? 1 : Math.min(2, devicePixelRatio)
+    const screen = Math.min(2, devicePixelRatio)
+    const isMoving = map.isMoving()
+    const ratio = sharp.ratio(isMoving, performance.now(), screen)
+    const camera = cameraOf(map, ratio)
+    restless = isMoving
     fit(canvas, camera.width * ratio, camera.height * ratio)
     pen.setTransform(ratio, 0, 0, ratio, 0, 0)
     pen.fillStyle = palette.paper
@@ -54,17 +59,17 @@ export function canvasPicture(map: Chart, first: Palette, land: () => Promise<Ou
     paintGround(pen, ground, camera, palette)
     labels.arrange(shapes['region-labels'], shapes['overlay-lines'], camera, map.getZoom(), palette)
     paintOverlay(pen, shapes['overlay-lines'], camera, palette)
-    labels.paint(pen, 'ground', ratio)
+    labels.paint(pen, 'ground', ratio, screen)
     paintFills(pen, shapes['region-fills'], camera, palette, patterns)
     paintHatched(pen, shapes['overlap-fills'], camera, patterns(overlapHatch))
-    paintBorders(pen, shapes['region-lines'], camera, palette, hovered)
-    labels.paint(pen, 'regions', ratio)
+    paintBorders(pen, shapes['region-lines'], camera, palette, { hovered, hairline: isMoving ? 1 / ratio : null })
+    labels.paint(pen, 'regions', ratio, screen)
     paintLimb(pen, camera, palette)
     paintDraft(pen, { fill: shapes['draft-fill'], lines: shapes['draft-lines'], handles: shapes['draft-handles'] }, camera, palette)
   }
 
   map.on('render', draw)
-  map.on('idle', () => { if (devicePixelRatio > 1) draw() })
+  map.on('idle', () => { if (restless) draw() })
   draw()
   return {
     painter: 'canvas',

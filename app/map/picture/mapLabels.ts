@@ -38,14 +38,14 @@ export class MapLabels {
     this.shown = this.places.place(candidates, { width: camera.width, height: camera.height, limb: camera.kind === 'globe' ? camera.limb : null })
   }
 
-  /** Those of the Earth stand below all regions, those of regions above. */
-  paint(pen: CanvasRenderingContext2D, which: 'regions' | 'ground', ratio: number): void {
+  /** Those of the Earth stand below all regions, those of regions above. `ratio` dots of the canvas make a pixel, `screen` those of their own images. */
+  paint(pen: CanvasRenderingContext2D, which: 'regions' | 'ground', ratio: number, screen: number): void {
     for (const { candidate, x, y } of this.shown) {
       if ((candidate.region !== null) !== (which === 'regions')) continue
-      const image = this.imageOf(candidate, ratio)
+      const image = this.imageOf(candidate, screen)
       const centre = imageCentre(candidate.label)
       const snap = (at: number): number => Math.round(at * ratio) / ratio
-      pen.drawImage(image, snap(x - centre.x), snap(y - centre.y), image.width / ratio, image.height / ratio)
+      pen.drawImage(image, snap(x - centre.x), snap(y - centre.y), image.width / screen, image.height / screen)
     }
   }
 

@@ -5,8 +5,6 @@ import type { Path } from './path'
 /** What a line is traced on: a canvas, or anything that takes the same calls. */
 export type Pen = Pick<CanvasRenderingContext2D, 'moveTo' | 'lineTo' | 'closePath' | 'arc'>
 
-/** Vertices nearer to one another than this many pixels are left out. */
-const finestPixels = 0.7
 /** Longest step along the globe's edge, radians. */
 const limbStep = 0.07
 
@@ -28,10 +26,10 @@ export function traceFill(pen: Pen, polygons: readonly Rings[], camera: Camera):
 export function traceLine(pen: Pen, path: Path, camera: Camera): boolean {
   if (camera.kind === 'globe') {
     if (!reaches(path, camera)) return false
-    globeLine(pen, path.vectors(finestPixels / camera.radius), camera)
+    globeLine(pen, path.vectors(camera.grain / camera.radius), camera)
     return true
   }
-  const squares = path.squares(finestPixels / camera.world)
+  const squares = path.squares(camera.grain / camera.world)
   const copies = copiesOf(path, camera)
   for (const copy of copies) flatLine(pen, squares, camera, copy)
   return copies.length > 0
@@ -47,7 +45,7 @@ function reaches(path: Path, camera: GlobeCamera): boolean {
 function globeFill(pen: Pen, rings: Rings, camera: GlobeCamera): boolean {
   const [shell] = rings
   if (!shell || !reaches(shell, camera)) return false
-  for (const ring of rings) globeRing(pen, ring.vectors(finestPixels / camera.radius), camera)
+  for (const ring of rings) globeRing(pen, ring.vectors(camera.grain / camera.radius), camera)
   if (holdsAntipode(rings, camera)) {
     pen.moveTo(camera.width / 2 + camera.limb, camera.height / 2)
     pen.arc(camera.width / 2, camera.height / 2, camera.limb, 0, 2 * Math.PI)
@@ -144,7 +142,7 @@ function flatFill(pen: Pen, rings: Rings, camera: FlatCamera): boolean {
   const copies = rings[0] ? copiesOf(rings[0], camera) : []
   for (const copy of copies) {
     for (const ring of rings) {
-      flatLine(pen, ring.squares(finestPixels / camera.world), camera, copy)
+      flatLine(pen, ring.squares(camera.grain / camera.world), camera, copy)
       pen.closePath()
     }
   }
